@@ -1,0 +1,1 @@
+//! The only folder that prints, opens output files, or ends the process.

@@ -1,0 +1,1 @@
+//! Numbers in, numbers out: rates and expected orders.

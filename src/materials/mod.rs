@@ -1,0 +1,1 @@
+//! Constitutive laws, one file a law.

@@ -1,0 +1,1 @@
+//! Writers: outcome in, text out; one file per format.

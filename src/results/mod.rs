@@ -1,0 +1,1 @@
+//! The CSV folder, read and distrusted.

@@ -1,0 +1,1 @@
+//! The YAML file exactly as written.

@@ -1,0 +1,1 @@
+//! Criterion and number in, verdict with its reason out; the outcome record.
