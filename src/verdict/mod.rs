@@ -1,1 +1,7 @@
-//! Criterion and number in, verdict with its reason out; the outcome record.
+//! Criterion and number in, verdict with its reason out; and the outcome, the one full record of a run.
+
+pub mod decision;
+pub mod outcome;
+
+pub use decision::Verdict;
+pub use outcome::Outcome;
