@@ -6,5 +6,6 @@ pub mod tensor;
 pub mod units;
 
 pub use point::Point;
+pub use stress_measure::StressMeasure;
 pub use tensor::SymTensor;
 pub use units::{Dimension, UnitSystem};

@@ -1,1 +1,14 @@
-//! The YAML file exactly as written.
+//! The YAML file exactly as written: typed, with places, every problem reported at once.
+
+mod block;
+mod criteria;
+mod export;
+pub mod model;
+pub mod quantity;
+pub mod read;
+pub mod tree;
+
+pub use block::{Block, Reader, nearest};
+pub use model::{CaseEntry, Placed, Suite};
+pub use quantity::Quantity;
+pub use read::read;
