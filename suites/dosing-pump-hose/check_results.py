@@ -2,7 +2,8 @@
 
 Independent of the finite-element code: reads the CSV files, numpy and scipy only. Called by `make_results.py --verify`.
 
-Exact solution, r(R)^2 = a^2 + (R^2 - A^2) / lz, hoop stretch lt = r / R, radial stretch lr = 1 / (lt lz), k = 2 (c10 + c01 lz^2):
+Exact solution, r(R)^2 = a^2 + (R^2 - A^2) / lz, hoop stretch lt = r / R, radial stretch lr = 1 / (lt lz),
+k = 2 (c10 + c01 lz^2):
 
     sigma_tt - sigma_rr = k (lt^2 - lr^2)
     sigma_rr(R)         = -(k / lz) [ln(lt / lb) + (lb^-2 - lt^-2) / (2 lz)],    lb = lt(B);    sigma_rr(A) = -pressure
