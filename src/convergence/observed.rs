@@ -58,8 +58,9 @@ pub fn fit_order(points: &[(f64, f64)]) -> Result<Fit, String> {
     let logs: Vec<(f64, f64)> = points.iter().map(|(h, e)| (h.ln(), e.ln())).collect();
     let line = line_fit::fit(&logs).map_err(|e| e.to_string())?;
     let standard_error = line.slope_standard_error;
-    let half_width =
-        standard_error.map(|s| s * line_fit::student_t_quantile(0.975, points.len() - 2));
+    let half_width = standard_error.and_then(|s| {
+        line_fit::student_t_quantile(0.975, (points.len() - 2) as f64).map(|t| s * t)
+    });
     Ok(Fit {
         order: line.slope,
         log_constant: line.intercept,

@@ -67,6 +67,12 @@ pub const UNITS: &[Unit] = &[
     unit("kgf/mm2", Dimension::Stress, 9806650.0, 1.0),
     // conventional millimetre of mercury, NIST SP 811: 133.3224 Pa
     unit("mmHg", Dimension::Stress, 1333224.0, 1e4),
+    unit("N", Dimension::Force, 1.0, 1.0),
+    unit("mN", Dimension::Force, 1.0, 1e3),
+    unit("kN", Dimension::Force, 1e3, 1.0),
+    unit("lbf", Dimension::Force, 44482216152605.0, 1e13),
+    unit("J", Dimension::Energy, 1.0, 1.0),
+    unit("mJ", Dimension::Energy, 1.0, 1e3),
     unit("rad", Dimension::Angle, 1.0, 1.0),
     unit("1", Dimension::None, 1.0, 1.0),
     unit("%", Dimension::None, 1.0, 100.0),

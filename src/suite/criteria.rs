@@ -42,6 +42,7 @@ fn read_one(node: &Node, path: &str, reader: &mut Reader) -> Option<CriterionEnt
         let at = format!("{path}.level");
         reader.text(n, &at).map(|text| placed(text, n, &at))
     });
+    let by_fit = by_fit(&mut block, reader);
     block.finish(reader);
     let (subject, measure_node, measure_path) = subject?;
     let (kind, limit_node, limit_path) = limit?;
@@ -54,8 +55,24 @@ fn read_one(node: &Node, path: &str, reader: &mut Reader) -> Option<CriterionEnt
         kind,
         limit: placed(limit, limit_node, &limit_path),
         level,
+        by_fit,
     };
     sensible(&entry, limit_node, reader).then_some(entry)
+}
+
+/// `by: fit` or `by: pair` (the default).
+fn by_fit(block: &mut Block, reader: &mut Reader) -> bool {
+    let path = block.path_of("by");
+    let Some(node) = block.optional("by") else { return false };
+    match node.scalar() {
+        Some("fit") => true,
+        Some("pair") => false,
+        _ => {
+            let found = format!("found {}", node.scalar().unwrap_or(node.kind()));
+            reader.refuse("unknown-word", node, &path, found).expected = "fit or pair".into();
+            false
+        }
+    }
 }
 
 /// Exactly one of several keys, with its meaning.

@@ -104,4 +104,6 @@ pub struct CriterionEntry {
     pub kind: LimitKind,
     pub limit: Placed<Quantity>,
     pub level: Option<Placed<String>>,
+    /// `by: fit`: judge the least-squares order over all levels instead of the finest pair.
+    pub by_fit: bool,
 }

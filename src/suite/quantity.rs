@@ -49,6 +49,12 @@ impl Quantity {
             Dimension::Stress | Dimension::EnergyDensity => suite.stress,
             Dimension::Angle => named("rad")?,
             Dimension::None => named("1")?,
+            Dimension::Force | Dimension::Energy if unit.dimension == dimension => {
+                // base units N and J are those of a system in m and Pa
+                let base = named(if dimension == Dimension::Force { "N" } else { "J" })?;
+                let factor = UnitSystem::si().factor_to(suite, dimension);
+                return Ok(unit.convert(self.number, &base) * factor);
+            }
             other => {
                 let wanted = suite.name_of(other);
                 return Err(format!(
@@ -121,6 +127,8 @@ mod tests {
         assert_eq!(read("0.1%", Dimension::None), Ok(0.001));
         assert_eq!(read("1/4", Dimension::None), Ok(0.25));
         assert_eq!(read("1 in", Dimension::Length), Ok(25.4));
+        assert_eq!(read("2 N", Dimension::Force), Ok(2.0));
+        assert_eq!(read("2 J", Dimension::Energy), Ok(2000.0));
         assert!(read("1 in", Dimension::Stress).unwrap_err().contains("kPa"));
     }
 

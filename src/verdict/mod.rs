@@ -1,6 +1,7 @@
 //! Criterion and number in, verdict with its reason out; and the outcome, the one full record of a run.
 
 pub mod decision;
+pub mod judge;
 pub mod outcome;
 
 pub use decision::Verdict;

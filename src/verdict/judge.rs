@@ -1,0 +1,446 @@
+//! One criterion against the measured series: a verdict with its reason.
+//!
+//! ```text
+//! pass if |error| + U <= limit      fail if |error| - U > limit      else inconclusive
+//! ```
+//! Decision rule: ISO/IEC 17025:2017, 7.8.6, and JCGM 106:2012 (from memory). U is the bound of the exact solution.
+//! Orders are judged on the finest pair of levels and need an error that falls all the way (Oberkampf & Roy 2010,
+//! section 5); an order above theory is a remark, not a failure.
+
+use super::Verdict;
+use super::outcome::{Bound, CriterionOutcome, Judged, Kind, LevelValue, MeasureSeries};
+use crate::convergence::observed::ROUND_OFF;
+
+/// A criterion with everything looked up.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Criterion {
+    /// Unique within the case, e.g. `error displacement-L2 at most 1e-4`.
+    pub text: String,
+    pub judged: Judged,
+    pub measure: String,
+    pub title: String,
+    /// Which series it reads: relative errors unless the limit carries a unit.
+    pub kind: Kind,
+    pub bound: Bound,
+    /// In the series' unit.
+    pub limit: f64,
+    pub limit_text: String,
+    pub unit: String,
+    /// The order theory expects, for `within`.
+    pub theory: Option<f64>,
+    /// Judge the least-squares order over all levels instead of the finest pair.
+    pub by_fit: bool,
+    /// `None`: the finest.
+    pub level: Option<String>,
+}
+
+/// What was measured, as far as one criterion needs it.
+#[derive(Debug, Clone, Copy)]
+pub struct Evidence<'a> {
+    pub series: Option<&'a MeasureSeries>,
+    /// Relative bound of the exact solution for this measure.
+    pub reference_bound: f64,
+    /// Appended to the reason of a failed order, e.g. that wall sides are straight.
+    pub suspicion: Option<&'a str>,
+}
+
+/// Judges one criterion.
+pub fn judge(criterion: &Criterion, evidence: Evidence) -> CriterionOutcome {
+    let Some(series) = evidence.series else {
+        return without_number(
+            criterion,
+            None,
+            Verdict::NotRun,
+            "this measure was not computed",
+        );
+    };
+    let index = match &criterion.level {
+        None => series.values.len().checked_sub(1),
+        Some(level) => series.values.iter().position(|v| v.level == *level),
+    };
+    let Some(index) = index else {
+        return without_number(criterion, None, Verdict::NotRun, "there is no such level");
+    };
+    match criterion.judged {
+        Judged::Error | Judged::Value => {
+            judge_number(criterion, series, index, evidence.reference_bound)
+        }
+        Judged::Order if criterion.by_fit => judge_fit(criterion, series, evidence),
+        Judged::Order => judge_pair(criterion, series, index, evidence),
+    }
+}
+
+fn without_number(
+    criterion: &Criterion,
+    level: Option<&str>,
+    verdict: Verdict,
+    reason: &str,
+) -> CriterionOutcome {
+    CriterionOutcome {
+        text: criterion.text.clone(),
+        judged: criterion.judged,
+        measure: criterion.measure.clone(),
+        title: criterion.title.clone(),
+        bound: criterion.bound,
+        limit: criterion.limit,
+        limit_text: criterion.limit_text.clone(),
+        theory: criterion.theory,
+        unit: criterion.unit.clone(),
+        level: level.map(str::to_string),
+        value: None,
+        uncertainty: None,
+        ratio: None,
+        verdict,
+        reason: reason.to_string(),
+        note: None,
+    }
+}
+
+fn judge_number(
+    criterion: &Criterion,
+    series: &MeasureSeries,
+    index: usize,
+    bound: f64,
+) -> CriterionOutcome {
+    let entry = &series.values[index];
+    let Some(value) = entry.value.filter(|v| v.is_finite()) else {
+        return without_number(
+            criterion,
+            Some(&entry.level),
+            Verdict::NotRun,
+            missing(entry),
+        );
+    };
+    let size = match series.kind {
+        Kind::Relative => 1.0,
+        Kind::Absolute | Kind::Value => entry.exact.unwrap_or(0.0).abs(),
+    };
+    let uncertainty = bound * size;
+    let limit = criterion.limit;
+    // the distance beyond the limit, negative inside
+    let beyond = match criterion.bound {
+        Bound::AtLeast => limit - value,
+        Bound::AtMost | Bound::Within => value - limit,
+    };
+    let verdict = if beyond + uncertainty <= 0.0 {
+        Verdict::Pass
+    } else if beyond - uncertainty > 0.0 {
+        Verdict::Fail
+    } else {
+        Verdict::Inconclusive
+    };
+    let ratio = match criterion.bound {
+        Bound::AtLeast => limit / value,
+        Bound::AtMost | Bound::Within => value / limit,
+    };
+    CriterionOutcome {
+        value: Some(value),
+        uncertainty: Some(uncertainty),
+        ratio: Some(ratio).filter(|r| r.is_finite() && *r >= 0.0),
+        verdict,
+        reason: number_reason(verdict, criterion, value),
+        note: entry.place.clone(),
+        ..without_number(criterion, Some(&entry.level), verdict, "")
+    }
+}
+
+fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String {
+    let bound = match criterion.bound {
+        Bound::AtLeast => "at least",
+        Bound::AtMost | Bound::Within => "at most",
+    };
+    let said = format!(
+        "{value:.3e} where {bound} {} is asked",
+        criterion.limit_text
+    );
+    match verdict {
+        Verdict::Inconclusive => format!("{said}: closer than the exact solution is known"),
+        _ => said,
+    }
+}
+
+fn missing(entry: &LevelValue) -> &str {
+    entry.reason.as_deref().unwrap_or("no number at this level")
+}
+
+fn judge_pair(
+    criterion: &Criterion,
+    series: &MeasureSeries,
+    index: usize,
+    evidence: Evidence,
+) -> CriterionOutcome {
+    let level = series.values[index].level.as_str();
+    if index == 0 {
+        let reason = "an order needs at least 2 levels, there is 1 up to here";
+        return without_number(criterion, Some(level), Verdict::Inconclusive, reason);
+    }
+    let used = &series.values[..=index];
+    if let Some(gap) = used[index - 1..].iter().find(|v| v.value.is_none()) {
+        let reason = format!("no error at level {}: {}", gap.level, missing(gap));
+        return without_number(criterion, Some(level), Verdict::NotRun, &reason);
+    }
+    if let Some(reason) = at_round_off(&used[index - 1..], series.kind, evidence.reference_bound) {
+        return without_number(criterion, Some(level), Verdict::Inconclusive, &reason);
+    }
+    let Some(order) = used[index].observed_order else {
+        let reason = "no order between the two finest levels: an error is zero or the mesh size does not fall";
+        return without_number(criterion, Some(level), Verdict::Inconclusive, reason);
+    };
+    let mut outcome = judge_order(criterion, level, order, 0.0, evidence.suspicion);
+    if outcome.verdict == Verdict::Pass
+        && let Some(reason) = not_monotone(used)
+    {
+        outcome.verdict = Verdict::Inconclusive;
+        outcome.reason = format!("{}, but {reason}", outcome.reason);
+    }
+    outcome
+}
+
+fn judge_fit(
+    criterion: &Criterion,
+    series: &MeasureSeries,
+    evidence: Evidence,
+) -> CriterionOutcome {
+    let level = series.values.last().map(|v| v.level.as_str());
+    if let Some(reason) = at_round_off(&series.values, series.kind, evidence.reference_bound) {
+        return without_number(criterion, level, Verdict::Inconclusive, &reason);
+    }
+    match series
+        .fit
+        .map(|fit| (fit.order, fit.half_width, fit.levels))
+    {
+        Some((order, Some(half_width), _)) => judge_order(
+            criterion,
+            level.unwrap_or(""),
+            order,
+            half_width,
+            evidence.suspicion,
+        ),
+        Some((_, None, levels)) => {
+            let reason = format!("a fitted order needs at least 3 levels, there are {levels}");
+            without_number(criterion, level, Verdict::Inconclusive, &reason)
+        }
+        None => {
+            let reason = "a fitted order needs at least 3 levels with an error above zero";
+            without_number(criterion, level, Verdict::Inconclusive, reason)
+        }
+    }
+}
+
+/// Judges an order known to within `half_width`.
+fn judge_order(
+    criterion: &Criterion,
+    level: &str,
+    order: f64,
+    half_width: f64,
+    suspicion: Option<&str>,
+) -> CriterionOutcome {
+    let (least, shortfall_scale) = match (criterion.bound, criterion.theory) {
+        (Bound::Within, Some(theory)) => (theory - criterion.limit, criterion.limit),
+        (Bound::Within, None) => {
+            let reason = "no order is expected: the case does not declare its element";
+            return without_number(criterion, Some(level), Verdict::Inconclusive, reason);
+        }
+        _ => (criterion.limit, criterion.limit),
+    };
+    let verdict = if order - half_width >= least {
+        Verdict::Pass
+    } else if order + half_width < least {
+        Verdict::Fail
+    } else {
+        Verdict::Inconclusive
+    };
+    let ratio = match criterion.theory {
+        Some(theory) if criterion.bound == Bound::Within => {
+            ((theory - order) / shortfall_scale).max(0.0)
+        }
+        _ => shortfall_scale / order,
+    };
+    let mut reason = match (criterion.bound, criterion.theory) {
+        (Bound::Within, Some(theory)) => {
+            format!(
+                "order {order:.2} where {theory} less at most {} is asked",
+                criterion.limit_text
+            )
+        }
+        _ => format!(
+            "order {order:.2} where at least {} is asked",
+            criterion.limit_text
+        ),
+    };
+    if half_width > 0.0 {
+        reason = format!("{reason} (95 % interval +/- {half_width:.2})");
+    }
+    if verdict != Verdict::Pass
+        && let Some(suspicion) = suspicion
+    {
+        reason = format!("{reason}; {suspicion}");
+    }
+    let above = criterion.theory.filter(|theory| order > theory + 0.2);
+    CriterionOutcome {
+        value: Some(order),
+        uncertainty: Some(half_width),
+        ratio: Some(ratio).filter(|r| r.is_finite() && *r >= 0.0),
+        note: above.map(|theory| format!("falls faster than theory ({order:.2} against {theory})")),
+        ..without_number(criterion, Some(level), verdict, &reason)
+    }
+}
+
+fn at_round_off(values: &[LevelValue], kind: Kind, reference_bound: f64) -> Option<String> {
+    let floor = ROUND_OFF.max(10.0 * reference_bound);
+    let low = values.iter().find(|entry| {
+        let size = if kind == Kind::Relative {
+            1.0
+        } else {
+            entry.exact.unwrap_or(0.0).abs()
+        };
+        entry.value.is_some_and(|v| v.abs() <= floor * size)
+    })?;
+    Some(format!(
+        "the error at level {} is at round-off: no order can be read from it",
+        low.level
+    ))
+}
+
+fn not_monotone(values: &[LevelValue]) -> Option<String> {
+    let grown = values
+        .windows(2)
+        .find(|pair| match (pair[0].value, pair[1].value) {
+            (Some(coarse), Some(fine)) => fine.abs() >= coarse.abs(),
+            _ => false,
+        })?;
+    Some(format!(
+        "the error does not fall from level {} to {}",
+        grown[0].level, grown[1].level
+    ))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn series(errors: &[f64]) -> MeasureSeries {
+        let mut values: Vec<LevelValue> = Vec::new();
+        for (i, e) in errors.iter().enumerate() {
+            let observed_order =
+                (i > 0 && errors[i - 1] > 0.0 && *e > 0.0).then(|| (errors[i - 1] / e).log2());
+            values.push(LevelValue {
+                level: (i + 1).to_string(),
+                value: Some(*e),
+                reason: None,
+                exact: Some(1.0),
+                observed_order,
+                place: None,
+            });
+        }
+        MeasureSeries {
+            measure: "displacement-L2".into(),
+            title: String::new(),
+            label: String::new(),
+            kind: Kind::Relative,
+            unit: "1".into(),
+            expected_order: Some(3.0),
+            values,
+            fit: None,
+            note: None,
+        }
+    }
+
+    fn criterion(judged: Judged, bound: Bound, limit: f64) -> Criterion {
+        Criterion {
+            text: String::new(),
+            judged,
+            measure: "displacement-L2".into(),
+            title: String::new(),
+            kind: Kind::Relative,
+            bound,
+            limit,
+            limit_text: limit.to_string(),
+            unit: "1".into(),
+            theory: Some(3.0),
+            by_fit: false,
+            level: None,
+        }
+    }
+
+    fn verdict(criterion: &Criterion, errors: &[f64], reference_bound: f64) -> Verdict {
+        let series = series(errors);
+        judge(
+            criterion,
+            Evidence {
+                series: Some(&series),
+                reference_bound,
+                suspicion: None,
+            },
+        )
+        .verdict
+    }
+
+    fn of(criterion: &Criterion, series: Option<&MeasureSeries>) -> Verdict {
+        judge(
+            criterion,
+            Evidence {
+                series,
+                reference_bound: 0.0,
+                suspicion: None,
+            },
+        )
+        .verdict
+    }
+
+    #[test]
+    fn an_error_is_judged_with_the_uncertainty_of_the_reference() {
+        let c = criterion(Judged::Error, Bound::AtMost, 1e-3);
+        assert_eq!(verdict(&c, &[9e-4], 0.0), Verdict::Pass);
+        assert_eq!(verdict(&c, &[1.1e-3], 0.0), Verdict::Fail);
+        assert_eq!(verdict(&c, &[9.5e-4], 1e-4), Verdict::Inconclusive);
+        assert_eq!(verdict(&c, &[1.05e-3], 1e-4), Verdict::Inconclusive);
+        assert_eq!(verdict(&c, &[8e-4], 1e-4), Verdict::Pass);
+    }
+
+    #[test]
+    fn a_missing_number_is_never_a_pass() {
+        let c = criterion(Judged::Error, Bound::AtMost, 1e-3);
+        let mut s = series(&[1e-4]);
+        s.values[0].value = None;
+        assert_eq!(of(&c, Some(&s)), Verdict::NotRun);
+        assert_eq!(of(&c, None), Verdict::NotRun);
+        s.values[0].value = Some(f64::NAN);
+        assert_eq!(of(&c, Some(&s)), Verdict::NotRun);
+        s.values.clear();
+        assert_eq!(of(&c, Some(&s)), Verdict::NotRun);
+    }
+
+    #[test]
+    fn orders_need_levels_size_and_monotony() {
+        let c = criterion(Judged::Order, Bound::Within, 0.2);
+        assert_eq!(verdict(&c, &[8e-3, 1e-3], 0.0), Verdict::Pass);
+        assert_eq!(verdict(&c, &[4e-3, 1e-3], 0.0), Verdict::Fail);
+        assert_eq!(verdict(&c, &[1e-3], 0.0), Verdict::Inconclusive);
+        assert_eq!(verdict(&c, &[8e-15, 1e-15], 0.0), Verdict::Inconclusive);
+        assert_eq!(verdict(&c, &[1e-3, 8e-3, 1e-3], 0.0), Verdict::Inconclusive);
+        assert_eq!(verdict(&c, &[1e-3, 1e-3], 0.0), Verdict::Fail);
+        // faster than theory is a remark
+        let s = series(&[16e-3, 1e-3]);
+        let judged = judge(
+            &c,
+            Evidence {
+                series: Some(&s),
+                reference_bound: 0.0,
+                suspicion: None,
+            },
+        );
+        assert_eq!(judged.verdict, Verdict::Pass);
+        assert!(judged.note.unwrap().contains("faster"));
+    }
+
+    #[test]
+    fn without_a_declared_element_no_order_is_expected() {
+        let mut c = criterion(Judged::Order, Bound::Within, 0.2);
+        c.theory = None;
+        assert_eq!(verdict(&c, &[8e-3, 1e-3], 0.0), Verdict::Inconclusive);
+        c.bound = Bound::AtLeast;
+        c.limit = 2.9;
+        assert_eq!(verdict(&c, &[8e-3, 1e-3], 0.0), Verdict::Pass);
+    }
+}
