@@ -1,1 +1,5 @@
-fn main() {}
+//! Hands the process to the command line.
+
+fn main() -> std::process::ExitCode {
+    truebore::cli::main()
+}

@@ -1,0 +1,292 @@
+//! What a suite means: every case with its exact solution, levels and criteria. Nothing is read from results here.
+
+use super::criteria;
+use super::expand::{self, Combination};
+use super::pairing::{self, Element};
+use super::parameters::{self, Materials};
+use super::template;
+use crate::exact::{ExactSolution, Parameters, catalogue};
+use crate::input::Finding;
+use crate::mechanics::{Dimension, UnitSystem};
+use crate::suite::model::{CaseEntry, ExportEntry, Suite};
+use crate::suite::tree::{Node, Value};
+use crate::suite::{Placed, Quantity, Reader};
+use crate::verdict::judge::Criterion;
+use std::sync::Arc;
+
+/// A case may expand to this many.
+const MAX_CASES: usize = 20_000;
+
+/// A suite, looked up and expanded.
+#[derive(Debug)]
+pub struct Plan {
+    pub suite: Suite,
+    /// The suite's file name, as messages and reports use it.
+    pub file: String,
+    pub cases: Vec<CasePlan>,
+}
+
+/// One case to judge.
+#[derive(Debug, Clone)]
+pub struct CasePlan {
+    pub id: String,
+    pub title: String,
+    /// Where the case stands in the suite.
+    pub place: crate::input::Place,
+    /// Catalogue name of the solution.
+    pub problem: String,
+    pub parameters: Parameters,
+    pub exact: Arc<dyn ExactSolution>,
+    pub element: Option<Element>,
+    /// Modelled share of the section.
+    pub share: f64,
+    /// Declared axial length, for solids.
+    pub axial_length: Option<f64>,
+    /// Coarsest first.
+    pub levels: Vec<LevelPlan>,
+    pub criteria: Vec<Criterion>,
+    pub stated_orders: Vec<(String, f64)>,
+    pub export: ExportEntry,
+    pub units: UnitSystem,
+}
+
+/// One mesh of a case.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LevelPlan {
+    pub name: String,
+    /// Relative to the suite's folder, `/` separated.
+    pub folder: String,
+    pub h: Option<f64>,
+}
+
+/// Looks everything up.
+///
+/// # Errors
+/// Every problem of the suite at once, in file order.
+pub fn plan(suite: Suite, file: &str) -> Result<Plan, Vec<Finding>> {
+    let mut reader = Reader::new(file);
+    let materials = Materials::build(&suite, &mut reader);
+    let mut cases: Vec<CasePlan> = Vec::new();
+    for entry in &suite.cases {
+        plan_case(&suite, entry, &materials, &mut cases, &mut reader);
+    }
+    if reader.findings.is_empty() {
+        return Ok(Plan { file: file.to_string(), cases, suite });
+    }
+    reader.findings.sort_by_key(|f| (f.place.line, f.place.column));
+    // the same fault found in several combinations is said once
+    reader.findings.dedup();
+    Err(reader.findings)
+}
+
+fn plan_case(
+    suite: &Suite,
+    entry: &CaseEntry,
+    materials: &Materials,
+    cases: &mut Vec<CasePlan>,
+    reader: &mut Reader,
+) {
+    let Some(solution) = parameters::solution_entry(&entry.problem, reader) else { return };
+    let Some((problems, elements)) = combinations(entry, reader) else { return };
+    let share = share(entry, reader);
+    let axial_length = entry.axial_length.as_ref().and_then(|q| length(q, suite, reader));
+    let h = sizes(entry, suite, reader);
+    let stated = criteria::stated_orders(entry, reader);
+    for problem in &problems {
+        let path = &entry.parameters.path;
+        let Some(parameters) = parameters::read(&problem.node, path, materials, &suite.units, reader) else { continue };
+        let exact = match catalogue::build(solution.name, parameters.clone()) {
+            Ok(exact) => Arc::from(exact),
+            Err(refusal) => {
+                refuse_solution(&refusal, &problem.node, path, problem, reader);
+                continue;
+            }
+        };
+        for element_choice in &elements {
+            let element_path = entry.element.as_ref().map_or("", |e| e.path.as_str());
+            let element = element_choice.as_ref().and_then(|c| pairing::read(&c.node, element_path, reader));
+            let no_labels = Vec::new();
+            let labels = element_choice.as_ref().map_or(&no_labels, |c| &c.labels);
+            let id = [std::slice::from_ref(&entry.id.value), &problem.labels, labels].concat().join("-");
+            let Some(levels) = levels(entry, &id, &problem.node, element_choice.as_ref(), &h, reader) else { return };
+            let criteria = criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
+            unique_id(&id, entry, cases, reader);
+            cases.push(CasePlan {
+                title: title(entry, &id, problem, labels),
+                id,
+                place: reader.place(entry.id.line, entry.id.column, &entry.id.path),
+                problem: solution.name.to_string(),
+                parameters: parameters.clone(),
+                exact: Arc::clone(&exact),
+                element,
+                share: share.unwrap_or(1.0),
+                axial_length,
+                levels,
+                criteria,
+                stated_orders: stated.clone(),
+                export: entry.export.clone(),
+                units: suite.units,
+            });
+        }
+    }
+}
+
+type Choices = (Vec<Combination>, Vec<Option<Combination>>);
+
+/// All combinations of the problem and of the element.
+fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
+    let element = entry.element.as_ref();
+    for node in [Some(&entry.parameters), element].into_iter().flatten() {
+        if let Some(list) = expand::empty_list(&node.value) {
+            let finding = reader.refuse("empty-list", list, &node.path, "the list is empty, so that it makes no case");
+            finding.expected = "at least one value".into();
+            return None;
+        }
+    }
+    let count = expand::count(&entry.parameters.value)
+        .saturating_mul(element.map_or(1, |e| expand::count(&e.value)));
+    if count > MAX_CASES {
+        let node = &entry.parameters;
+        let found = format!("the lists make {count} cases");
+        reader.refuse("too-many-cases", &node.value, &node.path, found).expected = format!("at most {MAX_CASES}");
+        return None;
+    }
+    let elements = match element {
+        None => vec![None],
+        Some(e) => expand::expand(&e.value).into_iter().map(Some).collect(),
+    };
+    Some((expand::expand(&entry.parameters.value), elements))
+}
+
+fn refuse_solution(
+    refusal: &crate::exact::Refusal,
+    node: &Node,
+    path: &str,
+    problem: &Combination,
+    reader: &mut Reader,
+) {
+    let at = match &node.value {
+        Value::Map(entries) => entries.iter().find(|(key, _)| key.name == refusal.parameter).map(|(_, n)| n),
+        _ => None,
+    };
+    let path = match at {
+        Some(_) => format!("{path}.{}", refusal.parameter),
+        None => path.to_string(),
+    };
+    let which = if problem.labels.is_empty() { String::new() } else { format!(" (in {})", problem.labels.join("-")) };
+    let found = format!("{}{which}", refusal.message);
+    reader.refuse("no-exact-solution", at.unwrap_or(node), &path, found).hint = refusal.hint.clone();
+}
+
+/// The declared share of the section, above 0 and at most 1.
+fn share(entry: &CaseEntry, reader: &mut Reader) -> Option<f64> {
+    let declared = entry.section.as_ref()?;
+    let share = match declared.value.within(Dimension::None, &UnitSystem::si()) {
+        Ok(share) if share > 0.0 && share <= 1.0 => return Some(share),
+        Ok(_) => format!("\"{}\" is no share of a section", declared.value.text),
+        Err(found) => found,
+    };
+    refuse(declared, "section-share", share, "a share above 0 and at most 1, e.g. 1/4 for a quarter", reader);
+    None
+}
+
+fn length(declared: &Placed<Quantity>, suite: &Suite, reader: &mut Reader) -> Option<f64> {
+    match declared.value.within(Dimension::Length, &suite.units) {
+        Ok(length) if length > 0.0 => Some(length),
+        Ok(_) => {
+            refuse(declared, "length", format!("\"{}\" is not positive", declared.value.text), "a length above zero", reader);
+            None
+        }
+        Err(found) => {
+            refuse(declared, "wrong-unit", found, "a length", reader);
+            None
+        }
+    }
+}
+
+/// Given mesh sizes, one for each level, falling.
+fn sizes(entry: &CaseEntry, suite: &Suite, reader: &mut Reader) -> Vec<f64> {
+    let sizes: Vec<f64> = entry.h.iter().filter_map(|q| length(q, suite, reader)).collect();
+    let Some(first) = entry.h.first() else { return sizes };
+    if sizes.len() == entry.h.len() && sizes.len() != entry.levels.len() {
+        let found = format!("{} mesh sizes for {} levels", sizes.len(), entry.levels.len());
+        refuse(first, "mesh-sizes", found, "one size for each level", reader);
+    } else if sizes.windows(2).any(|pair| pair[1] >= pair[0]) {
+        refuse(first, "mesh-sizes", "the mesh sizes do not fall from level to level".into(), "coarsest level first", reader);
+    }
+    sizes
+}
+
+fn refuse<T>(at: &Placed<T>, rule: &str, found: String, expected: &str, reader: &mut Reader) {
+    let place = reader.place(at.line, at.column, &at.path);
+    reader.push(Finding::refused(rule, place, found).expected(expected));
+}
+
+/// The folders of all levels, filled in.
+fn levels(
+    entry: &CaseEntry,
+    id: &str,
+    problem: &Node,
+    element: Option<&Combination>,
+    h: &[f64],
+    reader: &mut Reader,
+) -> Option<Vec<LevelPlan>> {
+    let Some(results) = &entry.results else {
+        if let Some(level) = entry.levels.first() {
+            refuse(level, "levels", "levels without result sets".into(), "`results:` with the folder of a level", reader);
+        }
+        return Some(Vec::new());
+    };
+    let mut values = vec![("id".to_string(), id.to_string())];
+    values.extend(chosen(problem));
+    values.extend(element.map(|c| chosen(&c.node)).unwrap_or_default());
+    let names: Vec<String> = match entry.levels.as_slice() {
+        [] => vec!["1".to_string()],
+        levels => levels.iter().map(|l| l.value.clone()).collect(),
+    };
+    let mut planned: Vec<LevelPlan> = Vec::new();
+    for (i, name) in names.iter().enumerate() {
+        let mut values = values.clone();
+        values.push(("level".to_string(), name.clone()));
+        let folder = template::fill(&results.value, &values);
+        let folder = folder.and_then(|f| template::below_the_suite(&f).map(|()| f));
+        match folder {
+            Ok(folder) if planned.iter().any(|p| p.folder == folder) => {
+                let found = format!("levels {} and {name} have the same folder \"{folder}\"", planned[0].name);
+                refuse(results, "results-folder", found, "a folder for each level, e.g. with {level}", reader);
+                return None;
+            }
+            Ok(folder) => planned.push(LevelPlan { name: name.clone(), folder, h: h.get(i).copied() }),
+            Err(found) => {
+                refuse(results, "results-folder", found, "a folder below the suite's own", reader);
+                return None;
+            }
+        }
+    }
+    Some(planned)
+}
+
+/// The values a folder name may use: every parameter of the block.
+fn chosen(node: &Node) -> Vec<(String, String)> {
+    match &node.value {
+        Value::Map(entries) => entries.iter().map(|(key, value)| (key.name.clone(), expand::label(value))).collect(),
+        _ => Vec::new(),
+    }
+}
+
+fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reader) {
+    if cases.iter().any(|case| case.id == id) {
+        let found = format!("two cases would be called \"{id}\"");
+        refuse(&entry.id, "duplicate-case-id", found, "ids that differ after lists are expanded", reader);
+    }
+}
+
+fn title(entry: &CaseEntry, id: &str, problem: &Combination, element: &[String]) -> String {
+    match &entry.title {
+        None => id.to_string(),
+        Some(title) => {
+            let labels = [problem.labels.as_slice(), element].concat();
+            if labels.is_empty() { title.clone() } else { format!("{title}: {}", labels.join(", ")) }
+        }
+    }
+}
