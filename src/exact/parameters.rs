@@ -1,0 +1,75 @@
+//! What a tube is built from, and the checks every tube shares.
+
+use super::Ends;
+use super::solution::Refusal;
+use crate::materials::Material;
+
+/// A tube, its material and its loads, in one system of units.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Parameters {
+    /// Reference radius of the bore. Unit: length.
+    pub inner_radius: f64,
+    /// Reference outer radius. Unit: length.
+    pub outer_radius: f64,
+    pub ends: Ends,
+    pub material: Material,
+    /// Pressure on the bore, any sign: srr(a) = -inner_pressure. Unit: stress.
+    pub inner_pressure: f64,
+    /// Pressure on the outer wall, any sign: srr(b) = -outer_pressure. Unit: stress.
+    pub outer_pressure: f64,
+}
+
+/// A refusal in one line.
+pub(super) fn refuse(parameter: &'static str, message: String, hint: impl Into<String>) -> Refusal {
+    Refusal {
+        message,
+        parameter,
+        hint: hint.into(),
+    }
+}
+
+impl Parameters {
+    /// Refuses what is no tube: radii out of order, values that are not finite.
+    pub(super) fn check(&self) -> Result<(), Refusal> {
+        let (force, stretch) = match self.ends {
+            Ends::GeneralizedPlaneStrain { axial_force } => (axial_force, 1.0),
+            Ends::FixedStretch { axial_stretch } => (0.0, axial_stretch),
+            _ => (0.0, 1.0),
+        };
+        for (name, value) in [
+            ("inner-radius", self.inner_radius),
+            ("outer-radius", self.outer_radius),
+            ("inner-pressure", self.inner_pressure),
+            ("outer-pressure", self.outer_pressure),
+            ("axial-force", force),
+            ("axial-stretch", stretch),
+        ] {
+            if !value.is_finite() {
+                return Err(refuse(
+                    name,
+                    format!("{name} = {value} is not a finite number"),
+                    "",
+                ));
+            }
+        }
+        for (name, value) in [
+            ("inner-radius", self.inner_radius),
+            ("axial-stretch", stretch),
+        ] {
+            if value <= 0.0 {
+                return Err(refuse(
+                    name,
+                    format!("{name} = {value} must be positive"),
+                    "",
+                ));
+            }
+        }
+        if self.outer_radius <= self.inner_radius {
+            let (inner, outer) = (self.inner_radius, self.outer_radius);
+            let message =
+                format!("outer-radius = {outer} must be larger than inner-radius = {inner}");
+            return Err(refuse("outer-radius", message, ""));
+        }
+        Ok(())
+    }
+}

@@ -1,0 +1,207 @@
+//! The two equations of the tube and its energy, as integrals over the wall.
+//!
+//! ```text
+//! unknowns g = ln(lt/lr) at the bore, e = ln lz;      X = ln(R/A), H = log1p((B-A)/A), s = (R/A)^2
+//! k = expm1(g) = lz (a/A)^2 - 1                        d(X) = ln(lt/lr) = log1p(k/s)
+//! Pi - Po = int_0^H (Tt-Tr)/(1+k/s) dX                 equilibrium d srr/dr = (stt - srr)/r
+//! F = (pi A^2/lz) int_0^H (2Tz-Tt-Tr) s dX             reduced axial force, pi int (2szz-srr-stt) r dr
+//! energy = 2 pi A^2 int_0^H W s dX                     per unit reference length
+//! N = F + pi [(Pi-Po) a^2 - Po (B-A)(B+A)/lz]          net axial force on the wall
+//! ```
+//! Rivlin, Phil. Trans. R. Soc. A 242 (1949) 173 (from memory), in the variables of numerics.md 1.
+
+use crate::materials::IncompressibleLaw;
+use crate::numerics::{CompensatedSum, GaussRule};
+use std::f64::consts::PI;
+use std::sync::Arc;
+
+/// Gauss points a panel for the solution, and for the estimate of its error.
+pub(super) const POINTS: usize = 16;
+pub(super) const CHECK_POINTS: usize = 24;
+
+/// Widest panel in X: the integrands are analytic up to |Im X| = pi/2.
+const PANEL: f64 = 0.6;
+
+/// A number with its derivatives by `g` and `e`, and the sum of the sizes of its terms.
+#[derive(Debug, Clone, Copy, PartialEq, Default)]
+pub(super) struct Graded {
+    pub value: f64,
+    pub by_g: f64,
+    pub by_e: f64,
+    /// Sum of |weight f|: what round-off is measured against.
+    pub size: f64,
+}
+
+/// The three integrals at one `(g, e)`.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) struct Integrals {
+    /// Pi - Po.
+    pub pressure: Graded,
+    /// F.
+    pub reduced_force: Graded,
+    /// Strain energy per unit reference length.
+    pub energy: Graded,
+}
+
+/// The wall in its reference state, with its law.
+#[derive(Debug, Clone)]
+pub(super) struct Wall {
+    pub inner: f64,
+    pub outer: f64,
+    /// H = ln(B/A).
+    pub span: f64,
+    pub law: Arc<dyn IncompressibleLaw>,
+}
+
+/// `d = ln(lt/lr)` and `1 + k/s` at a place where s = (R/A)^2, from `swell = s - 1` and `g`.
+fn local(swell: f64, g: f64) -> (f64, f64) {
+    let (s, k) = (1.0 + swell, g.exp_m1());
+    let x = k / s;
+    if x > -0.5 {
+        (x.ln_1p(), 1.0 + x)
+    } else {
+        // near the closing of the bore 1 + k/s must not be formed by subtraction
+        let stretch = (swell + g.exp()) / s;
+        (stretch.ln(), stretch)
+    }
+}
+
+impl Wall {
+    /// From reference radii, inner below outer.
+    pub fn new(inner: f64, outer: f64, law: Arc<dyn IncompressibleLaw>) -> Self {
+        let span = ((outer - inner) / inner).ln_1p();
+        Self {
+            inner,
+            outer,
+            span,
+            law,
+        }
+    }
+
+    /// (B-A)(B+A).
+    pub fn area_factor(&self) -> f64 {
+        (self.outer - self.inner) * (self.outer + self.inner)
+    }
+
+    /// (B/A)^2 - 1.
+    fn outer_swell(&self) -> f64 {
+        self.area_factor() / (self.inner * self.inner)
+    }
+
+    /// `d` at the outer wall.
+    pub fn outer_difference(&self, g: f64) -> f64 {
+        local(self.outer_swell(), g).0
+    }
+
+    /// d(d)/dg at the outer wall.
+    pub fn outer_difference_slope(&self, g: f64) -> f64 {
+        g.exp() / (self.outer_swell() + g.exp())
+    }
+
+    /// Deformed inner and outer radius.
+    pub fn radii(&self, g: f64, e: f64) -> (f64, f64) {
+        let outer = self.outer_difference(g);
+        (
+            self.inner * (0.5 * (g - e)).exp(),
+            self.outer * (0.5 * (outer - e)).exp(),
+        )
+    }
+
+    /// Ends of the panels in X. For k < 0 the integrand has a pole at X0 = ln(-k)/2 just inside the bore, and the
+    /// panels grow with the distance from it.
+    fn panels(&self, g: f64) -> Vec<f64> {
+        let mut ends = vec![0.0];
+        if g >= 0.0 {
+            let n = (self.span / PANEL).ceil().max(1.0);
+            ends.extend((1..=n as usize).map(|i| self.span * (i as f64 / n)));
+            return ends;
+        }
+        let pole = 0.5 * (-g.exp()).ln_1p();
+        let mut x = 0.0;
+        while x < self.span {
+            let width = (1.5 * (x - pole)).min(PANEL);
+            x = if x + 1.1 * width >= self.span {
+                self.span
+            } else {
+                x + width
+            };
+            ends.push(x);
+        }
+        ends
+    }
+
+    /// All integrals at `(g, e)` with `points` Gauss points a panel. Not finite where the law is not.
+    pub fn integrate(&self, g: f64, e: f64, points: usize) -> Integrals {
+        let rule = GaussRule::of(points);
+        let lz = e.exp();
+        let bore = g.exp();
+        let mut sums = [CompensatedSum::new(); 3];
+        let mut slopes = [(0.0, 0.0, 0.0); 3];
+        for panel in self.panels(g).windows(2) {
+            for (x, weight) in rule.on(panel[0], panel[1]) {
+                let swell = (2.0 * x).exp_m1();
+                let s = 1.0 + swell;
+                let (d, stretch) = local(swell, g);
+                // d(k/s)/dg, and from it d(d)/dg
+                let stretch_by_g = bore / s;
+                let d_by_g = stretch_by_g / stretch;
+                let law = self.law.with_slopes(d, e);
+                let f = law.hoop.value / stretch;
+                let terms = [
+                    (
+                        f,
+                        (law.hoop.by_d / stretch - f) * d_by_g,
+                        law.hoop.by_e / stretch,
+                    ),
+                    (
+                        law.axial.value * s,
+                        law.axial.by_d * d_by_g * s,
+                        law.axial.by_e * s,
+                    ),
+                    (
+                        law.energy.value * s,
+                        law.energy.by_d * d_by_g * s,
+                        law.energy.by_e * s,
+                    ),
+                ];
+                for ((sum, slope), (value, by_g, by_e)) in
+                    sums.iter_mut().zip(&mut slopes).zip(terms)
+                {
+                    sum.add(weight * value);
+                    slope.0 += weight * by_g;
+                    slope.1 += weight * by_e;
+                    slope.2 += weight * value.abs();
+                }
+            }
+        }
+        let graded = |i: usize| Graded {
+            value: sums[i].value(),
+            by_g: slopes[i].0,
+            by_e: slopes[i].1,
+            size: slopes[i].2,
+        };
+        let square = self.inner * self.inner;
+        let force = graded(1).times(PI * square / lz);
+        Integrals {
+            pressure: graded(0),
+            // 1/lz depends on e
+            reduced_force: Graded {
+                by_e: force.by_e - force.value,
+                ..force
+            },
+            energy: graded(2).times(2.0 * PI * square),
+        }
+    }
+}
+
+impl Graded {
+    /// Times a constant.
+    fn times(self, factor: f64) -> Self {
+        Self {
+            value: self.value * factor,
+            by_g: self.by_g * factor,
+            by_e: self.by_e * factor,
+            size: self.size * factor.abs(),
+        }
+    }
+}
