@@ -17,7 +17,9 @@ pub enum NoNorm {
     NotFinite,
     #[error("a weight is not positive")]
     NotPositiveWeight,
-    #[error("the exact field is zero, so that a relative error has no meaning; give the limit with a unit")]
+    #[error(
+        "the exact field is zero, so that a relative error has no meaning; give the limit with a unit"
+    )]
     ExactIsZero,
 }
 
@@ -36,7 +38,11 @@ impl Norm {
     /// # Errors
     /// [`NoNorm::ExactIsZero`].
     pub fn relative(&self) -> Result<f64, NoNorm> {
-        if self.exact == 0.0 { Err(NoNorm::ExactIsZero) } else { Ok(self.absolute / self.exact) }
+        if self.exact == 0.0 {
+            Err(NoNorm::ExactIsZero)
+        } else {
+            Ok(self.absolute / self.exact)
+        }
     }
 }
 
@@ -91,7 +97,10 @@ impl SquaredError {
         if !(error.is_finite() && exact.is_finite()) {
             return Err(NoNorm::NotFinite);
         }
-        Ok(Norm { absolute: error.max(0.0).sqrt(), exact: exact.max(0.0).sqrt() })
+        Ok(Norm {
+            absolute: error.max(0.0).sqrt(),
+            exact: exact.max(0.0).sqrt(),
+        })
     }
 }
 
@@ -104,7 +113,10 @@ pub struct Largest<P> {
 
 impl<P> Default for Largest<P> {
     fn default() -> Self {
-        Self { value: f64::NEG_INFINITY, place: None }
+        Self {
+            value: f64::NEG_INFINITY,
+            place: None,
+        }
     }
 }
 

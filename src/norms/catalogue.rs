@@ -162,7 +162,11 @@ mod tests {
     #[test]
     fn names_are_unique_and_labels_short() {
         for (i, m) in MEASURES.iter().enumerate() {
-            assert!(MEASURES[i + 1..].iter().all(|n| n.name != m.name), "{}", m.name);
+            assert!(
+                MEASURES[i + 1..].iter().all(|n| n.name != m.name),
+                "{}",
+                m.name
+            );
             assert!(m.label.len() <= 15, "{}", m.label);
             assert!(find(m.name).is_some());
         }

@@ -8,10 +8,9 @@
 //! the solution's formula is continued, and such points are counted.
 
 use super::accumulate::{Largest, SquaredError};
-use super::model::Model;
+use super::model::{self, Mesh};
 use crate::elements::{MAX_NODES, Shape, ShapeTable, map};
 use crate::exact::ExactSolution;
-use crate::results::Mesh;
 use rayon::prelude::*;
 
 /// Elements a block holds. Part of the definition of the sums' last bit, so it never depends on the machine.
@@ -54,22 +53,33 @@ pub fn quadrature_degree(shape: Shape) -> usize {
     }
 }
 
-/// Integrates over the whole mesh. `displacements` are nodal, in the mesh's axes.
+/// Integrates over the whole mesh. `displacements` are nodal, in space.
 pub fn displacement_norms(
-    mesh: &Mesh,
+    mesh: Mesh,
     displacements: &[[f64; 3]],
-    model: Model,
     exact: &dyn ExactSolution,
 ) -> DisplacementNorms {
-    let tables = shape_tables(mesh);
+    let tables: Vec<ShapeTable> = mesh
+        .elements
+        .shapes_used()
+        .into_iter()
+        .map(|shape| ShapeTable::of_degree(shape, quadrature_degree(shape)))
+        .collect();
     let elements: Vec<usize> = (0..mesh.elements.len()).collect();
     let blocks: Vec<DisplacementNorms> = elements
         .par_chunks(BLOCK)
         .map(|block| {
             let mut norms = DisplacementNorms::default();
             for &element in block {
-                if let Some(table) = table_of(&tables, mesh.elements.shape(element)) {
-                    add_element(&mut norms, mesh, element, displacements, model, exact, table);
+                let shape = mesh.elements.shapes[element];
+                if let Some(table) = tables.iter().find(|table| table.shape == shape) {
+                    Pass {
+                        mesh,
+                        displacements,
+                        exact,
+                        table,
+                    }
+                    .add(element, &mut norms);
                 }
             }
             norms
@@ -82,95 +92,79 @@ pub fn displacement_norms(
     whole
 }
 
-/// One table for each shape in the mesh.
-fn shape_tables(mesh: &Mesh) -> Vec<ShapeTable> {
-    let used = Shape::ALL.into_iter().filter(|s| (0..mesh.elements.len()).any(|e| mesh.elements.shape(e) == *s));
-    used.map(|shape| ShapeTable::of_degree(shape, quadrature_degree(shape))).collect()
+/// One element under integration.
+struct Pass<'a> {
+    mesh: Mesh<'a>,
+    displacements: &'a [[f64; 3]],
+    exact: &'a dyn ExactSolution,
+    table: &'a ShapeTable,
 }
 
-fn table_of(tables: &[ShapeTable], shape: Shape) -> Option<&ShapeTable> {
-    tables.iter().find(|table| table.shape == shape)
-}
-
-fn add_element(
-    norms: &mut DisplacementNorms,
-    mesh: &Mesh,
-    element: usize,
-    displacements: &[[f64; 3]],
-    model: Model,
-    exact: &dyn ExactSolution,
-    table: &ShapeTable,
-) {
-    let nodes = mesh.elements.nodes(element);
-    let mut coords = [[0.0; 3]; MAX_NODES];
-    let mut moved = [[0.0; 3]; MAX_NODES];
-    for (local, &node) in nodes.iter().enumerate() {
-        coords[local] = mesh.positions[node as usize];
-        moved[local] = displacements[node as usize];
-    }
-    let (coords, moved) = (&coords[..nodes.len()], &moved[..nodes.len()]);
-    let mut gradients = [[0.0; 3]; MAX_NODES];
-    for q in 0..table.len() {
-        let values = table.values(q);
-        let at = map::position(values, coords);
-        let dimension = table.shape.dimension();
-        let determinant =
-            map::physical_gradients(dimension, table.gradients(q), coords, &mut gradients[..nodes.len()]);
-        let weight = table.rule.weights[q] * determinant.unwrap_or(f64::NAN) * model.volume_factor(at);
-        let point = model.point(at);
-        norms.points += 1;
-        let outside = exact.body().outside(&point);
-        if outside > 0.0 {
-            norms.outside += 1;
-            norms.outside_distance = norms.outside_distance.max(outside);
+impl Pass<'_> {
+    fn add(&self, element: usize, norms: &mut DisplacementNorms) {
+        let kind = self.mesh.kind();
+        let mut coords = [[0.0; 3]; MAX_NODES];
+        let mut moved = [[0.0; 3]; MAX_NODES];
+        let mut gradients = [[0.0; 3]; MAX_NODES];
+        let count = self
+            .mesh
+            .elements
+            .coordinates(element, self.mesh.nodes, &mut coords);
+        for (target, &node) in moved.iter_mut().zip(self.mesh.elements.nodes(element)) {
+            *target = self.displacements[node as usize];
         }
-        let state = match exact.at(point) {
-            Ok(state) => state,
-            Err(refusal) => {
-                norms.no_value.get_or_insert(format!("element {}: {refusal}", mesh.elements.id(element)));
-                continue;
+        let (coords, moved, gradients) =
+            (&coords[..count], &moved[..count], &mut gradients[..count]);
+        for q in 0..self.table.len() {
+            let values = self.table.values(q);
+            let dimension = self.table.shape.dimension();
+            let determinant =
+                map::physical_gradients(dimension, self.table.gradients(q), coords, gradients);
+            let position = kind.in_space(map::position(values, coords));
+            let weight = self.table.rule.weights[q]
+                * determinant.unwrap_or(f64::NAN)
+                * model::volume_factor(kind, position);
+            let point = model::point(position);
+            norms.points += 1;
+            let outside = self.exact.body().outside(&point);
+            if outside > 0.0 {
+                norms.outside += 1;
+                norms.outside_distance = norms.outside_distance.max(outside);
             }
-        };
-        let computed = map::position(values, moved);
-        let (distance, size) = squares(&computed, &model.displacement(&state));
-        norms.l2.add(weight, distance, size);
-        let computed = gradient_of(moved, &gradients[..nodes.len()], computed, at, model);
-        let wanted = model.gradient(&state);
-        let (mut distance, mut size) = (0.0, 0.0);
-        for (c, w) in computed.iter().zip(&wanted) {
-            let (d, s) = squares(c, w);
-            distance += d;
-            size += s;
+            let state = match self.exact.at(point) {
+                Ok(state) => state,
+                Err(refusal) => {
+                    let id = self.mesh.elements.ids[element];
+                    norms
+                        .no_value
+                        .get_or_insert_with(|| format!("element {id}: {refusal}"));
+                    continue;
+                }
+            };
+            let computed = map::position(values, moved);
+            let (distance, size) =
+                squares(&judged(kind, computed), &model::displacement(kind, &state));
+            norms.l2.add(weight, distance, size);
+            let computed = model::computed_gradient(kind, moved, gradients, computed, position);
+            let wanted = model::gradient(kind, &state);
+            let rows = computed.iter().zip(&wanted).map(|(c, w)| squares(c, w));
+            let (distance, size) = rows.fold((0.0, 0.0), |sum, row| (sum.0 + row.0, sum.1 + row.1));
+            norms.h1.add(weight, distance, size);
         }
-        norms.h1.add(weight, distance, size);
     }
 }
 
-/// du_i/dX_j from nodal values; in an axisymmetric model also u_R/R in the last place.
-fn gradient_of(
-    moved: &[[f64; 3]],
-    gradients: &[[f64; 3]],
-    displacement: [f64; 3],
-    at: [f64; 3],
-    model: Model,
-) -> [[f64; 3]; 3] {
-    let dimension = model.dimension();
-    let mut h = [[0.0; 3]; 3];
-    for (u, g) in moved.iter().zip(gradients) {
-        for (i, row) in h.iter_mut().enumerate().take(dimension) {
-            for (j, entry) in row.iter_mut().enumerate().take(dimension) {
-                *entry += u[i] * g[j];
-            }
-        }
+/// The part of a computed displacement that is judged.
+fn judged(kind: crate::results::ModelKind, u: [f64; 3]) -> [f64; 3] {
+    if kind == crate::results::ModelKind::Planar {
+        [u[0], u[1], 0.0]
+    } else {
+        u
     }
-    if model == Model::Axisymmetric {
-        h[2][2] = displacement[0] / at[0];
-    }
-    h
 }
 
 /// (|a - b|^2, |b|^2)
-fn squares(a: &[f64; 3], b: &[f64; 3]) -> (f64, f64) {
+pub fn squares<const N: usize>(a: &[f64; N], b: &[f64; N]) -> (f64, f64) {
     let mut sums = (0.0, 0.0);
     for (x, y) in a.iter().zip(b) {
         sums.0 += (x - y) * (x - y);
@@ -179,23 +173,37 @@ fn squares(a: &[f64; 3], b: &[f64; 3]) -> (f64, f64) {
     sums
 }
 
-/// Largest nodal displacement error, the node's index, and the largest nodal exact displacement.
+/// The node with the largest displacement error.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LargestNodal {
+    pub error: f64,
+    pub node: Option<usize>,
+    /// The largest exact displacement of any node.
+    pub exact: f64,
+}
+
+/// Looks at every node.
 ///
 /// # Errors
 /// Where the exact solution has no value at a node.
 pub fn largest_nodal(
-    mesh: &Mesh,
+    mesh: Mesh,
     displacements: &[[f64; 3]],
-    model: Model,
     exact: &dyn ExactSolution,
-) -> Result<(Largest<usize>, f64), String> {
+) -> Result<LargestNodal, String> {
+    let kind = mesh.kind();
     let mut largest = Largest::default();
     let mut size: f64 = 0.0;
-    for (node, (position, moved)) in mesh.positions.iter().zip(displacements).enumerate() {
-        let state = exact.at(model.point(*position)).map_err(|r| r.to_string())?;
-        let (distance, exact_size) = squares(moved, &model.displacement(&state));
+    for (node, moved) in displacements.iter().enumerate() {
+        let state = exact.at(mesh.node(node)).map_err(|r| r.to_string())?;
+        let (distance, exact_size) =
+            squares(&judged(kind, *moved), &model::displacement(kind, &state));
         largest.offer(distance.sqrt(), || node);
         size = size.max(exact_size.sqrt());
     }
-    Ok((largest, size))
+    Ok(LargestNodal {
+        error: largest.value,
+        node: largest.place,
+        exact: size,
+    })
 }

@@ -1,62 +1,95 @@
-//! How a mesh stands for the body: a slice, an axisymmetric half-plane or a solid.
+//! How a mesh stands for the body, and which part of the exact state it is held to.
 
 use crate::exact::State;
 use crate::mechanics::Point;
+use crate::results::{Elements, ModelKind, Nodes};
 
-/// The kind of model a result set is.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
-pub enum Model {
-    /// Two-dimensional in X, Y; integrals are per unit length.
-    Slice,
-    /// Two-dimensional in R, Z; integrals carry 2 pi R and cover the whole section.
-    Axisymmetric,
-    /// Three-dimensional.
-    Solid,
+/// A mesh with its nodes.
+#[derive(Debug, Clone, Copy)]
+pub struct Mesh<'a> {
+    pub nodes: &'a Nodes,
+    pub elements: &'a Elements,
 }
 
-impl Model {
-    /// 2 or 3.
-    pub fn dimension(self) -> usize {
-        if self == Model::Solid { 3 } else { 2 }
+impl Mesh<'_> {
+    pub fn kind(&self) -> ModelKind {
+        self.elements.kind
     }
 
-    /// The reference point of mesh coordinates (`[X, Y, 0]`, `[R, Z, _]` or `[X, Y, Z]`).
-    pub fn point(self, c: [f64; 3]) -> Point {
-        match self {
-            Model::Slice => Point::new(c[0], c[1], 0.0),
-            Model::Axisymmetric => Point::new(c[0], 0.0, c[1]),
-            Model::Solid => Point::new(c[0], c[1], c[2]),
-        }
+    /// The reference point of a node.
+    pub fn node(&self, node: usize) -> Point {
+        point(self.nodes.positions[node])
     }
+}
 
-    /// The volume that a mesh measure (area or volume) at these coordinates stands for.
-    pub fn volume_factor(self, c: [f64; 3]) -> f64 {
-        match self {
-            Model::Axisymmetric => 2.0 * std::f64::consts::PI * c[0],
-            Model::Slice | Model::Solid => 1.0,
-        }
+/// A position in space as a point.
+pub fn point(position: [f64; 3]) -> Point {
+    let [x, y, z] = position;
+    Point::new(x, y, z)
+}
+
+/// The volume that a mesh measure (area or volume) at a position in space stands for.
+pub fn volume_factor(kind: ModelKind, position: [f64; 3]) -> f64 {
+    match kind {
+        ModelKind::Axisymmetric => 2.0 * std::f64::consts::PI * position[0],
+        ModelKind::Planar | ModelKind::Solid => 1.0,
     }
+}
 
-    /// The exact displacement in the mesh's axes; a slice is judged on its in-plane part.
-    pub fn displacement(self, state: &State) -> [f64; 3] {
-        let u = state.displacement;
-        match self {
-            Model::Slice => [u[0], u[1], 0.0],
-            Model::Axisymmetric => [u[0], u[2], 0.0],
-            Model::Solid => [u[0], u[1], u[2]],
-        }
+/// The exact displacement in space; a planar model is judged on its in-plane part.
+pub fn displacement(kind: ModelKind, state: &State) -> [f64; 3] {
+    let u = state.displacement;
+    match kind {
+        ModelKind::Planar => [u[0], u[1], 0.0],
+        ModelKind::Axisymmetric | ModelKind::Solid => [u[0], u[1], u[2]],
     }
+}
 
-    /// The exact gradient in the mesh's axes, row by row; a slice is judged on its in-plane part. In an
-    /// axisymmetric model the last entry is u_R/R.
-    pub fn gradient(self, state: &State) -> [[f64; 3]; 3] {
-        let h = state.displacement_gradient;
-        match self {
-            Model::Slice => [[h[(0, 0)], h[(0, 1)], 0.0], [h[(1, 0)], h[(1, 1)], 0.0], [0.0; 3]],
-            Model::Axisymmetric => {
-                [[h[(0, 0)], h[(0, 2)], 0.0], [h[(2, 0)], h[(2, 2)], 0.0], [0.0, 0.0, h[(1, 1)]]]
+/// The exact du_i/dX_j; a planar model is judged on its in-plane part.
+pub fn gradient(kind: ModelKind, state: &State) -> [[f64; 3]; 3] {
+    let h = state.displacement_gradient;
+    let full = std::array::from_fn(|i| std::array::from_fn(|j| h[(i, j)]));
+    match kind {
+        ModelKind::Planar => in_plane(full),
+        ModelKind::Axisymmetric | ModelKind::Solid => full,
+    }
+}
+
+fn in_plane(h: [[f64; 3]; 3]) -> [[f64; 3]; 3] {
+    [[h[0][0], h[0][1], 0.0], [h[1][0], h[1][1], 0.0], [0.0; 3]]
+}
+
+/// The computed du_i/dX_j in space from nodal displacements and gradients of the shape functions in the mesh's
+/// own coordinates (`[R, Z]` in an axisymmetric model, where the hoop strain u_R/R joins them).
+pub fn computed_gradient(
+    kind: ModelKind,
+    moved: &[[f64; 3]],
+    gradients: &[[f64; 3]],
+    displacement: [f64; 3],
+    position: [f64; 3],
+) -> [[f64; 3]; 3] {
+    // the axis of space along each axis of the mesh
+    let axes: &[usize] = match kind {
+        ModelKind::Planar => &[0, 1],
+        ModelKind::Axisymmetric => &[0, 2],
+        ModelKind::Solid => &[0, 1, 2],
+    };
+    let mut h = [[0.0; 3]; 3];
+    for (u, g) in moved.iter().zip(gradients) {
+        for row in 0..3 {
+            for (j, &axis) in axes.iter().enumerate() {
+                h[row][axis] += u[row] * g[j];
             }
-            Model::Solid => std::array::from_fn(|i| std::array::from_fn(|j| h[(i, j)])),
+        }
+    }
+    match kind {
+        ModelKind::Planar => in_plane(h),
+        ModelKind::Solid => h,
+        ModelKind::Axisymmetric => {
+            // a turn about the axis carries the radial into the hoop direction: -u_hoop/R and u_R/R
+            h[0][1] = -displacement[1] / position[0];
+            h[1][1] = displacement[0] / position[0];
+            h
         }
     }
 }

@@ -10,7 +10,11 @@ use crate::verdict::judge::Criterion;
 use crate::verdict::outcome::{Bound, Judged, Kind};
 
 /// The order theory expects of a measure, from the element or as the case states it.
-pub fn expected_order(measure: &Measure, element: Option<&Element>, stated: &[(String, f64)]) -> Option<f64> {
+pub fn expected_order(
+    measure: &Measure,
+    element: Option<&Element>,
+    stated: &[(String, f64)],
+) -> Option<f64> {
     if let Some((_, order)) = stated.iter().find(|(name, _)| name == measure.name) {
         return Some(*order);
     }
@@ -35,7 +39,12 @@ pub fn stated_orders(case: &CaseEntry, reader: &mut Reader) -> Vec<(String, f64)
             continue;
         }
         if order.unit.is_some() || order.number <= 0.0 {
-            refuse(name, format!("\"{}\" is no order of convergence", order.text), "a positive number", reader);
+            refuse(
+                name,
+                format!("\"{}\" is no order of convergence", order.text),
+                "a positive number",
+                reader,
+            );
             continue;
         }
         orders.push((name.value.clone(), order.number));
@@ -53,9 +62,19 @@ pub fn resolve(
 ) -> Vec<Criterion> {
     let mut resolved: Vec<Criterion> = Vec::new();
     for entry in &case.accept {
-        let Some(criterion) = resolve_one(case, entry, element, stated, units, reader) else { continue };
-        if resolved.iter().any(|earlier| earlier.text == criterion.text) {
-            refuse(&entry.measure, format!("the criterion \"{}\" stands twice", criterion.text), "each once", reader);
+        let Some(criterion) = resolve_one(case, entry, element, stated, units, reader) else {
+            continue;
+        };
+        if resolved
+            .iter()
+            .any(|earlier| earlier.text == criterion.text)
+        {
+            refuse(
+                &entry.measure,
+                format!("the criterion \"{}\" stands twice", criterion.text),
+                "each once",
+                reader,
+            );
             continue;
         }
         resolved.push(criterion);
@@ -75,14 +94,24 @@ fn resolve_one(
     if let Some(level) = &entry.level
         && !case.levels.iter().any(|l| l.value == level.value)
     {
-        refuse(level, format!("there is no level \"{}\" in this case", level.value), "one of `levels:`", reader);
+        refuse(
+            level,
+            format!("there is no level \"{}\" in this case", level.value),
+            "one of `levels:`",
+            reader,
+        );
         return None;
     }
     let (kind, dimension) = what_is_compared(entry, measure);
     let limit = match entry.limit.value.within(dimension, units) {
         Ok(limit) => limit,
         Err(found) => {
-            refuse(&entry.limit, found, "a limit in the unit of the measure", reader);
+            refuse(
+                &entry.limit,
+                found,
+                "a limit in the unit of the measure",
+                reader,
+            );
             return None;
         }
     };
@@ -91,13 +120,24 @@ fn resolve_one(
         Subject::Value => Judged::Value,
         Subject::Order => Judged::Order,
     };
-    let theory = (judged == Judged::Order).then(|| expected_order(measure, element, stated)).flatten();
+    let theory = (judged == Judged::Order)
+        .then(|| expected_order(measure, element, stated))
+        .flatten();
     if entry.kind == LimitKind::Within && theory.is_none() {
         let found = format!("no order is known to expect of {}", measure.name);
-        refuse(&entry.limit, found, "`element:` or `expected-orders:` in the case, or `at-least:` here", reader);
+        refuse(
+            &entry.limit,
+            found,
+            "`element:` or `expected-orders:` in the case, or `at-least:` here",
+            reader,
+        );
         return None;
     }
-    let unit = if kind == Kind::Relative { "1".to_string() } else { units.name_of(dimension) };
+    let unit = if kind == Kind::Relative {
+        "1".to_string()
+    } else {
+        units.name_of(dimension)
+    };
     Some(Criterion {
         text: text_of(entry, measure),
         judged,
@@ -123,7 +163,9 @@ fn what_is_compared(entry: &CriterionEntry, measure: &Measure) -> (Kind, Dimensi
     match entry.subject {
         Subject::Order => (Kind::Relative, Dimension::None),
         Subject::Value => (Kind::Value, measure.dimension),
-        Subject::Error if entry.limit.value.dimension() == Dimension::None => (Kind::Relative, Dimension::None),
+        Subject::Error if entry.limit.value.dimension() == Dimension::None => {
+            (Kind::Relative, Dimension::None)
+        }
         Subject::Error => (Kind::Absolute, measure.dimension),
     }
 }
@@ -140,8 +182,15 @@ fn text_of(entry: &CriterionEntry, measure: &Measure) -> String {
         LimitKind::Within => ("within", " of theory"),
     };
     let fit = if entry.by_fit { ", all levels" } else { "" };
-    let level = entry.level.as_ref().map(|l| format!(", level {}", l.value)).unwrap_or_default();
-    format!("{subject} {} {kind} {}{tail}{fit}{level}", measure.name, entry.limit.value.text)
+    let level = entry
+        .level
+        .as_ref()
+        .map(|l| format!(", level {}", l.value))
+        .unwrap_or_default();
+    format!(
+        "{subject} {} {kind} {}{tail}{fit}{level}",
+        measure.name, entry.limit.value.text
+    )
 }
 
 fn title_of(judged: Judged, measure: &Measure) -> String {
@@ -161,7 +210,13 @@ fn known(name: &Placed<String>, reader: &mut Reader) -> Option<&'static Measure>
             None => "`truebore catalogue` lists all measures".to_string(),
         };
         let expected = "a measure such as displacement-L2, stress-L2 or strain-energy";
-        refuse(name, format!("unknown measure \"{}\"", name.value), expected, reader).hint = hint;
+        refuse(
+            name,
+            format!("unknown measure \"{}\"", name.value),
+            expected,
+            reader,
+        )
+        .hint = hint;
     }
     found
 }

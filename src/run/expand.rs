@@ -15,7 +15,10 @@ pub fn expand(node: &Node) -> Vec<Combination> {
     match &node.value {
         Value::List(items) => items.iter().flat_map(choices_of).collect(),
         Value::Map(entries) => product(node, entries),
-        _ => vec![Combination { node: node.clone(), labels: Vec::new() }],
+        _ => vec![Combination {
+            node: node.clone(),
+            labels: Vec::new(),
+        }],
     }
 }
 
@@ -23,7 +26,10 @@ pub fn expand(node: &Node) -> Vec<Combination> {
 pub fn count(node: &Node) -> usize {
     match &node.value {
         Value::List(items) => items.iter().map(count).fold(0, usize::saturating_add),
-        Value::Map(entries) => entries.iter().map(|(_, n)| count(n)).fold(1, usize::saturating_mul),
+        Value::Map(entries) => entries
+            .iter()
+            .map(|(_, n)| count(n))
+            .fold(1, usize::saturating_mul),
         _ => 1,
     }
 }
@@ -41,7 +47,12 @@ pub fn empty_list(node: &Node) -> Option<&Node> {
 /// One item of a list, with its own lists expanded; its label says the whole choice.
 fn choices_of(item: &Node) -> Vec<Combination> {
     let inner = expand(item).into_iter();
-    inner.map(|c| Combination { labels: vec![label(&c.node)], node: c.node }).collect()
+    inner
+        .map(|c| Combination {
+            labels: vec![label(&c.node)],
+            node: c.node,
+        })
+        .collect()
 }
 
 fn product(node: &Node, entries: &[(Key, Node)]) -> Vec<Combination> {
@@ -58,7 +69,13 @@ fn product(node: &Node, entries: &[(Key, Node)]) -> Vec<Combination> {
         }
         partial = next;
     }
-    let combine = |(map, labels)| Combination { node: Node { value: Value::Map(map), ..node.clone() }, labels };
+    let combine = |(map, labels)| Combination {
+        node: Node {
+            value: Value::Map(map),
+            ..node.clone()
+        },
+        labels,
+    };
     partial.into_iter().map(combine).collect()
 }
 
@@ -72,7 +89,9 @@ pub fn label(node: &Node) -> String {
             let parts = entries.iter().flat_map(|(key, value)| match &value.value {
                 Value::Map(inner) => {
                     let values = inner.iter().map(|(_, v)| label(v));
-                    std::iter::once(sanitized(&key.name)).chain(values).collect()
+                    std::iter::once(sanitized(&key.name))
+                        .chain(values)
+                        .collect()
                 }
                 _ => vec![sanitized(&key.name), label(value)],
             });
@@ -83,7 +102,14 @@ pub fn label(node: &Node) -> String {
 
 fn sanitized(text: &str) -> String {
     let kept = text.chars().filter(|c| !c.is_whitespace());
-    kept.map(|c| if c.is_ascii_alphanumeric() || "-_.+".contains(c) { c } else { '_' }).collect()
+    kept.map(|c| {
+        if c.is_ascii_alphanumeric() || "-_.+".contains(c) {
+            c
+        } else {
+            '_'
+        }
+    })
+    .collect()
 }
 
 #[cfg(test)]
@@ -101,7 +127,9 @@ mod tests {
     #[test]
     fn the_first_list_varies_slowest() {
         assert_eq!(
-            labels("outer: [10, 12]\nends: [plane-strain, { fixed-stretch: { axial-stretch: [1.1, 1.2] } }]\nmu: 1\n"),
+            labels(
+                "outer: [10, 12]\nends: [plane-strain, { fixed-stretch: { axial-stretch: [1.1, 1.2] } }]\nmu: 1\n"
+            ),
             [
                 "10-plane-strain",
                 "10-fixed-stretch-1.1",

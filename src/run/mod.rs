@@ -1,1 +1,15 @@
 //! Where the parts meet: suite, cases, outcome.
+
+pub mod brief;
+pub mod check;
+pub mod expand;
+pub mod facts;
+pub mod level;
+pub mod plan;
+pub mod tables;
+
+mod criteria;
+mod pairing;
+mod parameters;
+mod series;
+mod template;

@@ -23,7 +23,11 @@ pub fn read(node: &Node, path: &str, reader: &mut Reader) -> Option<Element> {
     let mut block = reader.block(node, path)?;
     let shape_path = block.path_of("displacement");
     let displacement = block
-        .required("displacement", reader, "the shape of the displacement element, e.g. quad9")
+        .required(
+            "displacement",
+            reader,
+            "the shape of the displacement element, e.g. quad9",
+        )
         .and_then(|n| shape(n, &shape_path, reader));
     let pressure_path = block.path_of("pressure");
     let pressure = match block.optional("pressure") {
@@ -40,8 +44,15 @@ fn element(displacement: Shape, pressure: PressureSpace, words: String) -> Eleme
         PressureSpace::None => format!("{}, displacement only", displacement.name()),
         _ => format!("{}, pressure {words}", displacement.name()),
     };
-    let pairing = Pairing { displacement_degree: displacement.degree() as u32, pressure };
-    Element { displacement, pairing, text }
+    let pairing = Pairing {
+        displacement_degree: displacement.degree() as u32,
+        pressure,
+    };
+    Element {
+        displacement,
+        pairing,
+        text,
+    }
 }
 
 fn shape(node: &Node, path: &str, reader: &mut Reader) -> Option<Shape> {
@@ -49,7 +60,12 @@ fn shape(node: &Node, path: &str, reader: &mut Reader) -> Option<Shape> {
     let found = Shape::from_name(&name);
     if found.is_none() {
         let names = Shape::ALL.map(Shape::name);
-        let finding = reader.refuse("unknown-shape", node, path, format!("unknown shape \"{name}\""));
+        let finding = reader.refuse(
+            "unknown-shape",
+            node,
+            path,
+            format!("unknown shape \"{name}\""),
+        );
         finding.expected = format!("one of: {}", names.join(", "));
         if let Some(near) = nearest(&name, names) {
             finding.hint = format!("did you mean `{near}`?");
@@ -69,7 +85,14 @@ fn pressure(node: &Node, path: &str, reader: &mut Reader) -> Option<(PressureSpa
             Some(1) => PressureSpace::Linear,
             Some(_) => PressureSpace::Quadratic,
             None => {
-                reader.refuse("unknown-shape", node, path, format!("unknown pressure space \"{word}\"")).expected =
+                reader
+                    .refuse(
+                        "unknown-shape",
+                        node,
+                        path,
+                        format!("unknown pressure space \"{word}\""),
+                    )
+                    .expected =
                     "none, constant, linear, quadratic, or a shape such as quad4".into();
                 return None;
             }

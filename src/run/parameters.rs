@@ -18,13 +18,21 @@ impl Materials {
     /// Builds every material of the suite, reporting each problem at its place.
     pub fn build(suite: &Suite, reader: &mut Reader) -> Self {
         let built = suite.materials.iter().map(|entry| {
-            (entry.name.clone(), build_material(entry, &suite.units, reader))
+            (
+                entry.name.clone(),
+                build_material(entry, &suite.units, reader),
+            )
         });
-        Self { list: built.collect() }
+        Self {
+            list: built.collect(),
+        }
     }
 
     fn find(&self, name: &str) -> Option<&Option<Material>> {
-        self.list.iter().find(|(known, _)| known == name).map(|(_, material)| material)
+        self.list
+            .iter()
+            .find(|(known, _)| known == name)
+            .map(|(_, material)| material)
     }
 
     fn names(&self) -> Vec<&str> {
@@ -32,10 +40,19 @@ impl Materials {
     }
 }
 
-fn build_material(entry: &MaterialEntry, units: &UnitSystem, reader: &mut Reader) -> Option<Material> {
+fn build_material(
+    entry: &MaterialEntry,
+    units: &UnitSystem,
+    reader: &mut Reader,
+) -> Option<Material> {
     let Some(law) = materials::find(&entry.law.value) else {
         let names: Vec<_> = materials::entries().iter().map(|e| e.name).collect();
-        let finding = refuse(&entry.law, "unknown-law", format!("unknown law \"{}\"", entry.law.value), reader);
+        let finding = refuse(
+            &entry.law,
+            "unknown-law",
+            format!("unknown law \"{}\"", entry.law.value),
+            reader,
+        );
         finding.expected = format!("one of: {}", names.join(", "));
         if let Some(near) = nearest(&entry.law.value, names) {
             finding.hint = format!("did you mean `{near}`?");
@@ -61,14 +78,29 @@ fn build_material(entry: &MaterialEntry, units: &UnitSystem, reader: &mut Reader
     match materials::build(&entry.law.value, &values) {
         Ok(material) => Some(material),
         Err(problem) => {
-            let at = entry.constants.iter().map(|(name, _)| name).find(|n| n.value == problem.parameter);
-            refuse(at.unwrap_or(&entry.law), "material-constants", problem.message, reader).hint = problem.hint;
+            let at = entry
+                .constants
+                .iter()
+                .map(|(name, _)| name)
+                .find(|n| n.value == problem.parameter);
+            refuse(
+                at.unwrap_or(&entry.law),
+                "material-constants",
+                problem.message,
+                reader,
+            )
+            .hint = problem.hint;
             None
         }
     }
 }
 
-fn refuse<'r>(at: &Placed<String>, rule: &str, found: String, reader: &'r mut Reader) -> &'r mut Finding {
+fn refuse<'r>(
+    at: &Placed<String>,
+    rule: &str,
+    found: String,
+    reader: &'r mut Reader,
+) -> &'r mut Finding {
     let place = reader.place(at.line, at.column, &at.path);
     reader.push(Finding::refused(rule, place, found))
 }
@@ -87,7 +119,11 @@ pub fn read(
     let outer_radius = length(&mut block, "outer-radius", units, reader);
     let ends_path = block.path_of("ends");
     let ends = block
-        .required("ends", reader, &format!("one of: {}", Ends::NAMES.join(", ")))
+        .required(
+            "ends",
+            reader,
+            &format!("one of: {}", Ends::NAMES.join(", ")),
+        )
         .and_then(|n| ends(n, &ends_path, units, reader));
     let material_path = block.path_of("material");
     let material = block
@@ -109,13 +145,23 @@ pub fn read(
     })
 }
 
-fn length(block: &mut Block, key: &'static str, units: &UnitSystem, reader: &mut Reader) -> Option<f64> {
+fn length(
+    block: &mut Block,
+    key: &'static str,
+    units: &UnitSystem,
+    reader: &mut Reader,
+) -> Option<f64> {
     let path = block.path_of(key);
     let node = block.required(key, reader, "a length")?;
     number(node, &path, Dimension::Length, units, reader)
 }
 
-fn pressure(block: &mut Block, key: &'static str, units: &UnitSystem, reader: &mut Reader) -> Option<f64> {
+fn pressure(
+    block: &mut Block,
+    key: &'static str,
+    units: &UnitSystem,
+    reader: &mut Reader,
+) -> Option<f64> {
     let path = block.path_of(key);
     let node = block.optional(key)?;
     number(node, &path, Dimension::Stress, units, reader)
@@ -154,14 +200,18 @@ fn ends(node: &Node, path: &str, units: &UnitSystem, reader: &mut Reader) -> Opt
             let given = block.as_mut().and_then(|b| b.optional("axial-force"));
             let at = format!("{at}.axial-force");
             let force = given.map(|n| number(n, &at, Dimension::Force, units, reader));
-            force.unwrap_or(Some(0.0)).map(|axial_force| Ends::GeneralizedPlaneStrain { axial_force })
+            force
+                .unwrap_or(Some(0.0))
+                .map(|axial_force| Ends::GeneralizedPlaneStrain { axial_force })
         }
         "fixed-stretch" => {
             let expected = "the axial stretch, e.g. { fixed-stretch: { axial-stretch: 1.2 } }";
             let given = match block.as_mut() {
                 Some(b) => b.required("axial-stretch", reader, expected),
                 None => {
-                    reader.refuse("missing-key", node, &at, "`axial-stretch:` is missing").expected = expected.into();
+                    reader
+                        .refuse("missing-key", node, &at, "`axial-stretch:` is missing")
+                        .expected = expected.into();
                     None
                 }
             };
@@ -170,7 +220,12 @@ fn ends(node: &Node, path: &str, units: &UnitSystem, reader: &mut Reader) -> Opt
             stretch.map(|axial_stretch| Ends::FixedStretch { axial_stretch })
         }
         _ => {
-            let finding = reader.refuse("unknown-word", node, path, format!("unknown end condition \"{name}\""));
+            let finding = reader.refuse(
+                "unknown-word",
+                node,
+                path,
+                format!("unknown end condition \"{name}\""),
+            );
             finding.expected = format!("one of: {}", Ends::NAMES.join(", "));
             if let Some(near) = nearest(&name, Ends::NAMES) {
                 finding.hint = format!("did you mean `{near}`?");
@@ -184,12 +239,18 @@ fn ends(node: &Node, path: &str, units: &UnitSystem, reader: &mut Reader) -> Opt
     ends
 }
 
-fn material(node: &Node, path: &str, materials: &Materials, reader: &mut Reader) -> Option<Material> {
+fn material(
+    node: &Node,
+    path: &str,
+    materials: &Materials,
+    reader: &mut Reader,
+) -> Option<Material> {
     let name = match &node.value {
         Value::Scalar(name) => name,
         _ => {
             let found = format!("found {}", node.kind());
-            reader.refuse("wrong-type", node, path, found).expected = "the name of a material of this suite".into();
+            reader.refuse("wrong-type", node, path, found).expected =
+                "the name of a material of this suite".into();
             return None;
         }
     };
@@ -197,7 +258,12 @@ fn material(node: &Node, path: &str, materials: &Materials, reader: &mut Reader)
         Some(material) => material.clone(),
         None => {
             let names = materials.names();
-            let finding = reader.refuse("unknown-material", node, path, format!("there is no material \"{name}\""));
+            let finding = reader.refuse(
+                "unknown-material",
+                node,
+                path,
+                format!("there is no material \"{name}\""),
+            );
             finding.expected = format!("one of: {}", names.join(", "));
             if let Some(near) = nearest(name, names) {
                 finding.hint = format!("did you mean `{near}`?");
@@ -208,11 +274,19 @@ fn material(node: &Node, path: &str, materials: &Materials, reader: &mut Reader)
 }
 
 /// The solution of this name, or a finding with the names there are.
-pub fn solution_entry(problem: &Placed<String>, reader: &mut Reader) -> Option<&'static catalogue::Entry> {
+pub fn solution_entry(
+    problem: &Placed<String>,
+    reader: &mut Reader,
+) -> Option<&'static catalogue::Entry> {
     let found = catalogue::find(&problem.value);
     if found.is_none() {
         let names: Vec<_> = catalogue::entries().iter().map(|e| e.name).collect();
-        let finding = refuse(problem, "unknown-solution", format!("unknown exact solution \"{}\"", problem.value), reader);
+        let finding = refuse(
+            problem,
+            "unknown-solution",
+            format!("unknown exact solution \"{}\"", problem.value),
+            reader,
+        );
         finding.expected = format!("one of: {}", names.join(", "));
         if let Some(near) = nearest(&problem.value, names) {
             finding.hint = format!("did you mean `{near}`?");

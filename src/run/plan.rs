@@ -71,9 +71,15 @@ pub fn plan(suite: Suite, file: &str) -> Result<Plan, Vec<Finding>> {
         plan_case(&suite, entry, &materials, &mut cases, &mut reader);
     }
     if reader.findings.is_empty() {
-        return Ok(Plan { file: file.to_string(), cases, suite });
+        return Ok(Plan {
+            file: file.to_string(),
+            cases,
+            suite,
+        });
     }
-    reader.findings.sort_by_key(|f| (f.place.line, f.place.column));
+    reader
+        .findings
+        .sort_by_key(|f| (f.place.line, f.place.column));
     // the same fault found in several combinations is said once
     reader.findings.dedup();
     Err(reader.findings)
@@ -86,16 +92,27 @@ fn plan_case(
     cases: &mut Vec<CasePlan>,
     reader: &mut Reader,
 ) {
-    let Some(solution) = parameters::solution_entry(&entry.problem, reader) else { return };
-    let Some((problems, elements)) = combinations(entry, reader) else { return };
+    let Some(solution) = parameters::solution_entry(&entry.problem, reader) else {
+        return;
+    };
+    let Some((problems, elements)) = combinations(entry, reader) else {
+        return;
+    };
     let share = share(entry, reader);
-    let axial_length = entry.axial_length.as_ref().and_then(|q| length(q, suite, reader));
+    let axial_length = entry
+        .axial_length
+        .as_ref()
+        .and_then(|q| length(q, suite, reader));
     let h = sizes(entry, suite, reader);
     let stated = criteria::stated_orders(entry, reader);
     for problem in &problems {
         let path = &entry.parameters.path;
-        let Some(parameters) = parameters::read(&problem.node, path, materials, &suite.units, reader) else { continue };
-        let exact = match catalogue::build(solution.name, parameters.clone()) {
+        let Some(parameters) =
+            parameters::read(&problem.node, path, materials, &suite.units, reader)
+        else {
+            continue;
+        };
+        let exact = match catalogue::build(solution.name, &parameters) {
             Ok(exact) => Arc::from(exact),
             Err(refusal) => {
                 refuse_solution(&refusal, &problem.node, path, problem, reader);
@@ -104,12 +121,30 @@ fn plan_case(
         };
         for element_choice in &elements {
             let element_path = entry.element.as_ref().map_or("", |e| e.path.as_str());
-            let element = element_choice.as_ref().and_then(|c| pairing::read(&c.node, element_path, reader));
+            let element = element_choice
+                .as_ref()
+                .and_then(|c| pairing::read(&c.node, element_path, reader));
             let no_labels = Vec::new();
             let labels = element_choice.as_ref().map_or(&no_labels, |c| &c.labels);
-            let id = [std::slice::from_ref(&entry.id.value), &problem.labels, labels].concat().join("-");
-            let Some(levels) = levels(entry, &id, &problem.node, element_choice.as_ref(), &h, reader) else { return };
-            let criteria = criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
+            let id = [
+                std::slice::from_ref(&entry.id.value),
+                &problem.labels,
+                labels,
+            ]
+            .concat()
+            .join("-");
+            let Some(levels) = levels(
+                entry,
+                &id,
+                &problem.node,
+                element_choice.as_ref(),
+                &h,
+                reader,
+            ) else {
+                return;
+            };
+            let criteria =
+                criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
             unique_id(&id, entry, cases, reader);
             cases.push(CasePlan {
                 title: title(entry, &id, problem, labels),
@@ -138,7 +173,12 @@ fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
     let element = entry.element.as_ref();
     for node in [Some(&entry.parameters), element].into_iter().flatten() {
         if let Some(list) = expand::empty_list(&node.value) {
-            let finding = reader.refuse("empty-list", list, &node.path, "the list is empty, so that it makes no case");
+            let finding = reader.refuse(
+                "empty-list",
+                list,
+                &node.path,
+                "the list is empty, so that it makes no case",
+            );
             finding.expected = "at least one value".into();
             return None;
         }
@@ -148,7 +188,9 @@ fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
     if count > MAX_CASES {
         let node = &entry.parameters;
         let found = format!("the lists make {count} cases");
-        reader.refuse("too-many-cases", &node.value, &node.path, found).expected = format!("at most {MAX_CASES}");
+        reader
+            .refuse("too-many-cases", &node.value, &node.path, found)
+            .expected = format!("at most {MAX_CASES}");
         return None;
     }
     let elements = match element {
@@ -166,16 +208,25 @@ fn refuse_solution(
     reader: &mut Reader,
 ) {
     let at = match &node.value {
-        Value::Map(entries) => entries.iter().find(|(key, _)| key.name == refusal.parameter).map(|(_, n)| n),
+        Value::Map(entries) => entries
+            .iter()
+            .find(|(key, _)| key.name == refusal.parameter)
+            .map(|(_, n)| n),
         _ => None,
     };
     let path = match at {
         Some(_) => format!("{path}.{}", refusal.parameter),
         None => path.to_string(),
     };
-    let which = if problem.labels.is_empty() { String::new() } else { format!(" (in {})", problem.labels.join("-")) };
+    let which = if problem.labels.is_empty() {
+        String::new()
+    } else {
+        format!(" (in {})", problem.labels.join("-"))
+    };
     let found = format!("{}{which}", refusal.message);
-    reader.refuse("no-exact-solution", at.unwrap_or(node), &path, found).hint = refusal.hint.clone();
+    reader
+        .refuse("no-exact-solution", at.unwrap_or(node), &path, found)
+        .hint = refusal.hint.clone();
 }
 
 /// The declared share of the section, above 0 and at most 1.
@@ -186,7 +237,13 @@ fn share(entry: &CaseEntry, reader: &mut Reader) -> Option<f64> {
         Ok(_) => format!("\"{}\" is no share of a section", declared.value.text),
         Err(found) => found,
     };
-    refuse(declared, "section-share", share, "a share above 0 and at most 1, e.g. 1/4 for a quarter", reader);
+    refuse(
+        declared,
+        "section-share",
+        share,
+        "a share above 0 and at most 1, e.g. 1/4 for a quarter",
+        reader,
+    );
     None
 }
 
@@ -194,7 +251,13 @@ fn length(declared: &Placed<Quantity>, suite: &Suite, reader: &mut Reader) -> Op
     match declared.value.within(Dimension::Length, &suite.units) {
         Ok(length) if length > 0.0 => Some(length),
         Ok(_) => {
-            refuse(declared, "length", format!("\"{}\" is not positive", declared.value.text), "a length above zero", reader);
+            refuse(
+                declared,
+                "length",
+                format!("\"{}\" is not positive", declared.value.text),
+                "a length above zero",
+                reader,
+            );
             None
         }
         Err(found) => {
@@ -206,13 +269,35 @@ fn length(declared: &Placed<Quantity>, suite: &Suite, reader: &mut Reader) -> Op
 
 /// Given mesh sizes, one for each level, falling.
 fn sizes(entry: &CaseEntry, suite: &Suite, reader: &mut Reader) -> Vec<f64> {
-    let sizes: Vec<f64> = entry.h.iter().filter_map(|q| length(q, suite, reader)).collect();
-    let Some(first) = entry.h.first() else { return sizes };
+    let sizes: Vec<f64> = entry
+        .h
+        .iter()
+        .filter_map(|q| length(q, suite, reader))
+        .collect();
+    let Some(first) = entry.h.first() else {
+        return sizes;
+    };
     if sizes.len() == entry.h.len() && sizes.len() != entry.levels.len() {
-        let found = format!("{} mesh sizes for {} levels", sizes.len(), entry.levels.len());
-        refuse(first, "mesh-sizes", found, "one size for each level", reader);
+        let found = format!(
+            "{} mesh sizes for {} levels",
+            sizes.len(),
+            entry.levels.len()
+        );
+        refuse(
+            first,
+            "mesh-sizes",
+            found,
+            "one size for each level",
+            reader,
+        );
     } else if sizes.windows(2).any(|pair| pair[1] >= pair[0]) {
-        refuse(first, "mesh-sizes", "the mesh sizes do not fall from level to level".into(), "coarsest level first", reader);
+        refuse(
+            first,
+            "mesh-sizes",
+            "the mesh sizes do not fall from level to level".into(),
+            "coarsest level first",
+            reader,
+        );
     }
     sizes
 }
@@ -233,7 +318,13 @@ fn levels(
 ) -> Option<Vec<LevelPlan>> {
     let Some(results) = &entry.results else {
         if let Some(level) = entry.levels.first() {
-            refuse(level, "levels", "levels without result sets".into(), "`results:` with the folder of a level", reader);
+            refuse(
+                level,
+                "levels",
+                "levels without result sets".into(),
+                "`results:` with the folder of a level",
+                reader,
+            );
         }
         return Some(Vec::new());
     };
@@ -252,13 +343,32 @@ fn levels(
         let folder = folder.and_then(|f| template::below_the_suite(&f).map(|()| f));
         match folder {
             Ok(folder) if planned.iter().any(|p| p.folder == folder) => {
-                let found = format!("levels {} and {name} have the same folder \"{folder}\"", planned[0].name);
-                refuse(results, "results-folder", found, "a folder for each level, e.g. with {level}", reader);
+                let found = format!(
+                    "levels {} and {name} have the same folder \"{folder}\"",
+                    planned[0].name
+                );
+                refuse(
+                    results,
+                    "results-folder",
+                    found,
+                    "a folder for each level, e.g. with {level}",
+                    reader,
+                );
                 return None;
             }
-            Ok(folder) => planned.push(LevelPlan { name: name.clone(), folder, h: h.get(i).copied() }),
+            Ok(folder) => planned.push(LevelPlan {
+                name: name.clone(),
+                folder,
+                h: h.get(i).copied(),
+            }),
             Err(found) => {
-                refuse(results, "results-folder", found, "a folder below the suite's own", reader);
+                refuse(
+                    results,
+                    "results-folder",
+                    found,
+                    "a folder below the suite's own",
+                    reader,
+                );
                 return None;
             }
         }
@@ -269,7 +379,10 @@ fn levels(
 /// The values a folder name may use: every parameter of the block.
 fn chosen(node: &Node) -> Vec<(String, String)> {
     match &node.value {
-        Value::Map(entries) => entries.iter().map(|(key, value)| (key.name.clone(), expand::label(value))).collect(),
+        Value::Map(entries) => entries
+            .iter()
+            .map(|(key, value)| (key.name.clone(), expand::label(value)))
+            .collect(),
         _ => Vec::new(),
     }
 }
@@ -277,7 +390,13 @@ fn chosen(node: &Node) -> Vec<(String, String)> {
 fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reader) {
     if cases.iter().any(|case| case.id == id) {
         let found = format!("two cases would be called \"{id}\"");
-        refuse(&entry.id, "duplicate-case-id", found, "ids that differ after lists are expanded", reader);
+        refuse(
+            &entry.id,
+            "duplicate-case-id",
+            found,
+            "ids that differ after lists are expanded",
+            reader,
+        );
     }
 }
 
@@ -286,7 +405,11 @@ fn title(entry: &CaseEntry, id: &str, problem: &Combination, element: &[String])
         None => id.to_string(),
         Some(title) => {
             let labels = [problem.labels.as_slice(), element].concat();
-            if labels.is_empty() { title.clone() } else { format!("{title}: {}", labels.join(", ")) }
+            if labels.is_empty() {
+                title.clone()
+            } else {
+                format!("{title}: {}", labels.join(", "))
+            }
         }
     }
 }

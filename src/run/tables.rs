@@ -18,7 +18,10 @@ pub fn stations(case: &CasePlan, stations: usize) -> Result<String, String> {
     let crate::exact::Body::Tube { inner, outer } = case.exact.body();
     let mut csv = String::from("R,r,u_r,lambda_r,lambda_t,lambda_z,srr,stt,szz,p,J,W\n");
     for radius in spaced(inner, outer, stations) {
-        let state = case.exact.at(Point::new(radius, 0.0, 0.0)).map_err(|r| r.to_string())?;
+        let state = case
+            .exact
+            .at(Point::new(radius, 0.0, 0.0))
+            .map_err(|r| r.to_string())?;
         let u = state.displacement[0];
         let [lr, lt, lz] = state.stretches;
         let s = state.local_stress;
@@ -76,41 +79,70 @@ pub struct PointTable {
 ///
 /// # Errors
 /// Every fault of the table, up to 20, each with its line.
-pub fn at_points(exact: &dyn ExactSolution, text: &[u8], file: &str) -> Result<PointTable, Vec<Finding>> {
-    let mut reader = csv::ReaderBuilder::new().comment(Some(b'#')).trim(csv::Trim::All).from_reader(text);
+pub fn at_points(
+    exact: &dyn ExactSolution,
+    text: &[u8],
+    file: &str,
+) -> Result<PointTable, Vec<Finding>> {
+    let mut reader = csv::ReaderBuilder::new()
+        .comment(Some(b'#'))
+        .trim(csv::Trim::All)
+        .from_reader(text);
     let place = || Place::file(file);
     let unreadable = |e: csv::Error| {
         let line = e.position().map_or(place(), |p| place().line(p.line()));
-        vec![Finding::refused("csv-form", line, e.to_string()).hint("every row needs as many cells as the header")]
+        vec![
+            Finding::refused("csv-form", line, e.to_string())
+                .hint("every row needs as many cells as the header"),
+        ]
     };
     let headers = reader.headers().map_err(unreadable)?.clone();
     let column = |name: &str| headers.iter().position(|h| h == name);
     let (Some(x), Some(y)) = (column("X"), column("Y")) else {
-        let found = format!("found the columns {}", headers.iter().collect::<Vec<_>>().join(", "));
+        let found = format!(
+            "found the columns {}",
+            headers.iter().collect::<Vec<_>>().join(", ")
+        );
         let finding = Finding::refused("missing-column", place().line(1), found);
         return Err(vec![finding.expected("columns X and Y, and Z for solids")]);
     };
     let z = column("Z");
     let mut writer = csv::Writer::from_writer(Vec::new());
-    let appended = ["ux", "uy", "uz", "sxx", "syy", "szz", "sxy", "syz", "szx", "p", "J", "W"];
-    let mut table = PointTable { csv: String::new(), outside: 0, outside_distance: 0.0 };
+    let appended = [
+        "ux", "uy", "uz", "sxx", "syy", "szz", "sxy", "syz", "szx", "p", "J", "W",
+    ];
+    let mut table = PointTable {
+        csv: String::new(),
+        outside: 0,
+        outside_distance: 0.0,
+    };
     let mut findings = Vec::new();
     let broken = |e: csv::Error| vec![Finding::refused("csv-form", place(), e.to_string())];
-    writer.write_record(headers.iter().chain(appended)).map_err(broken)?;
+    writer
+        .write_record(headers.iter().chain(appended))
+        .map_err(broken)?;
     for record in reader.records() {
         let record = record.map_err(unreadable)?;
         let line = record.position().map_or(0, csv::Position::line);
         let mut coordinate = |column: Option<usize>| -> Option<f64> {
-            let Some(column) = column else { return Some(0.0) };
+            let Some(column) = column else {
+                return Some(0.0);
+            };
             let cell = record.get(column).unwrap_or("");
             let number = cell.parse::<f64>().ok().filter(|v| v.is_finite());
             if number.is_none() {
                 let at = place().line(line).field(headers.get(column).unwrap_or(""));
-                findings.push(Finding::refused("finite-numbers", at, format!("\"{cell}\" is not a finite number")));
+                findings.push(Finding::refused(
+                    "finite-numbers",
+                    at,
+                    format!("\"{cell}\" is not a finite number"),
+                ));
             }
             number
         };
-        let (Some(px), Some(py), Some(pz)) = (coordinate(Some(x)), coordinate(Some(y)), coordinate(z)) else {
+        let (Some(px), Some(py), Some(pz)) =
+            (coordinate(Some(x)), coordinate(Some(y)), coordinate(z))
+        else {
             if findings.len() >= 20 {
                 return Err(findings);
             }
@@ -123,10 +155,15 @@ pub fn at_points(exact: &dyn ExactSolution, text: &[u8], file: &str) -> Result<P
                 table.outside += u64::from(outside > 0.0);
                 table.outside_distance = table.outside_distance.max(outside);
                 let values = row(&state);
-                writer.write_record(record.iter().chain(values.iter().map(String::as_str))).map_err(broken)?;
+                writer
+                    .write_record(record.iter().chain(values.iter().map(String::as_str)))
+                    .map_err(broken)?;
             }
             Err(refusal) => {
-                findings.push(Finding::refused("off-the-body", place().line(line), refusal.message).hint(refusal.hint));
+                findings.push(
+                    Finding::refused("off-the-body", place().line(line), refusal.message)
+                        .hint(refusal.hint),
+                );
                 if findings.len() >= 20 {
                     return Err(findings);
                 }
@@ -136,7 +173,9 @@ pub fn at_points(exact: &dyn ExactSolution, text: &[u8], file: &str) -> Result<P
     if !findings.is_empty() {
         return Err(findings);
     }
-    let bytes = writer.into_inner().map_err(|e| vec![Finding::refused("csv-form", place(), e.to_string())])?;
+    let bytes = writer
+        .into_inner()
+        .map_err(|e| vec![Finding::refused("csv-form", place(), e.to_string())])?;
     table.csv = String::from_utf8_lossy(&bytes).into_owned();
     Ok(table)
 }

@@ -17,8 +17,14 @@ pub fn fill(template: &str, values: &[(String, String)]) -> Result<String, Strin
         };
         let name = &rest[at + 1..at + end];
         let Some((_, value)) = values.iter().find(|(known, _)| known == name) else {
-            let known: Vec<_> = values.iter().map(|(known, _)| format!("{{{known}}}")).collect();
-            return Err(format!("\"{{{name}}}\" is unknown here; known: {}", known.join(", ")));
+            let known: Vec<_> = values
+                .iter()
+                .map(|(known, _)| format!("{{{known}}}"))
+                .collect();
+            return Err(format!(
+                "\"{{{name}}}\" is unknown here; known: {}",
+                known.join(", ")
+            ));
         };
         filled.push_str(value);
         rest = &rest[at + end + 1..];
@@ -37,7 +43,9 @@ pub fn below_the_suite(folder: &str) -> Result<(), String> {
         return Err("the folder is empty".to_string());
     }
     if folder.starts_with(['/', '\\', '~']) || drive {
-        return Err(format!("\"{folder}\" is not relative to the suite's folder"));
+        return Err(format!(
+            "\"{folder}\" is not relative to the suite's folder"
+        ));
     }
     if folder.split(['/', '\\']).any(|part| part == "..") {
         return Err(format!("\"{folder}\" leaves the suite's folder"));
@@ -51,8 +59,14 @@ mod tests {
 
     #[test]
     fn names_are_filled_and_faults_said() {
-        let values = [("ends".to_string(), "closed".to_string()), ("level".to_string(), "2".to_string())];
-        assert_eq!(fill("r/{ends}/l-{level}", &values), Ok("r/closed/l-2".to_string()));
+        let values = [
+            ("ends".to_string(), "closed".to_string()),
+            ("level".to_string(), "2".to_string()),
+        ];
+        assert_eq!(
+            fill("r/{ends}/l-{level}", &values),
+            Ok("r/closed/l-2".to_string())
+        );
         assert!(fill("r/{end}", &values).unwrap_err().contains("{ends}"));
         assert!(fill("r/{ends", &values).is_err());
         assert!(fill("r/ends}", &values).is_err());

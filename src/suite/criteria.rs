@@ -63,7 +63,9 @@ fn read_one(node: &Node, path: &str, reader: &mut Reader) -> Option<CriterionEnt
 /// `by: fit` or `by: pair` (the default).
 fn by_fit(block: &mut Block, reader: &mut Reader) -> bool {
     let path = block.path_of("by");
-    let Some(node) = block.optional("by") else { return false };
+    let Some(node) = block.optional("by") else {
+        return false;
+    };
     match node.scalar() {
         Some("fit") => true,
         Some("pair") => false,

@@ -51,7 +51,11 @@ impl Quantity {
             Dimension::None => named("1")?,
             Dimension::Force | Dimension::Energy if unit.dimension == dimension => {
                 // base units N and J are those of a system in m and Pa
-                let base = named(if dimension == Dimension::Force { "N" } else { "J" })?;
+                let base = named(if dimension == Dimension::Force {
+                    "N"
+                } else {
+                    "J"
+                })?;
                 let factor = UnitSystem::si().factor_to(suite, dimension);
                 return Ok(unit.convert(self.number, &base) * factor);
             }

@@ -1,0 +1,125 @@
+//! `check`: the main job, from suite files to reports.
+
+use super::args;
+use super::exact::print;
+use super::files;
+use super::look::Look;
+use super::Exit;
+use crate::input::Finding;
+use crate::report::{self, terminal};
+use crate::run::check::{Progress, check};
+use crate::run::plan::{Plan, plan};
+use crate::verdict::Verdict;
+use crate::verdict::outcome::Outcome;
+use std::io::Write;
+use std::path::{Path, PathBuf};
+
+/// Reads and plans a suite.
+///
+/// # Errors
+/// Every problem found.
+pub fn plan_of(path: &Path) -> Result<Plan, Vec<Finding>> {
+    let text = files::read_text(path).map_err(|finding| vec![finding])?;
+    let shown = path.display().to_string();
+    plan(crate::suite::read(&text, &shown)?, &shown)
+}
+
+/// Prints findings to stderr.
+pub fn refuse(findings: &[Finding]) -> Exit {
+    let mut text = String::new();
+    for finding in findings {
+        text.push_str(&format!("error: {finding}\n"));
+    }
+    if findings.len() > 1 {
+        text.push_str(&format!("{} problems; nothing was judged and no report was changed\n", findings.len()));
+    }
+    eprint(&text);
+    Exit::CouldNotJudge
+}
+
+/// One message on stderr.
+pub fn complain(message: &str) -> Exit {
+    eprint(&format!("error: {message}\n"));
+    Exit::CouldNotJudge
+}
+
+/// Writes to stderr; a closed pipe is no fault.
+pub fn eprint(text: &str) {
+    let mut err = std::io::stderr().lock();
+    let _ = err.write_all(text.as_bytes());
+    let _ = err.flush();
+}
+
+/// `truebore check`.
+pub fn run(options: &args::Check, look: Look) -> Exit {
+    if options.out.is_some() && options.suites.len() > 1 {
+        return complain("--out names the folder of one suite, and there are several\n  hint: check them one by one");
+    }
+    let exits = options.suites.iter().map(|suite| run_one(suite, options, look));
+    exits.max().unwrap_or(Exit::CouldNotJudge)
+}
+
+fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
+    let plan = match plan_of(path) {
+        Ok(plan) => plan,
+        Err(findings) => return refuse(&findings),
+    };
+    if plan.cases.iter().all(|case| case.levels.is_empty()) {
+        return complain(&format!(
+            "{}: no case names result sets\n  expected: `results:` and `levels:`\n  hint: `truebore brief` says what to export",
+            plan.file
+        ));
+    }
+    let bytes = match files::read_bytes(path) {
+        Ok(bytes) => bytes,
+        Err(finding) => return refuse(&[finding]),
+    };
+    let folder = path.parent().map_or_else(PathBuf::new, Path::to_path_buf);
+    let progress = Line { live: look.live };
+    let outcome = match check(&plan, &bytes, &folder, &progress) {
+        Ok(outcome) => outcome,
+        Err(findings) => {
+            progress.clear();
+            return refuse(&findings);
+        }
+    };
+    progress.clear();
+    let out = options.out.clone().unwrap_or_else(|| Path::new("reports").join(&plan.suite.id));
+    if let Err(finding) = files::write_together(&out, &report::all(&outcome)) {
+        return refuse(&[finding]);
+    }
+    if options.json {
+        print(&report::json::json(&outcome));
+    } else {
+        print(&terminal::terminal(&outcome, terminal::Look { colour: look.colour, width: 80 }));
+        print(&format!("reports in {}\n", out.display()));
+    }
+    exit_of(&outcome)
+}
+
+fn exit_of(outcome: &Outcome) -> Exit {
+    if outcome.verdict == Verdict::Pass { Exit::AllPass } else { Exit::NotAllPass }
+}
+
+/// The progress line on stderr.
+struct Line {
+    live: bool,
+}
+
+impl Line {
+    fn clear(&self) {
+        if self.live {
+            eprint("\r\x1b[K");
+        }
+    }
+}
+
+impl Progress for Line {
+    fn step(&self, done: usize, all: usize, what: &str) {
+        if self.live {
+            eprint(&format!("\r\x1b[Kresult set {done} of {all}: {what}"));
+        } else if done == all {
+            eprint(&format!("{all} result sets read and measured\n"));
+        }
+    }
+}

@@ -1,0 +1,109 @@
+//! `exact` and `brief`: what a suite asks for, without any result set.
+
+use super::args;
+use super::files;
+use super::{Exit, check};
+use crate::run::plan::{CasePlan, Plan};
+use crate::run::{brief as briefs, tables};
+use crate::suite::nearest;
+use std::io::Write;
+
+/// Prints text to stdout; a closed pipe is no fault.
+pub fn print(text: &str) {
+    let mut out = std::io::stdout().lock();
+    let _ = out.write_all(text.as_bytes());
+    let _ = out.flush();
+}
+
+/// `truebore exact`.
+pub fn run(options: &args::Exact) -> Exit {
+    let plan = match check::plan_of(&options.suite) {
+        Ok(plan) => plan,
+        Err(findings) => return check::refuse(&findings),
+    };
+    let case = match case_of(&plan, &options.case) {
+        Ok(case) => case,
+        Err(message) => return check::complain(&message),
+    };
+    if let Some(count) = options.what.stations {
+        return match tables::stations(case, count) {
+            Ok(csv) => done(&csv),
+            Err(message) => check::complain(&format!("{}: {message}", case.id)),
+        };
+    }
+    if let Some(path) = &options.what.points {
+        return points(case, path);
+    }
+    done(&tables::totals(case))
+}
+
+fn points(case: &CasePlan, path: &std::path::Path) -> Exit {
+    let bytes = match files::read_bytes(path) {
+        Ok(bytes) => bytes,
+        Err(finding) => return check::refuse(&[finding]),
+    };
+    match tables::at_points(case.exact.as_ref(), &bytes, &path.display().to_string()) {
+        Ok(table) => {
+            if table.outside > 0 {
+                eprintln!(
+                    "note: {} points lie outside the body, by {:.3e} {} at most; the formula is continued there",
+                    table.outside, table.outside_distance, case.units.length.name
+                );
+            }
+            done(&table.csv)
+        }
+        Err(findings) => check::refuse(&findings),
+    }
+}
+
+fn done(text: &str) -> Exit {
+    print(text);
+    Exit::AllPass
+}
+
+/// The case of that id.
+fn case_of<'p>(plan: &'p Plan, id: &str) -> Result<&'p CasePlan, String> {
+    plan.cases.iter().find(|case| case.id == id).ok_or_else(|| unknown_case(plan, id))
+}
+
+fn unknown_case(plan: &Plan, id: &str) -> String {
+    let ids = || plan.cases.iter().map(|case| case.id.as_str());
+    let mut message = format!("{}: there is no case \"{id}\"", plan.file);
+    if let Some(near) = nearest(id, ids()) {
+        message.push_str(&format!("\n  hint: did you mean \"{near}\"?"));
+    }
+    let shown: Vec<_> = ids().take(20).collect();
+    message.push_str(&format!("\n  expected: one of {}", shown.join(", ")));
+    if plan.cases.len() > shown.len() {
+        message.push_str(&format!(" and {} more (`truebore brief` lists all)", plan.cases.len() - shown.len()));
+    }
+    message
+}
+
+/// `truebore brief`.
+pub fn brief(options: &args::Brief) -> Exit {
+    let plan = match check::plan_of(&options.suite) {
+        Ok(plan) => plan,
+        Err(findings) => return check::refuse(&findings),
+    };
+    if let Some(id) = &options.case
+        && let Err(message) = case_of(&plan, id)
+    {
+        return check::complain(&message);
+    }
+    if let Some(folder) = &options.headers {
+        let cases = plan.cases.iter().filter(|case| options.case.as_ref().is_none_or(|id| case.id == *id));
+        for case in cases {
+            let texts = [
+                ("nodes.csv", briefs::nodes_header(case) + "\n"),
+                ("elements.csv", briefs::elements_header(case) + "\n"),
+                ("points.csv", briefs::points_header(case) + "\n"),
+                ("totals.csv", "quantity,value\n".to_string()),
+            ];
+            if let Err(finding) = files::write_together(&folder.join(&case.id), &texts) {
+                return check::refuse(&[finding]);
+            }
+        }
+    }
+    done(&briefs::brief(&plan, options.case.as_deref()))
+}

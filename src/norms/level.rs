@@ -1,0 +1,498 @@
+//! Everything that is measured on one mesh: the result set against the exact solution.
+
+use super::accumulate::{NoNorm, SquaredError};
+use super::body::BodyReport;
+use super::displacement::{DisplacementNorms, displacement_norms, largest_nodal};
+use super::model::Mesh;
+use super::points::{self, PointNorms};
+use super::profile::{self, StressProfile};
+use super::wall::{self, AtPlace};
+use crate::exact::{Body, ExactSolution, Extent};
+use crate::mechanics::{Dimension, Point, UnitSystem};
+use crate::results::{Channel, ModelKind, ResultSet};
+
+/// One measure of one mesh.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Measured {
+    /// Name in the catalogue.
+    pub measure: String,
+    /// A pure number, or why there is none.
+    pub relative: Result<f64, String>,
+    /// In `unit`.
+    pub absolute: Result<f64, String>,
+    /// The computed number itself, for numbers at a place and totals.
+    pub value: Option<f64>,
+    /// What it is held against: the exact number, or the norm of the exact field.
+    pub exact: Option<f64>,
+    pub unit: String,
+    pub place: Option<String>,
+    /// What was compared.
+    pub note: Option<String>,
+}
+
+impl Measured {
+    fn missing(measure: &str, unit: &str, why: &str) -> Self {
+        Self {
+            measure: measure.to_string(),
+            relative: Err(why.to_string()),
+            absolute: Err(why.to_string()),
+            value: None,
+            exact: None,
+            unit: unit.to_string(),
+            place: None,
+            note: None,
+        }
+    }
+
+    /// A computed number against an exact one.
+    fn number(measure: &str, unit: &str, computed: f64, exact: f64, place: Option<String>) -> Self {
+        let error = (computed - exact).abs();
+        let relative = if exact == 0.0 {
+            Err(NoNorm::ExactIsZero.to_string())
+        } else {
+            Ok(error / exact.abs())
+        };
+        Self {
+            measure: measure.to_string(),
+            relative,
+            absolute: Ok(error),
+            value: Some(computed),
+            exact: Some(exact),
+            unit: unit.to_string(),
+            place,
+            note: None,
+        }
+    }
+
+    fn norm(measure: &str, unit: &str, norm: &SquaredError) -> Self {
+        match norm.finish() {
+            Err(why) => Self::missing(measure, unit, &why.to_string()),
+            Ok(norm) => Self {
+                relative: norm.relative().map_err(|why| why.to_string()),
+                absolute: Ok(norm.absolute),
+                exact: Some(norm.exact),
+                ..Self::missing(measure, unit, "")
+            },
+        }
+    }
+
+    fn noted(mut self, note: Option<String>) -> Self {
+        self.note = note;
+        self
+    }
+}
+
+/// All of one mesh.
+#[derive(Debug, Clone, Default)]
+pub struct LevelMeasures {
+    pub measured: Vec<Measured>,
+    pub quadrature_points: u64,
+    pub outside: u64,
+    pub outside_distance: f64,
+    pub profile: Option<StressProfile>,
+}
+
+/// What the measures are taken from.
+#[derive(Debug)]
+pub struct Level<'a> {
+    pub set: &'a ResultSet,
+    pub exact: &'a dyn ExactSolution,
+    /// `None` without nodes and elements.
+    pub body: Option<&'a BodyReport>,
+    /// Norms over the integration points, `None` without points.csv.
+    pub points: Option<&'a PointNorms>,
+    pub share: f64,
+    pub units: &'a UnitSystem,
+}
+
+impl<'a> Level<'a> {
+    fn mesh(&self) -> Option<Mesh<'a>> {
+        Some(Mesh {
+            nodes: self.set.nodes()?,
+            elements: self.set.elements()?,
+        })
+    }
+
+    fn unit(&self, dimension: Dimension) -> String {
+        self.units.name_of(dimension)
+    }
+
+    /// Unit of the root of an integral over the mesh.
+    fn norm_unit(&self, dimension: Dimension) -> String {
+        let root = match self.set.kind() {
+            ModelKind::Planar => self.units.length.name.to_string(),
+            ModelKind::Solid | ModelKind::Axisymmetric => format!("{}^1.5", self.units.length.name),
+        };
+        match self.unit(dimension) {
+            field if field == "1" => root,
+            field => format!("{field} {root}"),
+        }
+    }
+
+    /// Measures everything there is; what is not there has its reason.
+    pub fn measure(&self) -> LevelMeasures {
+        let mut level = LevelMeasures::default();
+        self.displacements(&mut level);
+        self.fields(&mut level);
+        self.wall_stresses(&mut level);
+        self.totals(&mut level);
+        if let (Some(mesh), Some(points)) = (self.mesh(), self.points) {
+            level.profile =
+                profile::profile(mesh, &points.kept, &profile::column(mesh), self.exact);
+        }
+        level
+    }
+
+    fn displacements(&self, level: &mut LevelMeasures) {
+        let length = self.unit(Dimension::Length);
+        let names = [
+            "displacement-L2",
+            "displacement-H1",
+            "displacement-largest",
+            "inner-wall-displacement",
+            "mid-wall-displacement",
+            "outer-wall-displacement",
+        ];
+        let (mesh, moved) = match self.nodal_displacements() {
+            Ok(found) => found,
+            Err(why) => {
+                level.measured.extend(
+                    names
+                        .iter()
+                        .map(|name| Measured::missing(name, &length, &why)),
+                );
+                return;
+            }
+        };
+        let norms = displacement_norms(mesh, moved, self.exact);
+        level.quadrature_points = norms.points;
+        level.outside = norms.outside;
+        level.outside_distance = norms.outside_distance;
+        self.displacement_norms(&norms, level);
+        level
+            .measured
+            .push(match largest_nodal(mesh, moved, self.exact) {
+                Err(why) => Measured::missing(names[2], &length, &why),
+                Ok(found) => {
+                    let place = found.node.map(|node| {
+                        let p = mesh.node(node);
+                        format!(
+                            "node {} (R {:.6}, {:.3} deg)",
+                            mesh.nodes.ids[node],
+                            p.radius(),
+                            p.theta().to_degrees()
+                        )
+                    });
+                    let relative = if found.exact == 0.0 {
+                        Err(NoNorm::ExactIsZero.to_string())
+                    } else {
+                        Ok(found.error / found.exact)
+                    };
+                    Measured {
+                        relative,
+                        absolute: Ok(found.error),
+                        exact: Some(found.exact),
+                        place,
+                        ..Measured::missing(names[2], &length, "")
+                    }
+                }
+            });
+        let Body::Tube { inner, outer } = self.exact.body();
+        let middle = wall::nodes_nearest(mesh, 0.5 * (inner + outer), outer - inner);
+        let (inner_nodes, outer_nodes) = match self.body {
+            Some(body) => (body.inner_nodes.clone(), body.outer_nodes.clone()),
+            None => (Vec::new(), Vec::new()),
+        };
+        for (name, nodes) in [
+            (names[3], inner_nodes),
+            (names[4], middle),
+            (names[5], outer_nodes),
+        ] {
+            let found = wall::radial_displacement(mesh, moved, &nodes, self.exact);
+            level.measured.push(self.at_place(
+                name,
+                Dimension::Length,
+                found,
+                "there are no nodes at this place",
+            ));
+        }
+    }
+
+    fn nodal_displacements(&self) -> Result<(Mesh<'a>, &'a [[f64; 3]]), String> {
+        let nodes = self.set.nodes().ok_or("there is no nodes.csv")?;
+        let elements = self.set.elements().ok_or("there is no elements.csv")?;
+        match &nodes.displacement {
+            Some(moved) => Ok((Mesh { nodes, elements }, moved)),
+            None => Err(nodes.displacement_channel.reason().to_string()),
+        }
+    }
+
+    fn displacement_norms(&self, norms: &DisplacementNorms, level: &mut LevelMeasures) {
+        let l2_unit = self.norm_unit(Dimension::Length);
+        let h1_unit = self.norm_unit(Dimension::None);
+        let pairs = [
+            ("displacement-L2", &l2_unit, &norms.l2),
+            ("displacement-H1", &h1_unit, &norms.h1),
+        ];
+        let note =
+            (self.set.kind() == ModelKind::Planar).then(|| "in-plane components".to_string());
+        for (name, unit, norm) in pairs {
+            level.measured.push(match &norms.no_value {
+                Some(why) => Measured::missing(name, unit, why),
+                None => Measured::norm(name, unit, norm).noted(note.clone()),
+            });
+        }
+    }
+
+    fn fields(&self, level: &mut LevelMeasures) {
+        let Some((source, points)) = self.set.points().zip(self.points) else {
+            let why = "there is no points.csv";
+            for (name, dimension) in FIELDS {
+                level
+                    .measured
+                    .push(Measured::missing(name, &self.norm_unit(dimension), why));
+            }
+            return;
+        };
+        let channels = source.channels();
+        let components = points::missing_components(self.set.kind(), channels.components);
+        let compared = format!("components {}", channels.components.names().join(" "));
+        let stress_channel = match components {
+            Some(why) if channels.stress.is_available() => Channel::Missing(why),
+            _ => channels.stress.clone(),
+        };
+        let all = [
+            (&stress_channel, &points.stress, Some(compared)),
+            (&channels.p, &points.pressure, None),
+            (&channels.j, &points.volume_ratio, None),
+            (&channels.w, &points.energy_density, None),
+        ];
+        for ((name, dimension), (channel, norm, note)) in FIELDS.into_iter().zip(all) {
+            let unit = self.norm_unit(dimension);
+            let how = match channel {
+                Channel::Computed(how) => Some(how.clone()),
+                Channel::Given | Channel::Missing(_) => None,
+            };
+            level.measured.push(if !channel.is_available() {
+                Measured::missing(name, &unit, channel.reason())
+            } else if !channels.weight.is_available() {
+                Measured::missing(name, &unit, channels.weight.reason())
+            } else if let Some(why) = &points.no_value {
+                Measured::missing(name, &unit, why)
+            } else {
+                Measured::norm(name, &unit, norm).noted(note.or(how))
+            });
+        }
+    }
+
+    fn wall_stresses(&self, level: &mut LevelMeasures) {
+        let Some((mesh, body)) = self.mesh().zip(self.body) else {
+            return;
+        };
+        let Body::Tube { inner, outer } = self.exact.body();
+        let middle = 0.5 * (inner + outer);
+        let across = elements_across(mesh, middle);
+        let walls = [
+            ("inner-wall", inner, &body.inner_elements, &body.inner_nodes),
+            ("mid-wall", middle, &across, &Vec::new()),
+            ("outer-wall", outer, &body.outer_elements, &body.outer_nodes),
+        ];
+        for (wall_name, radius, elements, nodes) in walls {
+            for (component, symbol) in ["srr", "stt", "szz"].into_iter().enumerate() {
+                let name = format!("{wall_name}-{symbol}");
+                self.point_stress(&name, mesh, elements, radius, component, level);
+                if wall_name != "mid-wall" {
+                    self.nodal_stress(&format!("{name}-nodal"), mesh, nodes, component, level);
+                }
+            }
+        }
+    }
+
+    fn point_stress(
+        &self,
+        name: &str,
+        mesh: Mesh,
+        elements: &[usize],
+        radius: f64,
+        component: usize,
+        level: &mut LevelMeasures,
+    ) {
+        let unit = self.unit(Dimension::Stress);
+        let mut push = |name: &str, found: Result<Option<AtPlace>, String>| {
+            level.measured.push(match found {
+                Ok(Some(at)) => {
+                    Measured::number(name, &unit, at.computed, at.exact, Some(at.place))
+                }
+                Ok(None) => {
+                    Measured::missing(name, &unit, "there are no integration points at this place")
+                }
+                Err(why) => Measured::missing(name, &unit, &why),
+            });
+        };
+        let kept = self.kept_points(component);
+        let nearest = kept
+            .clone()
+            .map(|kept| wall::nearest_points(mesh, kept, elements, radius, component));
+        push(name, nearest);
+        if name.starts_with("mid-wall") {
+            return;
+        }
+        let extrapolated = kept.and_then(|kept| {
+            let state = self
+                .exact
+                .at(Point::new(radius, 0.0, 0.0))
+                .map_err(|r| r.to_string())?;
+            let exact = state.local_stress.to_array()[component];
+            Ok(wall::extrapolated(
+                mesh, kept, elements, radius, component, exact,
+            ))
+        });
+        push(&format!("{name}-extrapolated"), extrapolated);
+    }
+
+    /// The points kept near the walls, if they carry this component.
+    fn kept_points(&self, component: usize) -> Result<&'a [points::KeptPoint], String> {
+        let (source, points) = self
+            .set
+            .points()
+            .zip(self.points)
+            .ok_or("there is no points.csv")?;
+        let channels = source.channels();
+        if !channels.stress.is_available() {
+            return Err(channels.stress.reason().to_string());
+        }
+        let needed: &[usize] = if component == 2 { &[2] } else { &[0, 1, 3] };
+        let axisymmetric = self.set.kind() == ModelKind::Axisymmetric;
+        let lacks = |i: &&usize| !channels.components.has(**i) && !(axisymmetric && **i == 3);
+        match needed.iter().find(lacks) {
+            None => Ok(&points.kept),
+            Some(&i) => Err(format!(
+                "stress component {} is not exported",
+                crate::results::Components::NAMES[i]
+            )),
+        }
+    }
+
+    fn nodal_stress(
+        &self,
+        name: &str,
+        mesh: Mesh,
+        nodes: &[usize],
+        component: usize,
+        level: &mut LevelMeasures,
+    ) {
+        let needed: &[usize] = if component == 2 { &[2] } else { &[0, 1, 3] };
+        let found = match &mesh.nodes.stress {
+            None => Err(mesh.nodes.stress_channel.reason().to_string()),
+            Some(_) if needed.iter().any(|&i| !mesh.nodes.stress_components.has(i)) => {
+                Err("the nodal stress lacks a component".to_string())
+            }
+            Some(stress) => wall::nodal_stress(mesh, stress, nodes, component, self.exact),
+        };
+        level.measured.push(self.at_place(
+            name,
+            Dimension::Stress,
+            found,
+            "there are no nodes on this wall",
+        ));
+    }
+
+    fn at_place(
+        &self,
+        name: &str,
+        dimension: Dimension,
+        found: Result<Option<AtPlace>, String>,
+        nothing: &str,
+    ) -> Measured {
+        let unit = self.unit(dimension);
+        match found {
+            Ok(Some(at)) => Measured::number(name, &unit, at.computed, at.exact, Some(at.place)),
+            Ok(None) => Measured::missing(name, &unit, nothing),
+            Err(why) => Measured::missing(name, &unit, &why),
+        }
+    }
+
+    fn totals(&self, level: &mut LevelMeasures) {
+        for (name, quantity) in [
+            ("strain-energy", "strain_energy"),
+            ("axial-stretch", "axial_stretch"),
+            ("axial-force", "axial_force"),
+        ] {
+            level.measured.push(self.total(name, quantity));
+        }
+    }
+
+    fn total(&self, name: &str, quantity: &str) -> Measured {
+        let planar = self.set.kind() == ModelKind::Planar;
+        let Some(exact) = self.exact.totals().iter().find(|t| t.name == quantity) else {
+            return Measured::missing(name, "1", "the exact solution has no such total");
+        };
+        let dimension = match exact.dimension {
+            Dimension::EnergyPerLength if !planar => Dimension::Energy,
+            other => other,
+        };
+        let unit = self.unit(dimension);
+        let length = self.body.map(|body| body.axial_length);
+        let scale = match (exact.extent, planar, length) {
+            (Extent::Whole, _, _) => 1.0,
+            (Extent::Section, _, _) | (Extent::SectionAndLength, true, _) => self.share,
+            (Extent::SectionAndLength, false, Some(length)) => self.share * length,
+            (Extent::SectionAndLength, false, None) => {
+                return Measured::missing(
+                    name,
+                    &unit,
+                    "the axial length is not known without nodes and elements",
+                );
+            }
+        };
+        let exact = match &exact.value {
+            Ok(value) => value * scale,
+            Err(why) => return Measured::missing(name, &unit, why),
+        };
+        let Some(totals) = self.set.totals() else {
+            return Measured::missing(name, &unit, "there is no totals.csv");
+        };
+        match totals.get(quantity) {
+            Some(total) => Measured::number(name, &unit, total.value, exact, None),
+            None => Measured::missing(name, &unit, &format!("totals.csv has no `{quantity}`")),
+        }
+    }
+}
+
+/// The norms over integration points.
+const FIELDS: [(&str, Dimension); 4] = [
+    ("stress-L2", Dimension::Stress),
+    ("pressure-L2", Dimension::Stress),
+    ("volume-ratio-L2", Dimension::None),
+    ("energy-density-L2", Dimension::EnergyDensity),
+];
+
+/// Elements whose corners reach to both sides of a radius, ascending.
+pub fn elements_across(mesh: Mesh, radius: f64) -> Vec<usize> {
+    let across = |element: &usize| {
+        let corners = mesh.elements.shapes[*element].corner_count();
+        let nodes = mesh.elements.nodes(*element)[..corners].iter();
+        let radii = nodes.map(|&n| mesh.node(n as usize).radius());
+        let (low, high) = radii.fold((f64::INFINITY, 0.0_f64), |(l, h), r| (l.min(r), h.max(r)));
+        let slack = 1e-9 * radius;
+        low <= radius + slack && radius <= high + slack
+    };
+    (0..mesh.elements.len()).filter(across).collect()
+}
+
+/// By element index, whether its integration points are needed after the pass.
+pub fn watched(mesh: Mesh, body: &BodyReport, exact: &dyn ExactSolution) -> Vec<bool> {
+    let Body::Tube { inner, outer } = exact.body();
+    let mut watched = vec![false; mesh.elements.len()];
+    let middle = elements_across(mesh, 0.5 * (inner + outer));
+    let lists = [
+        body.inner_elements.as_slice(),
+        &body.outer_elements,
+        &middle,
+        &profile::column(mesh),
+    ];
+    for &element in lists.into_iter().flatten() {
+        watched[element] = true;
+    }
+    watched
+}

@@ -1,0 +1,358 @@
+//! One result set: read, checked, compared with the body, measured.
+
+use super::plan::{CasePlan, LevelPlan};
+use crate::exact::Kinematics;
+use crate::input::{Finding, Place, Weight};
+use crate::norms::body::{self, BodyReport, Declared, WallSides};
+use crate::norms::model::Mesh;
+use crate::norms::points::{PointNorms, point_norms};
+use crate::norms::{Level, LevelMeasures, level};
+use crate::results::sanity;
+use crate::results::{
+    AngleUnit, ColumnNames, Conventions, InputFile, PressureKind, PressureSign, Reading, ResultSet,
+    Shear,
+};
+use crate::suite::model::ExportEntry;
+use crate::verdict::outcome::LevelOutcome;
+use std::path::Path;
+
+/// What one level gives.
+#[derive(Debug)]
+pub struct LevelResult {
+    pub outcome: LevelOutcome,
+    pub measures: LevelMeasures,
+    pub sides: WallSides,
+    pub findings: Vec<Finding>,
+    pub inputs: Vec<InputFile>,
+}
+
+/// How the files of a case are read.
+pub fn reading(case: &CasePlan) -> Reading {
+    let ExportEntry {
+        units,
+        columns,
+        conventions,
+        point_rule,
+        step,
+    } = &case.export;
+    let mut names = ColumnNames::default();
+    for (table, name, header) in columns {
+        let map = match table.as_str() {
+            "nodes" => &mut names.nodes,
+            "elements" => &mut names.elements,
+            "points" => &mut names.points,
+            "totals" => &mut names.totals,
+            _ => &mut names.all,
+        };
+        map.insert(name.clone(), header.value.clone());
+    }
+    let multiplier = conventions.pressure_is_multiplier == Some(true);
+    let tension = conventions.tension_positive_pressure == Some(true);
+    Reading {
+        columns: names,
+        conventions: Conventions {
+            stress: conventions.stress.unwrap_or_default(),
+            pressure: if multiplier {
+                PressureKind::Multiplier
+            } else {
+                PressureKind::Mean
+            },
+            pressure_sign: if tension {
+                PressureSign::TensionPositive
+            } else {
+                PressureSign::CompressionPositive
+            },
+            shear: if conventions.engineering_shear == Some(true) {
+                Shear::Engineering
+            } else {
+                Shear::Tensor
+            },
+            angle: if conventions.degrees == Some(true) {
+                AngleUnit::Degrees
+            } else {
+                AngleUnit::Radians
+            },
+        },
+        units_from: units.unwrap_or(case.units),
+        units_to: case.units,
+        step: step.as_ref().map(|s| s.value),
+        point_rule: point_rule.as_ref().map(|r| r.value.clone()),
+    }
+}
+
+/// A level whose folder is not there.
+fn absent(plan: &LevelPlan, why: String) -> LevelResult {
+    LevelResult {
+        outcome: LevelOutcome {
+            level: plan.name.clone(),
+            folder: plan.folder.clone(),
+            missing: Some(why),
+            h: plan.h,
+            dimension: None,
+            nodes: 0,
+            elements: 0,
+            points: 0,
+            shapes: String::new(),
+            volume: None,
+            exact_volume: None,
+            outside_points: 0,
+            quadrature_points: 0,
+            outside_distance: 0.0,
+            walls: "none".to_string(),
+        },
+        measures: LevelMeasures::default(),
+        sides: WallSides::default(),
+        findings: Vec::new(),
+        inputs: Vec::new(),
+    }
+}
+
+/// Reads and measures one level. A folder that is not there, or empty, is a level that was not run.
+///
+/// # Errors
+/// Everything that forbids judging.
+pub fn measure(
+    case: &CasePlan,
+    plan: &LevelPlan,
+    suite_folder: &Path,
+) -> Result<LevelResult, Vec<Finding>> {
+    let folder = suite_folder.join(&plan.folder);
+    match std::fs::read_dir(&folder) {
+        Err(e) if e.kind() == std::io::ErrorKind::NotFound => {
+            return Ok(absent(
+                plan,
+                format!("there is no result set in {}", plan.folder),
+            ));
+        }
+        Err(e) => {
+            let place = Place::file(plan.folder.clone());
+            return Err(vec![Finding::refused(
+                "readable-file",
+                place,
+                format!("the folder cannot be read: {e}"),
+            )]);
+        }
+        Ok(mut entries) => {
+            if entries.next().is_none() {
+                return Ok(absent(plan, format!("the folder {} is empty", plan.folder)));
+            }
+        }
+    }
+    let set = ResultSet::open(&folder, &plan.folder, &reading(case))?;
+    let mut findings = set.remarks().to_vec();
+    findings.extend(sanity::check_mesh(&set)?);
+    let (report, volume) = compare_with_body(case, plan, &set, &mut findings)?;
+    let points = judge_points(case, &set, report.as_ref(), &mut findings)?;
+    check_shape(case, plan, &set)?;
+    check_load(plan, &set, &mut findings);
+    let measures = Level {
+        set: &set,
+        exact: case.exact.as_ref(),
+        body: report.as_ref(),
+        points: points.as_ref(),
+        share: case.share,
+        units: &case.units,
+    }
+    .measure();
+    note_outside(case, plan, &measures, &mut findings);
+    let sides = report.as_ref().map_or(WallSides::default(), |r| r.sides);
+    let outcome = outcome(
+        plan,
+        &set,
+        report.as_ref(),
+        volume,
+        points.as_ref(),
+        &measures,
+    );
+    let inputs = set.inputs();
+    Ok(LevelResult {
+        outcome,
+        measures,
+        sides,
+        findings,
+        inputs,
+    })
+}
+
+fn split(found: Vec<Finding>, findings: &mut Vec<Finding>) -> Result<(), Vec<Finding>> {
+    if found.iter().any(|f| f.weight == Weight::Refused) {
+        return Err(found);
+    }
+    findings.extend(found);
+    Ok(())
+}
+
+type BodyAndVolume = (Option<BodyReport>, Option<f64>);
+
+fn compare_with_body(
+    case: &CasePlan,
+    plan: &LevelPlan,
+    set: &ResultSet,
+    findings: &mut Vec<Finding>,
+) -> Result<BodyAndVolume, Vec<Finding>> {
+    let (Some(nodes), Some(elements)) = (set.nodes(), set.elements()) else {
+        return Ok((None, None));
+    };
+    let volume = sanity::mesh_volume(elements, nodes);
+    let declared = Declared {
+        share: case.share,
+        axial_length: case.axial_length,
+    };
+    let boundary = sanity::boundary_sides(elements);
+    let mesh = Mesh { nodes, elements };
+    let mut report = body::compare(
+        mesh,
+        &case.exact.body(),
+        declared,
+        volume,
+        &boundary,
+        &plan.folder,
+    );
+    split(std::mem::take(&mut report.findings), findings)?;
+    Ok((Some(report), Some(volume)))
+}
+
+fn judge_points(
+    case: &CasePlan,
+    set: &ResultSet,
+    report: Option<&BodyReport>,
+    findings: &mut Vec<Finding>,
+) -> Result<Option<PointNorms>, Vec<Finding>> {
+    let Some(source) = set.points() else {
+        return Ok(None);
+    };
+    if let Some(coverage) = sanity::check_points(set)? {
+        findings.extend(coverage.remarks);
+    }
+    let watched = match (set.nodes(), set.elements(), report) {
+        (Some(nodes), Some(elements), Some(report)) => {
+            level::watched(Mesh { nodes, elements }, report, case.exact.as_ref())
+        }
+        _ => Vec::new(),
+    };
+    point_norms(source, case.exact.as_ref(), &watched).map(Some)
+}
+
+/// The mesh is of the declared element, or the orders expected of it mean nothing.
+fn check_shape(case: &CasePlan, plan: &LevelPlan, set: &ResultSet) -> Result<(), Vec<Finding>> {
+    let (Some(element), Some(elements)) = (&case.element, set.elements()) else {
+        return Ok(());
+    };
+    let other = elements
+        .shapes_used()
+        .into_iter()
+        .find(|shape| *shape != element.displacement);
+    let Some(other) = other else { return Ok(()) };
+    let index = elements
+        .shapes
+        .iter()
+        .position(|s| *s == other)
+        .unwrap_or(0);
+    let found = format!("element {} is a {}", elements.ids[index], other.name());
+    Err(vec![
+        Finding::refused("declared-element", elements.place(index), found)
+            .expected(format!(
+                "{}, as `element:` of case {} declares",
+                element.displacement.name(),
+                case.id
+            ))
+            .hint(format!(
+                "mend `element:` or the result set in {}",
+                plan.folder
+            )),
+    ])
+}
+
+/// A result set that is not at its full load is compared with the wrong state: said, never hidden.
+fn check_load(plan: &LevelPlan, set: &ResultSet, findings: &mut Vec<Finding>) {
+    let Some(factor) = set.totals().and_then(|t| t.get("load_factor")) else {
+        return;
+    };
+    if (factor.value - 1.0).abs() > 1e-9 {
+        findings.push(
+            Finding::new(
+                Weight::Caution,
+                "full-load",
+                factor.place.clone(),
+                format!(
+                    "the load factor is {} in {}, and the case is judged at the full load",
+                    factor.value, plan.folder
+                ),
+            )
+            .expected("a load factor of 1")
+            .hint("export the last load step, or name it with `step:`"),
+        );
+    }
+}
+
+fn note_outside(
+    case: &CasePlan,
+    plan: &LevelPlan,
+    measures: &LevelMeasures,
+    findings: &mut Vec<Finding>,
+) {
+    if measures.outside == 0 {
+        return;
+    }
+    let continued = match case.exact.kinematics() {
+        Kinematics::Finite | Kinematics::SmallStrain => {
+            "the exact solution's formula is continued there"
+        }
+    };
+    findings.push(Finding::new(
+        Weight::Note,
+        "outside-the-body",
+        Place::file(plan.folder.clone()),
+        format!(
+            "{} of {} quadrature points lie outside the exact body, by {:.2e} {} at most: {continued}",
+            measures.outside, measures.quadrature_points, measures.outside_distance, case.units.length.name
+        ),
+    ));
+}
+
+fn outcome(
+    plan: &LevelPlan,
+    set: &ResultSet,
+    report: Option<&BodyReport>,
+    volume: Option<f64>,
+    points: Option<&PointNorms>,
+    measures: &LevelMeasures,
+) -> LevelOutcome {
+    let elements = set.elements();
+    let count = elements.map_or(0, |e| e.len());
+    let dimension = elements.map(|e| e.dimension());
+    let size = match (volume, dimension) {
+        (Some(volume), Some(dimension)) if count > 0 => {
+            // an axisymmetric mesh is measured by its area in the half plane, as its elements are
+            let measure = if set.kind() == crate::results::ModelKind::Axisymmetric {
+                None
+            } else {
+                Some(volume)
+            };
+            measure.map(|m| (m / count as f64).powf(1.0 / dimension as f64))
+        }
+        _ => None,
+    };
+    let shapes = elements.map_or_else(Vec::new, |e| e.shapes_used());
+    LevelOutcome {
+        level: plan.name.clone(),
+        folder: plan.folder.clone(),
+        missing: None,
+        h: plan.h.or(size),
+        dimension: dimension.map(|d| d as u32),
+        nodes: set.nodes().map_or(0, |n| n.len() as u64),
+        elements: count as u64,
+        points: points.map_or(0, |p| p.points),
+        shapes: shapes
+            .iter()
+            .map(|s| s.name())
+            .collect::<Vec<_>>()
+            .join(", "),
+        volume: volume.filter(|v| v.is_finite()),
+        exact_volume: report.map(|r| r.exact_volume).filter(|v| v.is_finite()),
+        outside_points: measures.outside,
+        quadrature_points: measures.quadrature_points,
+        outside_distance: measures.outside_distance,
+        walls: report.map_or("none", |r| r.sides.word()).to_string(),
+    }
+}
