@@ -171,7 +171,7 @@ def solve_state(tube, ends, Pi, Po, given):
 
 # ---------------------------------------------------------------- limits
 
-def follow(tube, ends, Po, given, a_max=mpf(10) ** 4, growth=mpf("1.02")):
+def follow(tube, ends, Po, given, a_max=mpf(10) ** 4, growth=mpf("1.05")):
     """First maximum of the inner pressure while the bore grows; None when there is none up to a_max times A.
 
     Returns (Pi, a, lz) at the maximum, or (None, slope, Pi, lz) at the end of the march, where slope is
@@ -349,7 +349,7 @@ def states():
         add(f"stretch-short-{tag}", "fixed-stretch", A, B, mu_nh, rounded(0.5 * full), rounded(0.1 * full), given=0.8)
         # close to the limit load
         for fraction in (0.9, 0.99, 0.9999):
-            law = mu_nh if (i + int(fraction * 100)) % 2 == 0 else mr
+            law = mu_nh if (i + round(fraction * 1000)) % 2 == 0 else (0.49 * mu, 0.01 * mu)
             tube = Tube(A, B, law[0] / 2 if len(law) == 1 else law[0], 0.0 if len(law) == 1 else law[1])
             top = follow(tube, "closed", 0, None)
             if top[0] is not None:
@@ -438,12 +438,18 @@ def make_limits():
     for force in (-2.0, 2.0, 10.0):
         wanted.append(("generalized-plane-strain", 1.0, 2.0, nh, 0.0, force))
         wanted.append(("generalized-plane-strain", 1.0, 2.0, mr, 0.0, force))
+    # closed Mooney-Rivlin tubes on either side of the condition for a maximum, see closed_limit_is_asymptote
+    for B in (1.0001, 2.0, 100.0):
+        for law in ((0.3, 0.15), (0.3, 0.19), (0.1, 0.4), (0.2, 0.25)):
+            wanted.append(("closed", 1.0, B, law, 0.0, None))
     for n, (ends, A, B, (c10, c01), Po, given) in enumerate(wanted):
         tube = Tube(A, B, c10 or 0.5, c01 or 0.0)
         mu = None if c10 else 1.0
         law = "neo-Hookean" if mu else "Mooney-Rivlin"
         head = [f"limit-{n + 1:03d}", ends, law, mu, c10, c01, A, B, Po, given]
         found = follow(tube, ends, Po, given)
+        if ends == "closed":
+            assert closed_limit_is_asymptote(tube) == (found[0] is None), head
         if found[0] is not None:
             rows.append(head + ["maximum", *found])
             continue
@@ -455,6 +461,8 @@ def make_limits():
         thickness = log(tube.B / tube.A)
         if ends == "generalized-plane-strain":
             lz = asymptotic_stretch(tube, mpf(given))
+        elif ends == "closed":
+            lz = sqrt(tube.c10 / tube.c01)
         else:
             lz = mpf(given or 1)
         limit = mpf(Po) + tube.modulus(lz) / lz * thickness
@@ -463,6 +471,19 @@ def make_limits():
         rows.append(head + ["asymptote", limit, "inf", lz])
     write("tube_limits.csv", LIMIT_COLUMNS, rows)
     return rows
+
+
+def closed_limit_is_asymptote(tube):
+    """True when the closed tube creeps up to its asymptote from below, False when it has a maximum first.
+
+    Second-order expansion for a large bore. With l = sqrt(c10/c01), the stretch it tends to, and S = (B/A)^2, the pressure
+    lies above its asymptote 4 sqrt(c10 c01) ln(B/A) when (S - 1)/(S + 1) (l^3 - l^-3)^2 > 2 ln(B/A). Then a maximum must
+    have come before; that none comes before in the other case is what the march finds.
+    """
+    if tube.c01 == 0:
+        return False
+    l, S = sqrt(tube.c10 / tube.c01), (tube.B / tube.A) ** 2
+    return (S - 1) / (S + 1) * (l**3 - l**-3) ** 2 <= 2 * log(tube.B / tube.A)
 
 
 def asymptotic_stretch(tube, force):
@@ -481,6 +502,56 @@ def asymptotic_stretch(tube, force):
     return lo
 
 
+def check_published():
+    """Known values, printed with the difference in units of their last digit; and a load beyond the limit refused."""
+    nh, mr = Tube(1.0, 2.0, 0.5), Tube(1.0, 2.0, 0.4, 0.1)
+    one, lz = mpf(1), mpf("1.2")
+    half = mpf("1.5")
+
+    def closed(p):
+        a, lz, _ = solve_state(nh, "closed", p, 0.0, None)
+        return a, lz
+
+    oden = Tube(7.0, 18.625, 80.0, 20.0)
+    a_oden, _, _ = solve_state(oden, "plane-strain", 150.0, 0.0, None)
+    p15, p12 = nh.pressure_difference(half, one), nh.pressure_difference(half, lz)
+    known = [
+        ("P, la 1.5", ".428228409096502", p15),
+        ("b, la 1.5", "2.29128784748", nh.radius(mpf(2), half, one)),
+        ("stt(A), la 1.5", "1.377327146459", nh.at(mpf(1), half, one, mpf(0))[4]),
+        ("N, la 1.5", "1.968651099788", nh.axial_force(half, one, p15, mpf(0))),
+        ("P, la 2", ".57405357230652", nh.pressure_difference(mpf(2), one)),
+        ("N, la 2", "3.318138943506", nh.axial_force(mpf(2), one, nh.pressure_difference(mpf(2), one), mpf(0))),
+        ("P, lz 1.2, la 1.5", ".404359989535088", p12),
+        ("N, lz 1.2, la 1.5", "6.437883439616", nh.axial_force(half, lz, p12, mpf(0))),
+        ("N - pi a^2 P, same", "3.579631101426", nh.axial_force(half, lz, p12, mpf(0)) - pi * half**2 * p12),
+        ("P, B 1.25, la 1.5", ".16712733121266", Tube(1.0, 1.25, 0.5).pressure_difference(half, one)),
+        ("P, A 3 B 9, la 1.2", ".287928548415375", Tube(3.0, 9.0, 0.5).pressure_difference(mpf("3.6"), one)),
+        ("P, Mooney, lz 1", ".4282284090965", mr.pressure_difference(half, one)),
+        ("P, Mooney, lz 1.2", ".43994366861418", mr.pressure_difference(half, lz)),
+        ("closed .1 la", "1.07309641946", closed(0.1)[0]), ("closed .1 lz", "1.00088532583", closed(0.1)[1]),
+        ("closed .3 la", "1.27865587859", closed(0.3)[0]), ("closed .3 lz", "1.01267625707", closed(0.3)[1]),
+        ("closed .5 la", "1.7861467436", closed(0.5)[0]), ("closed .5 lz", "1.09683808911", closed(0.5)[1]),
+        ("Oden u(A)", "7.181871426", a_oden - 7),
+        ("Oden u(B)", "3.713668316", oden.radius(mpf("18.625"), a_oden, one) - mpf("18.625")),
+        ("Oden srr(8.16)", "-121.634", oden.at(mpf("8.16"), a_oden, one, mpf(0))[3]),
+        ("energy, la 1.5", nstr(pi * (half**2 - 1) * log(half / nh.radius(mpf(2), half, one) * 2), 20), nh.energy(half, one)),
+    ]
+    for name, value, found in known:
+        last = mpf(10) ** -len(value.split(".")[1])
+        print(f"  {name:20s} {value:>22s}  {nstr((found - mpf(value)) / last, 2):>7s} of the last digit")
+        assert abs(found - mpf(value)) < 0.51 * last, name
+    top = follow(nh, "closed", 0, None)[0]
+    solve_state(nh, "closed", float(top * (1 - mpf("1e-9"))), 0.0, None)
+    try:
+        solve_state(nh, "closed", float(top * (1 + mpf("1e-9"))), 0.0, None)
+    except ValueError as refusal:
+        print(f"  limit load x (1 + 1e-9): {refusal}")
+    else:
+        raise AssertionError("a load beyond the limit was accepted")
+
+
 if __name__ == "__main__":
+    check_published()
     make_limits()
     make_states()
