@@ -33,7 +33,8 @@ impl Limit {
                 "no limit: the inner pressure still rises at a bore radius of {searched_to:.3e}"
             )),
             Self::NotFound { followed_to } => Err(format!(
-                "not found: the states could be followed up to an inner pressure of {followed_to:.6e} only"
+                "not found: the states could be followed up to an inner pressure of {} only",
+                rounded(*followed_to, 7)
             )),
         }
     }
@@ -76,10 +77,10 @@ pub(super) fn solve(
                 _ => inward.last().map_or(0.0, |s| s.pressure),
             };
             let message = format!(
-                "the outer pressure exceeds the inner one by {}, more than the {lowest:.9e} up to which the states \
+                "the outer pressure exceeds the inner one by {}, more than the {} up to which the states \
                  of the tube could be followed",
                 -difference,
-                lowest = -lowest
+                rounded(-lowest, 9)
             );
             refuse("outer-pressure", message, "reduce the outer pressure")
         })?
@@ -142,19 +143,22 @@ fn beyond(inner_pressure: f64, limit: &Limit) -> Refusal {
             ..
         } => (
             format!(
-                "inner-pressure = {inner_pressure} is beyond the maximum {top:.12e} that the tube can carry, \
-                 reached at a deformed bore radius of {inner_radius:.6e}"
+                "inner-pressure = {inner_pressure} is beyond the maximum {} that the tube can carry, \
+                 reached at a deformed bore radius of {}",
+                rounded(*top, 12),
+                rounded(*inner_radius, 7)
             ),
-            format!("stay below {top:.9e}"),
+            format!("stay below {}", rounded(*top, 9)),
         ),
         Limit::Asymptote {
             inner_pressure: top,
         } => (
             format!(
-                "inner-pressure = {inner_pressure} is beyond (or within round-off of) {top:.12e}, which the pressure \
-                 approaches as the bore grows without bound"
+                "inner-pressure = {inner_pressure} is beyond (or within round-off of) {}, which the pressure \
+                 approaches as the bore grows without bound",
+                rounded(*top, 12)
             ),
-            format!("stay below {top:.9e}"),
+            format!("stay below {}", rounded(*top, 9)),
         ),
         Limit::None { .. } | Limit::NotFound { .. } => {
             let reason = limit.pressure().err().unwrap_or_default();
@@ -167,6 +171,13 @@ fn beyond(inner_pressure: f64, limit: &Limit) -> Refusal {
         }
     };
     refuse("inner-pressure", message, hint)
+}
+
+/// `x` to a number of significant digits, for messages.
+pub(super) fn rounded(x: f64, digits: usize) -> f64 {
+    format!("{x:.*e}", digits.saturating_sub(1))
+        .parse()
+        .unwrap_or(x)
 }
 
 /// Both equations at once, with the given pressure difference as a constant in the axial one.
