@@ -129,16 +129,15 @@ fn compare(name: &str, states: &str, points: &str) -> (Worst, Worst, f64) {
             &mut easy
         };
         let stations = &stations[id];
-        let largest = |columns: &[&str], with_radius: bool| {
-            let all = stations.iter().flat_map(|s| {
-                let factor = if with_radius { 1.0 } else { 1.0 };
-                columns.iter().map(move |c| factor * number(s, c).abs())
-            });
+        let largest = |columns: &[&str]| {
+            let all = stations
+                .iter()
+                .flat_map(|s| columns.iter().map(move |c| number(s, c).abs()));
             all.fold(0.0_f64, f64::max)
         };
-        let stress = largest(&["srr", "stt", "szz"], false);
-        let displacement = largest(&["u_r"], true);
-        let energy = largest(&["W"], false);
+        let stress = largest(&["srr", "stt", "szz"]);
+        let displacement = largest(&["u_r"]);
+        let energy = largest(&["W"]);
         let mut errors: Vec<(&'static str, f64)> = Vec::new();
         let small = name == "lame-tube";
         let (a, area) = (given.inner_radius, tube.body().section_area());
@@ -333,5 +332,12 @@ fn limits_of_the_inner_pressure() {
             PressurisedTube::new(&parameters(&row, below)).unwrap_or_else(|r| panic!("{id}: {r}"));
         assert!(close.bound().displacement > 1e-14, "{id}");
     }
-    worst.judge(1e-12);
+    // where a maximum is flat its place is known less well than its height: limit-108, at 11 times the bore
+    let mut places = Worst::default();
+    for what in ["a", "lz"] {
+        let (error, case) = worst.0.remove(what).expect("seen");
+        places.see(what, &case, error);
+    }
+    places.judge(1e-11);
+    worst.judge(1e-13);
 }
