@@ -245,9 +245,6 @@ fn compare(name: &str, states: &str, points: &str) -> (Worst, Worst, f64) {
                 bound_ratio = bound_ratio.max(e / tube.bound().stress);
             }
             if ["a", "b", "lz", "axial force", "strain energy"].contains(&what) {
-                if e / tube.bound().totals > 1.0 {
-                    println!("over bound {what} {id} {e:e} {:e}", tube.bound().totals);
-                }
                 bound_ratio = bound_ratio.max(e / tube.bound().totals);
             }
         }
@@ -260,9 +257,10 @@ fn pressurised_tube_states() {
     let (easy, hard, bound_ratio) =
         compare("pressurised-tube", "tube_states.csv", "tube_points.csv");
     println!("actual error against stated bound: at most {bound_ratio:.2}");
-    easy.judge(1e-12);
+    // 12 digits are promised; measured 14.3, and 13.5 within 1e-4 of a limit
+    easy.judge(2e-14);
     println!("near a limit:");
-    hard.judge(1e-12);
+    hard.judge(1e-13);
     assert!(bound_ratio <= 1.0);
 }
 
@@ -270,7 +268,8 @@ fn pressurised_tube_states() {
 fn lame_tube_states() {
     let (easy, hard, bound_ratio) = compare("lame-tube", "lame_states.csv", "lame_points.csv");
     println!("actual error against stated bound: at most {bound_ratio:.2}");
-    easy.judge(1e-12);
+    // measured 14.8 digits
+    easy.judge(5e-15);
     assert!(hard.0.is_empty() && bound_ratio <= 1.0);
 }
 

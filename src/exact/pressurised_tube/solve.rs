@@ -89,7 +89,7 @@ pub(super) fn solve(
     };
     let (g, e) = polish(&path, near, difference);
     let integrals = wall.integrate(g, e, POINTS);
-    let (g_error, e_error) = errors(&path, g, e, (inner_pressure, outer_pressure), &integrals);
+    let (g_error, e_error) = errors(&path, g, e, difference, &integrals);
     Ok(Solved {
         g,
         e,
@@ -222,13 +222,12 @@ fn polish(path: &Path, from: Station, difference: f64) -> (f64, f64) {
 }
 
 /// Bounds on the errors of g and e: round-off and quadrature error of each equation, through the inverse tangent.
-fn errors(path: &Path, g: f64, e: f64, (inner, outer): (f64, f64), all: &Integrals) -> (f64, f64) {
-    let difference = inner - outer;
+fn errors(path: &Path, g: f64, e: f64, difference: f64, all: &Integrals) -> (f64, f64) {
     let check = path.wall.integrate(g, e, CHECK_POINTS);
     let (p, n) = residuals(path, g, e, difference, all);
     let (p2, n2) = residuals(path, g, e, difference, &check);
     let round_off = 2.0 * f64::EPSILON;
-    let p_error = round_off * (p.size + inner.abs() + outer.abs()) + (p.value - p2.value).abs();
+    let p_error = round_off * (p.size + difference.abs()) + (p.value - p2.value).abs();
     let n_error = match path.axial {
         Axial::Fixed(_) => 0.0,
         _ => round_off * n.size + (n.value - n2.value).abs(),
