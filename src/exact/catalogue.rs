@@ -168,3 +168,82 @@ pub fn build(name: &str, given: &Parameters) -> Result<Box<dyn ExactSolution>, R
     }
     (entry.build)(given)
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    // Red when an entry promises ends or materials that its solution refuses, or the other way round.
+    #[test]
+    fn every_entry_does_what_it_says() {
+        for entry in entries() {
+            for name in entry.materials() {
+                let law = materials::find(name).unwrap();
+                let values: Vec<_> = law
+                    .parameters
+                    .iter()
+                    .map(|p| (p.name.to_string(), 0.4))
+                    .collect();
+                let material = materials::build(name, &values).unwrap();
+                for ends in [
+                    Ends::PlaneStrain,
+                    Ends::GeneralizedPlaneStrain { axial_force: 0.1 },
+                    Ends::Closed,
+                    Ends::FixedStretch {
+                        axial_stretch: 1.01,
+                    },
+                    Ends::PlaneStress,
+                ] {
+                    let built = build(
+                        entry.name,
+                        &Parameters {
+                            inner_radius: 1.0,
+                            outer_radius: 2.0,
+                            ends,
+                            material: material.clone(),
+                            inner_pressure: 0.01,
+                            outer_pressure: 0.0,
+                        },
+                    );
+                    assert_eq!(
+                        built.is_ok(),
+                        entry.ends.contains(&ends.name()),
+                        "{} {ends:?}",
+                        entry.name
+                    );
+                    let Ok(built) = built else { continue };
+                    assert_eq!(built.kinematics(), entry.kinematics);
+                    let names: Vec<_> = built.totals().iter().map(|t| t.name).collect();
+                    assert_eq!(names[..2], ["inner_radius", "outer_radius"]);
+                    assert_eq!(names.len(), 7);
+                }
+            }
+            assert!(!entry.sources.is_empty() && !entry.checks.is_empty());
+        }
+    }
+
+    #[test]
+    fn unknown_names_and_wrong_materials_are_refused() {
+        let given = |name: &str, value: &[(&str, f64)]| Parameters {
+            inner_radius: 1.0,
+            outer_radius: 2.0,
+            ends: Ends::Closed,
+            material: materials::build(
+                name,
+                &value
+                    .iter()
+                    .map(|(n, v)| (n.to_string(), *v))
+                    .collect::<Vec<_>>(),
+            )
+            .unwrap(),
+            inner_pressure: 0.0,
+            outer_pressure: 0.0,
+        };
+        let soft = given("neo-Hookean", &[("mu", 1.0)]);
+        let refusal = build("pressurized-tube", &soft).unwrap_err();
+        assert!(refusal.hint.contains("pressurised-tube"));
+        let refusal = build("lame-tube", &soft).unwrap_err();
+        assert_eq!(refusal.parameter, "material");
+        assert_eq!(refusal.hint, "laws it can be made of: linear-elastic");
+    }
+}

@@ -195,3 +195,144 @@ impl ExactSolution for LameTube {
         "closed form".to_string()
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::exact::PressurisedTube;
+    use crate::materials::NeoHookean;
+    use proptest::prelude::*;
+
+    fn total(tube: &dyn ExactSolution, name: &str) -> f64 {
+        let found = tube.totals().iter().find(|t| t.name == name).unwrap();
+        found.value.clone().unwrap()
+    }
+
+    fn ends_of(i: usize, number: f64) -> Ends {
+        match i {
+            0 => Ends::PlaneStrain,
+            1 => Ends::Closed,
+            2 => Ends::PlaneStress,
+            3 => Ends::FixedStretch {
+                axial_stretch: 1.0 + 1e-3 * number,
+            },
+            _ => Ends::GeneralizedPlaneStrain {
+                axial_force: number,
+            },
+        }
+    }
+
+    proptest! {
+        // Strains and stresses are computed apart, so Hooke's law, the work of the loads and the derivative of u
+        // can all fail (tried: sign of `- nu szz` in al, m^2/3 -> m^2 in W, be without 1 + nu).
+        #[test]
+        fn random_tubes_obey_every_equation(
+            thickness in -4.0..2.0_f64, ends in 0..5_usize, number in -2.0..2.0_f64, nu in -0.9..0.5_f64,
+            pi in -1.0..1.0_f64, po in -1.0..1.0_f64, place in 0.0..1.0_f64,
+        ) {
+            let (a, b) = (1.5, 1.5 * (1.0 + 10f64.powf(thickness)));
+            let law = LinearElastic { e: 100.0, nu };
+            let tube = LameTube::new(&Parameters {
+                inner_radius: a, outer_radius: b, ends: ends_of(ends, number),
+                material: Material::LinearElastic(law), inner_pressure: pi, outer_pressure: po,
+            }).unwrap();
+            let at = |r: f64| tube.at(Point::new(r, 0.0, 1.0)).unwrap();
+            prop_assert!((at(a).local_stress.xx + pi).abs() < 1e-15);
+            prop_assert!((at(b).local_stress.xx + po).abs() < 1e-15);
+            let r = a + place * (b - a);
+            let state = at(r);
+            let s = [state.local_stress.xx, state.local_stress.yy, state.local_stress.zz];
+            let eps = [0, 1, 2].map(|i| state.displacement_gradient[(i, i)]);
+            let size = s.iter().fold(0.0_f64, |m, s| m.max(s.abs()));
+            for i in 0..3 {
+                let hooke = ((1.0 + nu) * s[i] - nu * (s[0] + s[1] + s[2])) / law.e;
+                prop_assert!((hooke - eps[i]).abs() < 1e-15 * 20.0 * size / law.e, "Hooke {i}");
+            }
+            let w: f64 = (0..3).map(|i| 0.5 * s[i] * eps[i]).sum();
+            prop_assert!((w - state.energy_density).abs() < 1e-14 * size * size / law.e, "W");
+            prop_assert!((state.volume_ratio - 1.0 - eps.iter().sum::<f64>()).abs() < 4e-15 * (1.0 + size / law.e));
+            // u is r eps_tt and u' = eps_rr
+            let h = 1e-5 * r;
+            let u = |r: f64| at(r).displacement.x;
+            prop_assert!(((u(r + h) - u(r - h)) / (2.0 * h) - eps[0]).abs() < 1e-8 * size / law.e);
+            // d srr/dr = (stt - srr)/r
+            let srr = |r: f64| at(r).local_stress.xx;
+            prop_assert!(((srr(r + h) - srr(r - h)) * 0.5 * r / h - (s[1] - s[0])).abs() < 1e-7 * size);
+            // Clapeyron: 2 E = Pi 2 pi A u(A) - Po 2 pi B u(B) + N ez
+            let force = total(&tube, "axial_force");
+            let stored = total(&tube, "strain_energy");
+            let work = PI * (pi * a * u(a) - po * b * u(b)) + 0.5 * force * eps[2];
+            let scale = size * size / law.e * PI * b * b;
+            prop_assert!((stored - work).abs() < 1e-13 * scale, "Clapeyron {stored} {work}");
+            prop_assert!((force - s[2] * PI * (b - a) * (b + a)).abs() < 1e-13 * size * b * b);
+        }
+    }
+
+    // The small-load limit of the finite tube at nu = 1/2, E = 3 mu: agreement to the strain. Red when either has a
+    // wrong factor.
+    #[test]
+    fn it_is_the_small_load_limit_of_the_finite_tube() {
+        let p = 1e-7;
+        for ends in [
+            Ends::PlaneStrain,
+            Ends::Closed,
+            Ends::GeneralizedPlaneStrain { axial_force: 3e-7 },
+        ] {
+            let given = |material: Material| Parameters {
+                inner_radius: 1.0,
+                outer_radius: 2.0,
+                ends,
+                material,
+                inner_pressure: p,
+                outer_pressure: 0.3 * p,
+            };
+            let finite =
+                PressurisedTube::new(&given(Material::incompressible(NeoHookean { mu: 1.0 })))
+                    .unwrap();
+            let small = LameTube::new(&given(Material::LinearElastic(LinearElastic {
+                e: 3.0,
+                nu: 0.5,
+            })))
+            .unwrap();
+            for r in [1.0, 1.3, 2.0] {
+                let point = Point::new(r, 0.0, 1.0);
+                let (f, s) = (finite.at(point).unwrap(), small.at(point).unwrap());
+                assert!(
+                    (f.displacement - s.displacement).abs().max() < 1e-5 * p,
+                    "{ends:?}"
+                );
+                for (x, y) in f.stress.to_array().into_iter().zip(s.stress.to_array()) {
+                    assert!((x - y).abs() < 1e-5 * p, "{ends:?}");
+                }
+                assert!((f.energy_density / s.energy_density - 1.0).abs() < 1e-5);
+            }
+        }
+    }
+
+    // MacNeal & Harder (1985) thick cylinder, plane strain, A = 3, B = 9, E = 1000, p = 1: u(A) = 5.0399e-3 at
+    // nu = 0.49 (from memory).
+    #[test]
+    fn macneal_harder_cylinder() {
+        let tube = LameTube::new(&Parameters {
+            inner_radius: 3.0,
+            outer_radius: 9.0,
+            ends: Ends::PlaneStrain,
+            material: Material::LinearElastic(LinearElastic {
+                e: 1000.0,
+                nu: 0.49,
+            }),
+            inner_pressure: 1.0,
+            outer_pressure: 0.0,
+        })
+        .unwrap();
+        let u = tube.at(Point::new(3.0, 0.0, 0.0)).unwrap().displacement.x;
+        assert!((u - 5.0399e-3).abs() < 5e-8);
+        assert!(
+            tube.totals()[6]
+                .value
+                .as_ref()
+                .unwrap_err()
+                .starts_with("no limit")
+        );
+    }
+}

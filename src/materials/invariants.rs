@@ -5,6 +5,7 @@
 //! q2 = (lt - lr)^2 = x^2/((1+x) lz)        z3 = lz^3 - 1 = z (z^2 + 3 z + 3)
 //! I1 - 3 = q2 + z^2 (lz + 2)/lz            I2 - 3 = lz^2 q2 + z^2 (2 lz + 1)/lz^2     sums of positives
 //! Tt - Tr = 2 (W1 + lz^2 W2) (lt^2 - lr^2)         lt^2 - lr^2 = (x + x/(1+x))/lz
+//! Tz - Tr = 2 (W1 + lt^2 W2) (lz^2 - lr^2)         lz^2 - lr^2 = lr^2 expm1(3e + d),  lt^2 = (1+x)/lz
 //! 2Tz - Tt - Tr = 2 W1 (2 z3/lz - q2) + 2 W2 (2 z3/lz^2 + lz^2 q2)
 //! ```
 
@@ -21,6 +22,8 @@ pub(super) struct Invariants<D> {
     lz2: D,
     q2: D,
     hoop: D,
+    axial: D,
+    lt2: D,
     z3: D,
 }
 
@@ -33,6 +36,7 @@ impl<D: Number> Invariants<D> {
         let down = x / (x + 1.0);
         let q2 = x * down / lz;
         let z2 = z * z;
+        let z3 = z * (z2 + z * 3.0 + 3.0);
         Self {
             i1: q2 + z2 * (lz + 2.0) / lz,
             i2: lz2 * q2 + z2 * (lz * 2.0 + 1.0) / lz2,
@@ -40,7 +44,9 @@ impl<D: Number> Invariants<D> {
             lz2,
             q2,
             hoop: (x + down) / lz,
-            z3: z * (z2 + z * 3.0 + 3.0),
+            axial: (e * 3.0 + d).exp_m1() / ((x + 1.0) * lz),
+            lt2: (x + 1.0) / lz,
+            z3,
         }
     }
 
@@ -49,8 +55,13 @@ impl<D: Number> Invariants<D> {
         (w1 + self.lz2 * w2) * self.hoop * 2.0
     }
 
-    /// 2Tz - Tt - Tr for dW/dI1 and dW/dI2.
+    /// Tz - Tr for dW/dI1 and dW/dI2.
     pub fn axial(&self, w1: D, w2: D) -> D {
+        (w1 + self.lt2 * w2) * self.axial * 2.0
+    }
+
+    /// 2Tz - Tt - Tr for dW/dI1 and dW/dI2.
+    pub fn reduced(&self, w1: D, w2: D) -> D {
         let first = self.z3 * 2.0 / self.lz - self.q2;
         let second = self.z3 * 2.0 / self.lz2 + self.lz2 * self.q2;
         (w1 * first + w2 * second) * 2.0

@@ -36,7 +36,7 @@ impl GaussRule {
             pairs[i] = (-node, weight);
             pairs[last - i] = (node, weight);
         }
-        if last % 2 == 0 {
+        if last.is_multiple_of(2) {
             pairs[last / 2].0 = 0.0;
         }
         Self { pairs }

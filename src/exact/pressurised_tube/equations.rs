@@ -6,11 +6,16 @@
 //! Pi - Po = int_0^H (Tt-Tr)/(1+k/s) dX                 equilibrium d srr/dr = (stt - srr)/r
 //! F = (pi A^2/lz) int_0^H (2Tz-Tt-Tr) s dX             reduced axial force, pi int (2szz-srr-stt) r dr
 //! energy = 2 pi A^2 int_0^H W s dX                     per unit reference length
-//! N = F + pi [(Pi-Po) a^2 - Po (B-A)(B+A)/lz]          net axial force on the wall
+//! N = F + pi [(Pi-Po) a^2 - Po (B-A)(B+A)/lz]          net axial force on the wall, for g < 1.5
+//!   = (pi A^2/lz) int_0^H [2 (Tz-Tr) s - (Tt-Tr)/(1+k/s) (s-1)] dX - pi Po (B-A)(B+A)/lz     beyond
+//! ```
+//! The second form of N is the integral of szz with srr integrated by parts: nothing in it grows with the bore,
+//! where F and (Pi-Po) a^2 cancel. At small strain the first has the smaller terms.
+//! ```text
 //! ```
 //! Rivlin, Phil. Trans. R. Soc. A 242 (1949) 173 (from memory), in the variables of numerics.md 1.
 
-use crate::materials::IncompressibleLaw;
+use crate::materials::{IncompressibleLaw, Slope};
 use crate::numerics::{CompensatedSum, GaussRule};
 use std::f64::consts::PI;
 use std::sync::Arc;
@@ -19,8 +24,8 @@ use std::sync::Arc;
 pub(super) const POINTS: usize = 16;
 pub(super) const CHECK_POINTS: usize = 24;
 
-/// Widest panel in X: the integrands are analytic up to |Im X| = pi/2.
-const PANEL: f64 = 0.6;
+/// Widest panel in X: the integrands are analytic up to |Im X| = pi/2, so that 16 points miss 1e-25 of them.
+const PANEL: f64 = 1.0;
 
 /// A number with its derivatives by `g` and `e`, and the sum of the sizes of its terms.
 #[derive(Debug, Clone, Copy, PartialEq, Default)]
@@ -39,6 +44,8 @@ pub(super) struct Integrals {
     pub pressure: Graded,
     /// F.
     pub reduced_force: Graded,
+    /// N + pi Po (B-A)(B+A)/lz, by the second form.
+    pub wall_force: Graded,
     /// Strain energy per unit reference length.
     pub energy: Graded,
 }
@@ -135,8 +142,8 @@ impl Wall {
         let rule = GaussRule::of(points);
         let lz = e.exp();
         let bore = g.exp();
-        let mut sums = [CompensatedSum::new(); 3];
-        let mut slopes = [(0.0, 0.0, 0.0); 3];
+        let mut sums = [CompensatedSum::new(); 4];
+        let mut slopes = [(0.0, 0.0, 0.0); 4];
         for panel in self.panels(g).windows(2) {
             for (x, weight) in rule.on(panel[0], panel[1]) {
                 let swell = (2.0 * x).exp_m1();
@@ -147,21 +154,20 @@ impl Wall {
                 let d_by_g = stretch_by_g / stretch;
                 let law = self.law.with_slopes(d, e);
                 let f = law.hoop.value / stretch;
+                let f_by_g = (law.hoop.by_d / stretch - f) * d_by_g;
+                let f_by_e = law.hoop.by_e / stretch;
+                let times = |x: Slope, factor: f64| {
+                    (x.value * factor, x.by_d * d_by_g * factor, x.by_e * factor)
+                };
+                let axial = times(law.axial, 2.0 * s);
                 let terms = [
+                    (f, f_by_g, f_by_e),
+                    times(law.reduced, s),
+                    times(law.energy, s),
                     (
-                        f,
-                        (law.hoop.by_d / stretch - f) * d_by_g,
-                        law.hoop.by_e / stretch,
-                    ),
-                    (
-                        law.axial.value * s,
-                        law.axial.by_d * d_by_g * s,
-                        law.axial.by_e * s,
-                    ),
-                    (
-                        law.energy.value * s,
-                        law.energy.by_d * d_by_g * s,
-                        law.energy.by_e * s,
+                        axial.0 - f * swell,
+                        axial.1 - f_by_g * swell,
+                        axial.2 - f_by_e * swell,
                     ),
                 ];
                 for ((sum, slope), (value, by_g, by_e)) in
@@ -181,14 +187,18 @@ impl Wall {
             size: slopes[i].2,
         };
         let square = self.inner * self.inner;
-        let force = graded(1).times(PI * square / lz);
-        Integrals {
-            pressure: graded(0),
-            // 1/lz depends on e
-            reduced_force: Graded {
+        // 1/lz depends on e
+        let force = |i: usize| {
+            let force = graded(i).times(PI * square / lz);
+            Graded {
                 by_e: force.by_e - force.value,
                 ..force
-            },
+            }
+        };
+        Integrals {
+            pressure: graded(0),
+            reduced_force: force(1),
+            wall_force: force(3),
             energy: graded(2).times(2.0 * PI * square),
         }
     }

@@ -21,7 +21,7 @@ use crate::materials::Material;
 use crate::mechanics::Point;
 use equations::Wall;
 use path::Axial;
-use solve::Solved;
+use solve::{Solved, rounded};
 use std::f64::consts::PI;
 use wall_fields::Fields;
 
@@ -151,7 +151,7 @@ fn bound_of(
         let law = wall.law.with_slopes(d, solved.e);
         let by = |by_d: f64, by_e: f64| by_d.abs() * d_error + by_e.abs() * e_error;
         let hoop = by(law.hoop.by_d, law.hoop.by_e);
-        let axial = 0.5 * (by(law.axial.by_d, law.axial.by_e) + hoop);
+        let axial = by(law.axial.by_d, law.axial.by_e);
         let pressure = &solved.integrals.pressure;
         let radial = pressure.by_g.abs() * g_error + pressure.by_e.abs() * e_error;
         stress.0 = stress.0.max(radial + hoop.max(axial));
@@ -202,10 +202,16 @@ impl ExactSolution for PressurisedTube {
     fn method(&self) -> String {
         let limit = match self.limit {
             Limit::Maximum { inner_pressure, .. } => {
-                format!("maximum of the inner pressure {inner_pressure:.9e}")
+                format!(
+                    "maximum of the inner pressure {}",
+                    rounded(inner_pressure, 10)
+                )
             }
             Limit::Asymptote { inner_pressure } => {
-                format!("asymptote of the inner pressure {inner_pressure:.9e}")
+                format!(
+                    "asymptote of the inner pressure {}",
+                    rounded(inner_pressure, 10)
+                )
             }
             Limit::None { .. } | Limit::NotFound { .. } => {
                 self.limit.pressure().err().unwrap_or_default()

@@ -49,9 +49,13 @@ pub(super) enum End {
     Lost(Station),
 }
 
-/// Largest |g| followed: a bore of e^15 times the reference one.
-const FARTHEST: f64 = 30.0;
+/// Largest |g| followed: a bore of e^25 times the reference one.
+const FARTHEST: f64 = 50.0;
 
+/// Beyond this g the axial equation takes the form whose terms do not grow with the bore.
+const WIDE: f64 = 1.5;
+
+/// The path at given axial condition.
 pub(super) struct Path<'a> {
     pub wall: &'a Wall,
     pub axial: Axial,
@@ -68,8 +72,17 @@ impl Path<'_> {
         else {
             return force;
         };
-        let bore = PI * self.wall.inner * self.wall.inner * (g - e).exp();
         let caps = PI * outer_pressure * self.wall.area_factor() * (-e).exp();
+        if g > WIDE {
+            let wall = all.wall_force;
+            return Graded {
+                value: wall.value - caps - given,
+                by_e: wall.by_e + caps,
+                size: wall.size + caps.abs() + given.abs(),
+                ..wall
+            };
+        }
+        let bore = PI * self.wall.inner * self.wall.inner * (g - e).exp();
         Graded {
             value: force.value + difference.value * bore - caps - given,
             by_g: force.by_g + (difference.by_g + difference.value) * bore,
@@ -167,7 +180,12 @@ impl Path<'_> {
                 return (trail, None);
             }
             if here.g.abs() >= FARTHEST {
-                return (trail, Some(End::Open(here)));
+                let end = if saturated(&trail, &here) {
+                    End::Asymptote(here.pressure)
+                } else {
+                    End::Open(here)
+                };
+                return (trail, Some(end));
             }
             let g = here.g + sign * step;
             let Some(next) = self.station(g, here.e + here.e_slope * (g - here.g)) else {
@@ -187,12 +205,8 @@ impl Path<'_> {
             }
             if sign > 0.0 {
                 let flat = next.slope.abs() <= 1e-16 * next.pressure.abs();
-                if next.slope <= 0.0 || flat {
-                    let before = trail.iter().rev().find(|s| s.g <= g - 1.0);
-                    let moved = before.map(|s| (next.pressure - s.pressure).abs());
-                    if moved.is_some_and(|m| m < 1e-9 * next.pressure.abs()) {
-                        return (trail, Some(End::Asymptote(next.pressure)));
-                    }
+                if (next.slope <= 0.0 || flat) && saturated(&trail, &next) {
+                    return (trail, Some(End::Asymptote(next.pressure)));
                 }
             }
             if next.slope <= 0.0 {
@@ -250,6 +264,13 @@ impl Path<'_> {
         }
         None
     }
+}
+
+/// Whether the pressure moved by less than 1e-9 of itself over the last unit of g: before a true maximum it moves
+/// by 4e-2 or more, at an asymptote by round-off (numerics.md 1).
+fn saturated(trail: &[Station], here: &Station) -> bool {
+    let before = trail.iter().rev().find(|s| (s.g - here.g).abs() >= 1.0);
+    before.is_some_and(|s| (here.pressure - s.pressure).abs() < 1e-9 * here.pressure.abs())
 }
 
 fn station_of(g: f64, e: f64, p: Graded, e_slope: f64) -> Option<Station> {

@@ -33,7 +33,8 @@ impl Limit {
                 "no limit: the inner pressure still rises at a bore radius of {searched_to:.3e}"
             )),
             Self::NotFound { followed_to } => Err(format!(
-                "not found: the states could be followed up to an inner pressure of {followed_to:.6e} only"
+                "not found: the states could be followed up to an inner pressure of {} only",
+                rounded(*followed_to, 7)
             )),
         }
     }
@@ -76,10 +77,10 @@ pub(super) fn solve(
                 _ => inward.last().map_or(0.0, |s| s.pressure),
             };
             let message = format!(
-                "the outer pressure exceeds the inner one by {}, more than the {lowest:.9e} up to which the states \
+                "the outer pressure exceeds the inner one by {}, more than the {} up to which the states \
                  of the tube could be followed",
                 -difference,
-                lowest = -lowest
+                rounded(-lowest, 9)
             );
             refuse("outer-pressure", message, "reduce the outer pressure")
         })?
@@ -88,7 +89,7 @@ pub(super) fn solve(
     };
     let (g, e) = polish(&path, near, difference);
     let integrals = wall.integrate(g, e, POINTS);
-    let (g_error, e_error) = errors(&path, g, e, (inner_pressure, outer_pressure), &integrals);
+    let (g_error, e_error) = errors(&path, g, e, difference, &integrals);
     Ok(Solved {
         g,
         e,
@@ -142,19 +143,22 @@ fn beyond(inner_pressure: f64, limit: &Limit) -> Refusal {
             ..
         } => (
             format!(
-                "inner-pressure = {inner_pressure} is beyond the maximum {top:.12e} that the tube can carry, \
-                 reached at a deformed bore radius of {inner_radius:.6e}"
+                "inner-pressure = {inner_pressure} is beyond the maximum {} that the tube can carry, \
+                 reached at a deformed bore radius of {}",
+                rounded(*top, 12),
+                rounded(*inner_radius, 7)
             ),
-            format!("stay below {top:.9e}"),
+            format!("stay below {}", rounded(*top, 9)),
         ),
         Limit::Asymptote {
             inner_pressure: top,
         } => (
             format!(
-                "inner-pressure = {inner_pressure} is beyond (or within round-off of) {top:.12e}, which the pressure \
-                 approaches as the bore grows without bound"
+                "inner-pressure = {inner_pressure} is beyond (or within round-off of) {}, which the pressure \
+                 approaches as the bore grows without bound",
+                rounded(*top, 12)
             ),
-            format!("stay below {top:.9e}"),
+            format!("stay below {}", rounded(*top, 9)),
         ),
         Limit::None { .. } | Limit::NotFound { .. } => {
             let reason = limit.pressure().err().unwrap_or_default();
@@ -167,6 +171,13 @@ fn beyond(inner_pressure: f64, limit: &Limit) -> Refusal {
         }
     };
     refuse("inner-pressure", message, hint)
+}
+
+/// `x` to a number of significant digits, for messages.
+pub(super) fn rounded(x: f64, digits: usize) -> f64 {
+    format!("{x:.*e}", digits.saturating_sub(1))
+        .parse()
+        .unwrap_or(x)
 }
 
 /// Both equations at once, with the given pressure difference as a constant in the axial one.
@@ -211,13 +222,12 @@ fn polish(path: &Path, from: Station, difference: f64) -> (f64, f64) {
 }
 
 /// Bounds on the errors of g and e: round-off and quadrature error of each equation, through the inverse tangent.
-fn errors(path: &Path, g: f64, e: f64, (inner, outer): (f64, f64), all: &Integrals) -> (f64, f64) {
-    let difference = inner - outer;
+fn errors(path: &Path, g: f64, e: f64, difference: f64, all: &Integrals) -> (f64, f64) {
     let check = path.wall.integrate(g, e, CHECK_POINTS);
     let (p, n) = residuals(path, g, e, difference, all);
     let (p2, n2) = residuals(path, g, e, difference, &check);
     let round_off = 2.0 * f64::EPSILON;
-    let p_error = round_off * (p.size + inner.abs() + outer.abs()) + (p.value - p2.value).abs();
+    let p_error = round_off * (p.size + difference.abs()) + (p.value - p2.value).abs();
     let n_error = match path.axial {
         Axial::Fixed(_) => 0.0,
         _ => round_off * n.size + (n.value - n2.value).abs(),

@@ -3,7 +3,7 @@
 //! ```text
 //! del = log1p(c (B-R)(B+R)/R^2),  c = k A^2/(B^2 + k A^2)        d = d(B) + del
 //! srr = -Po - del G(del)          G = mean over [0, del] of (Tt-Tr)/(2 expm1(d))
-//! stt = srr + (Tt-Tr)             szz = srr + ((2Tz-Tt-Tr) + (Tt-Tr))/2
+//! stt = srr + (Tt-Tr)             szz = srr + (Tz-Tr)
 //! u = R expm1((d-e)/2)            ln lt = (d-e)/2   ln lr = -(d+e)/2
 //! ```
 //! From d srr/dX = (Tt-Tr)/(1+k/s) and dX/(1+k/s) = -dd/(2 expm1(d)): in the variable d the integrand has no
@@ -159,7 +159,7 @@ impl Fields {
             -self.outer_pressure - del * self.mean(del)
         };
         let stt = srr + law.hoop;
-        let szz = srr + 0.5 * (law.axial + law.hoop);
+        let szz = srr + law.axial;
         if !(stt.is_finite() && szz.is_finite()) {
             return Err(no_value());
         }
@@ -170,7 +170,7 @@ impl Fields {
                 self.axial_strain,
             ],
             stress: SymTensor::diagonal(srr, stt, szz),
-            pressure: -(srr + 0.5 * law.hoop + law.axial / 6.0),
+            pressure: -(srr + (law.hoop + law.axial) / 3.0),
             energy_density: law.energy,
         })
     }
