@@ -18,10 +18,17 @@ pub fn read(text: &str) -> Result<Outcome, String> {
     struct Head {
         format: Option<u32>,
     }
-    let head: Head = serde_json::from_str(text).map_err(|error| format!("not an outcome: {error}"))?;
+    let head: Head =
+        serde_json::from_str(text).map_err(|error| format!("not an outcome: {error}"))?;
     match head.format {
-        Some(FORMAT) => serde_json::from_str(text).map_err(|error| format!("damaged outcome: {error}")),
-        Some(other) => Err(format!("outcome of format {other}; this program reads format {FORMAT}")),
-        None => Err(format!("not an outcome: no `format`; this program reads format {FORMAT}")),
+        Some(FORMAT) => {
+            serde_json::from_str(text).map_err(|error| format!("damaged outcome: {error}"))
+        }
+        Some(other) => Err(format!(
+            "outcome of format {other}; this program reads format {FORMAT}"
+        )),
+        None => Err(format!(
+            "not an outcome: no `format`; this program reads format {FORMAT}"
+        )),
     }
 }

@@ -11,9 +11,17 @@ use crate::verdict::outcome::{CaseOutcome, Counts, CriterionOutcome, Outcome};
 
 /// The outcome as JUnit XML, without times and host.
 pub fn junit(outcome: &Outcome) -> String {
-    let total = outcome.cases.iter().map(counts).fold(Counts::default(), add);
+    let total = outcome
+        .cases
+        .iter()
+        .map(counts)
+        .fold(Counts::default(), add);
     let mut out = String::from("<?xml version=\"1.0\" encoding=\"UTF-8\"?>\n");
-    out += &format!("<testsuites name=\"{}\" {}>\n", escape(&outcome.suite.id), attributes(total));
+    out += &format!(
+        "<testsuites name=\"{}\" {}>\n",
+        escape(&outcome.suite.id),
+        attributes(total)
+    );
     for case in &outcome.cases {
         out += &test_suite(&outcome.suite.id, case);
     }
@@ -21,11 +29,21 @@ pub fn junit(outcome: &Outcome) -> String {
 }
 
 fn test_suite(suite: &str, case: &CaseOutcome) -> String {
-    let mut out = format!("  <testsuite name=\"{}\" {}>\n", escape(&case.id), attributes(counts(case)));
+    let mut out = format!(
+        "  <testsuite name=\"{}\" {}>\n",
+        escape(&case.id),
+        attributes(counts(case))
+    );
     let class = format!("{}.{}", escape(suite), escape(&case.id));
     for criterion in &case.criteria {
         let detail = detail(criterion);
-        out += &test_case(&class, &criterion.text, criterion.verdict, &criterion.reason, &detail);
+        out += &test_case(
+            &class,
+            &criterion.text,
+            criterion.verdict,
+            &criterion.reason,
+            &detail,
+        );
     }
     if let Some(verdict) = whole_case(case) {
         let reason = case.reason.as_deref().unwrap_or("nothing was judged");
@@ -35,7 +53,10 @@ fn test_suite(suite: &str, case: &CaseOutcome) -> String {
 }
 
 fn test_case(class: &str, name: &str, verdict: Verdict, reason: &str, detail: &str) -> String {
-    let open = format!("    <testcase classname=\"{class}\" name=\"{}\"", escape(name));
+    let open = format!(
+        "    <testcase classname=\"{class}\" name=\"{}\"",
+        escape(name)
+    );
     let tag = match verdict {
         Verdict::Pass => return format!("{open}/>\n"),
         Verdict::Fail => "failure",
@@ -51,15 +72,23 @@ fn test_case(class: &str, name: &str, verdict: Verdict, reason: &str, detail: &s
 
 /// Value, limit and margin.
 fn detail(criterion: &CriterionOutcome) -> String {
-    let value = criterion.value.map_or("none".to_string(), |v| format!("{v:?}"));
+    let value = criterion
+        .value
+        .map_or("none".to_string(), |v| format!("{v:?}"));
     let margin = Margin::of(criterion).cell(Number::ascii);
-    format!("value {value}, limit {}, value is limit {margin}", criterion.limit_text)
+    format!(
+        "value {value}, limit {}, value is limit {margin}",
+        criterion.limit_text
+    )
 }
 
 /// The verdict of the one test that stands for a case whose criteria do not tell it: a case without criteria,
 /// or one that is worse than all of them.
 fn whole_case(case: &CaseOutcome) -> Option<Verdict> {
-    let told = case.criteria.iter().any(|criterion| criterion.verdict == case.verdict);
+    let told = case
+        .criteria
+        .iter()
+        .any(|criterion| criterion.verdict == case.verdict);
     match case.verdict {
         // without criteria nothing passed, whatever the record says
         Verdict::Pass if case.criteria.is_empty() => Some(Verdict::NotRun),
@@ -69,7 +98,12 @@ fn whole_case(case: &CaseOutcome) -> Option<Verdict> {
 }
 
 fn counts(case: &CaseOutcome) -> Counts {
-    Counts::of(case.criteria.iter().map(|criterion| criterion.verdict).chain(whole_case(case)))
+    Counts::of(
+        case.criteria
+            .iter()
+            .map(|criterion| criterion.verdict)
+            .chain(whole_case(case)),
+    )
 }
 
 fn add(a: Counts, b: Counts) -> Counts {
@@ -83,5 +117,9 @@ fn add(a: Counts, b: Counts) -> Counts {
 
 fn attributes(counts: Counts) -> String {
     let errors = counts.inconclusive + counts.not_run;
-    format!("tests=\"{}\" failures=\"{}\" errors=\"{errors}\" skipped=\"0\"", counts.total(), counts.fail)
+    format!(
+        "tests=\"{}\" failures=\"{}\" errors=\"{errors}\" skipped=\"0\"",
+        counts.total(),
+        counts.fail
+    )
 }

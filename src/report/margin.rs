@@ -52,7 +52,10 @@ impl Margin {
     /// For a sentence: "the limit times 54".
     pub fn phrase(&self, number: fn(&Number) -> String) -> Option<String> {
         match self {
-            Self::Divided(by) => Some(format!("the limit divided by {}", number(&Number::ratio(*by)))),
+            Self::Divided(by) => Some(format!(
+                "the limit divided by {}",
+                number(&Number::ratio(*by))
+            )),
             Self::Times(by) => Some(format!("the limit times {}", number(&Number::ratio(*by)))),
             Self::At => Some("exactly the limit".to_string()),
             _ => None,
@@ -74,13 +77,19 @@ pub fn end_ratio(criterion: &CriterionOutcome) -> Option<f64> {
         Bound::AtMost | Bound::Within => ratio + towards * half_width / criterion.limit.abs(),
         Bound::AtLeast => criterion.limit / (criterion.value? - towards * half_width),
     };
-    Some(if half_width > 0.0 && moved.is_finite() { moved } else { ratio })
+    Some(if half_width > 0.0 && moved.is_finite() {
+        moved
+    } else {
+        ratio
+    })
 }
 
 /// What needs attention first: worst verdict, then farthest beyond or nearest to the limit.
 pub fn attention(a: &CriterionOutcome, b: &CriterionOutcome) -> Ordering {
     let ratio = |c: &CriterionOutcome| end_ratio(c).unwrap_or(f64::NEG_INFINITY);
-    a.verdict.cmp(&b.verdict).then_with(|| ratio(b).total_cmp(&ratio(a)))
+    a.verdict
+        .cmp(&b.verdict)
+        .then_with(|| ratio(b).total_cmp(&ratio(a)))
 }
 
 /// The criterion a case is named by in tables.

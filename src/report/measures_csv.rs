@@ -33,7 +33,11 @@ pub fn measures_csv(outcome: &Outcome) -> String {
 }
 
 fn row(case: &CaseOutcome, series: &MeasureSeries, value: &LevelValue) -> [String; 10] {
-    let h = case.levels.iter().find(|level| level.level == value.level).and_then(|level| level.h);
+    let h = case
+        .levels
+        .iter()
+        .find(|level| level.level == value.level)
+        .and_then(|level| level.h);
     [
         clean(&case.id),
         clean(&value.level),

@@ -35,7 +35,13 @@ pub enum Format {
 }
 
 impl Format {
-    pub const ALL: [Format; 5] = [Self::Text, Self::Html, Self::Json, Self::Junit, Self::MeasuresCsv];
+    pub const ALL: [Format; 5] = [
+        Self::Text,
+        Self::Html,
+        Self::Json,
+        Self::Junit,
+        Self::MeasuresCsv,
+    ];
 
     /// The word a user chooses the format by.
     pub fn name(self) -> &'static str {

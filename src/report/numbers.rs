@@ -26,7 +26,9 @@ impl Number {
     pub fn significant(value: f64, digits: usize) -> Self {
         let number = Self::power(value, digits);
         match number.exponent {
-            Some(exponent) if (-3..=3).contains(&exponent) => Self::plain_from(&number.digits, exponent),
+            Some(exponent) if (-3..=3).contains(&exponent) => {
+                Self::plain_from(&number.digits, exponent)
+            }
             _ => number,
         }
     }
@@ -51,7 +53,11 @@ impl Number {
     pub fn fixed(value: f64, decimals: usize) -> Self {
         let text = format!("{value:.decimals$}");
         let zero = text.chars().all(|c| matches!(c, '-' | '0' | '.'));
-        Self::bare(if zero { text.trim_start_matches('-') } else { &text })
+        Self::bare(if zero {
+            text.trim_start_matches('-')
+        } else {
+            &text
+        })
     }
 
     /// The shortest digits that read back to the same number: for radii, loads and limits.
@@ -74,12 +80,15 @@ impl Number {
     /// A margin: two digits below 1000, three below 2, more when it would read as 1.
     pub fn ratio(value: f64) -> Self {
         if (1.0..2.0).contains(&value) {
-            let decimals = (2..=9).find(|d| format!("{value:.d$}").trim_end_matches(['0', '.']) != "1");
+            let decimals =
+                (2..=9).find(|d| format!("{value:.d$}").trim_end_matches(['0', '.']) != "1");
             return Self::fixed(value, decimals.unwrap_or(9));
         }
         let number = Self::power(value, 2);
         match number.exponent {
-            Some(exponent) if (0..=2).contains(&exponent) => Self::plain_from(&number.digits, exponent),
+            Some(exponent) if (0..=2).contains(&exponent) => {
+                Self::plain_from(&number.digits, exponent)
+            }
             _ => number,
         }
     }
@@ -107,7 +116,10 @@ impl Number {
         };
         let figures: String = digits.chars().filter(char::is_ascii_digit).collect();
         let text = if exponent < 0 {
-            format!("0.{}{figures}", "0".repeat(exponent.unsigned_abs() as usize - 1))
+            format!(
+                "0.{}{figures}",
+                "0".repeat(exponent.unsigned_abs() as usize - 1)
+            )
         } else {
             let whole = exponent as usize + 1;
             let padded = format!("{figures:0<whole$}");
@@ -132,7 +144,11 @@ impl Number {
     pub fn html(&self) -> String {
         match self.exponent {
             Some(exponent) if self.digits == "1" => power_of_ten(exponent),
-            Some(exponent) => format!("{}{THIN}×{THIN}{}", typeset(&self.digits), power_of_ten(exponent)),
+            Some(exponent) => format!(
+                "{}{THIN}×{THIN}{}",
+                typeset(&self.digits),
+                power_of_ten(exponent)
+            ),
             None => typeset(&self.digits),
         }
     }
@@ -142,7 +158,10 @@ impl Number {
         match self.exponent {
             Some(exponent) => {
                 let exponent = typeset(&exponent.to_string());
-                format!("{}×10<tspan dy=\"-4\" font-size=\"8.5\">{exponent}</tspan>", typeset(&self.digits))
+                format!(
+                    "{}×10<tspan dy=\"-4\" font-size=\"8.5\">{exponent}</tspan>",
+                    typeset(&self.digits)
+                )
             }
             None => typeset(&self.digits),
         }
@@ -197,23 +216,40 @@ fn typeset(digits: &str) -> String {
 pub fn row(values: &[Option<f64>]) -> Vec<Option<Number>> {
     let small = |v: f64| v != 0.0 && v.abs() < 1e-3;
     let powers = values.iter().flatten().any(|&v| small(v));
-    let write = |v: f64| if powers { Number::power(v, 3) } else { Number::three(v) };
+    let write = |v: f64| {
+        if powers {
+            Number::power(v, 3)
+        } else {
+            Number::three(v)
+        }
+    };
     values.iter().map(|value| value.map(write)).collect()
 }
 
 /// A value and its half width with the same decimals: two digits of the half width; `decimals` at least,
 /// when given (orders have two).
 pub fn with_uncertainty(value: f64, half_width: f64, decimals: Option<usize>) -> (Number, Number) {
-    let needed = |digits: f64| (digits - half_width.abs().log10().floor()).clamp(0.0, 12.0) as usize;
+    let needed =
+        |digits: f64| (digits - half_width.abs().log10().floor()).clamp(0.0, 12.0) as usize;
     match decimals {
         // one digit of the half width must be seen, or it would read as none
         Some(least) => {
-            let count = if half_width < 0.005 { needed(0.0).max(least).min(6) } else { least };
-            (Number::fixed(value, count), Number::fixed(half_width, count))
+            let count = if half_width < 0.005 {
+                needed(0.0).max(least).min(6)
+            } else {
+                least
+            };
+            (
+                Number::fixed(value, count),
+                Number::fixed(half_width, count),
+            )
         }
         None if (1e-3..1e4).contains(&value.abs()) => {
             let count = needed(1.0).min(6);
-            (Number::fixed(value, count), Number::fixed(half_width, count))
+            (
+                Number::fixed(value, count),
+                Number::fixed(half_width, count),
+            )
         }
         None => (Number::three(value), Number::significant(half_width, 2)),
     }
@@ -238,15 +274,27 @@ mod tests {
 
     #[test]
     fn html_has_a_real_minus_and_thin_spaces() {
-        assert_eq!(Number::three(-4.294e-7).html(), "−4.29\u{202f}×\u{202f}10<sup>−7</sup>");
+        assert_eq!(
+            Number::three(-4.294e-7).html(),
+            "−4.29\u{202f}×\u{202f}10<sup>−7</sup>"
+        );
         assert_eq!(Number::exact(100000.0).html(), "100\u{202f}000");
-        assert_eq!(Number::significant(0.96904134910, 11).html(), "0.969\u{202f}041\u{202f}349\u{202f}10");
+        assert_eq!(
+            Number::significant(0.96904134910, 11).html(),
+            "0.969\u{202f}041\u{202f}349\u{202f}10"
+        );
         assert_eq!(grouped(4036), "4\u{202f}036");
     }
 
     #[test]
     fn exact_numbers_keep_their_digits() {
-        for (value, text) in [(8.0, "8"), (0.044, "0.044"), (12.5, "12.5"), (1e9, "1e9"), (1e-4, "0.0001")] {
+        for (value, text) in [
+            (8.0, "8"),
+            (0.044, "0.044"),
+            (12.5, "12.5"),
+            (1e9, "1e9"),
+            (1e-4, "0.0001"),
+        ] {
             assert_eq!(Number::exact(value).ascii(), text);
         }
     }
@@ -268,7 +316,10 @@ mod tests {
             .into_iter()
             .map(|n| n.map(|n| n.ascii()))
             .collect();
-        assert_eq!(texts, [Some("6.88e-2".into()), None, Some("4.50e-4".into())]);
+        assert_eq!(
+            texts,
+            [Some("6.88e-2".into()), None, Some("4.50e-4".into())]
+        );
     }
 
     #[test]

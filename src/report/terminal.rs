@@ -10,7 +10,8 @@ use super::wording::{self, PLAIN};
 use crate::verdict::Verdict;
 use crate::verdict::outcome::{CaseOutcome, CriterionOutcome, Outcome};
 use comfy_table::{
-    Cell, CellAlignment, Color, ColumnConstraint, ContentArrangement, LineStyle, Row, Table, TableStyle, Width,
+    Cell, CellAlignment, Color, ColumnConstraint, ContentArrangement, LineStyle, Row, Table,
+    TableStyle, Width,
 };
 
 /// How the text is to look; decided once, by the caller.
@@ -44,7 +45,12 @@ pub fn terminal(outcome: &Outcome, look: Look) -> String {
         out += &table(outcome, look);
     }
     for verdict in [Verdict::NotRun, Verdict::Inconclusive, Verdict::Fail] {
-        for (k, case) in outcome.cases.iter().enumerate().filter(|(_, case)| case.verdict == verdict) {
+        for (k, case) in outcome
+            .cases
+            .iter()
+            .enumerate()
+            .filter(|(_, case)| case.verdict == verdict)
+        {
             out += "\n";
             out += &details(k + 1, case, look);
         }
@@ -60,7 +66,11 @@ pub fn terminal(outcome: &Outcome, look: Look) -> String {
 
 fn heading(outcome: &Outcome, look: Look) -> String {
     let suite = &outcome.suite;
-    let mut out = paragraph(&format!("{} ({})", clean(&suite.title), clean(&suite.id)), "", look);
+    let mut out = paragraph(
+        &format!("{} ({})", clean(&suite.title), clean(&suite.id)),
+        "",
+        look,
+    );
     if let Some(subject) = &suite.subject {
         out += &paragraph(&clean(subject), "Subject: ", look);
     }
@@ -75,7 +85,11 @@ fn paragraph(text: &str, lead: &str, look: Look) -> String {
     let hang = lead.chars().count();
     let mut out = String::new();
     for (k, line) in wrap(text, look.width - hang).iter().enumerate() {
-        let lead = if k == 0 { lead.to_string() } else { " ".repeat(hang) };
+        let lead = if k == 0 {
+            lead.to_string()
+        } else {
+            " ".repeat(hang)
+        };
         out += &format!("{}\n", format!("{lead}{line}").trim_end());
     }
     out
@@ -89,7 +103,10 @@ fn lanes(verdict: Verdict) -> String {
         Verdict::NotRun => '○',
         Verdict::Pass => '●',
     };
-    Verdict::ALL.iter().map(|lane| if *lane == verdict { mark } else { '·' }).collect()
+    Verdict::ALL
+        .iter()
+        .map(|lane| if *lane == verdict { mark } else { '·' })
+        .collect()
 }
 
 fn colour(verdict: Verdict) -> Option<Color> {
@@ -114,12 +131,21 @@ fn table(outcome: &Outcome, look: Look) -> String {
         .header_separator(LineStyle::none().fill('─').junction('─'))
         .bottom_border(LineStyle::none().fill('─').junction('─'));
     let mut table = Table::new();
-    table.load_style(RULE).set_content_arrangement(ContentArrangement::Dynamic);
+    table
+        .load_style(RULE)
+        .set_content_arrangement(ContentArrangement::Dynamic);
     table.force_no_tty().set_width(look.width as u16);
     if look.colour {
         table.enforce_styling();
     }
-    table.set_header(["", "Verdict", "No.", "Case", "Tightest criterion", "Value is limit"]);
+    table.set_header([
+        "",
+        "Verdict",
+        "No.",
+        "Case",
+        "Tightest criterion",
+        "Value is limit",
+    ]);
     let mut cases: Vec<_> = outcome.cases.iter().enumerate().collect();
     cases.sort_by_key(|(_, case)| std::cmp::Reverse(case.verdict));
     for (k, case) in cases {
@@ -145,8 +171,12 @@ fn table(outcome: &Outcome, look: Look) -> String {
 
 fn row(number: usize, case: &CaseOutcome) -> Row {
     let tightest = tightest(case);
-    let title = tightest.map_or("none judged".to_string(), |criterion| clean(&criterion.title));
-    let margin = tightest.map_or(Margin::None, Margin::of).cell(Number::ascii);
+    let title = tightest.map_or("none judged".to_string(), |criterion| {
+        clean(&wording::name(criterion))
+    });
+    let margin = tightest
+        .map_or(Margin::None, Margin::of)
+        .cell(Number::ascii);
     Row::from([
         verdict_cell(lanes(case.verdict), case.verdict),
         verdict_cell(case.verdict.word().to_string(), case.verdict),
@@ -166,12 +196,20 @@ fn details(number: usize, case: &CaseOutcome, look: Look) -> String {
     if let Some(reason) = &case.reason {
         out += &paragraph(&sentence(&clean(reason)), &" ".repeat(INDENT), look);
     }
-    let mut open: Vec<_> = case.criteria.iter().filter(|c| c.verdict != Verdict::Pass).collect();
+    let mut open: Vec<_> = case
+        .criteria
+        .iter()
+        .filter(|c| c.verdict != Verdict::Pass)
+        .collect();
     open.sort_by(|a, b| attention(a, b));
     for criterion in open {
         out += &criterion_lines(criterion, look);
     }
-    for finding in case.findings.iter().filter(|f| f.weight == crate::input::Weight::Refused) {
+    for finding in case
+        .findings
+        .iter()
+        .filter(|f| f.weight == crate::input::Weight::Refused)
+    {
         for line in finding.to_string().lines() {
             out += &paragraph(&clean(line), &" ".repeat(INDENT), look);
         }
@@ -189,8 +227,18 @@ fn criterion_lines(criterion: &CriterionOutcome, look: Look) -> String {
         Margin::None => String::new(),
         margin => format!("  {}", margin.cell(Number::ascii)),
     };
-    let level = criterion.level.as_deref().map_or(String::new(), |level| format!(", level {}", clean(level)));
-    let mut out = paragraph(&format!("{}{level}: {value}{margin}", clean(&criterion.title)), &lead, look);
+    let level = criterion
+        .level
+        .as_deref()
+        .map_or(String::new(), |level| format!(", level {}", clean(level)));
+    let mut out = paragraph(
+        &format!(
+            "{}{level}: {value}{margin}",
+            clean(&wording::name(criterion))
+        ),
+        &lead,
+        look,
+    );
     for text in std::iter::once(&criterion.reason).chain(&criterion.note) {
         out += &paragraph(&sentence(&clean(text)), &" ".repeat(INDENT), look);
     }
@@ -212,11 +260,18 @@ fn paint(text: &str, lead: &str, verdict: Verdict, look: Look) -> String {
 }
 
 fn ending(outcome: &Outcome, look: Look) -> String {
-    let counts: Vec<_> =
-        Verdict::ALL.iter().map(|v| format!("{} {}", outcome.counts.get(*v), v.word())).collect();
+    let counts: Vec<_> = Verdict::ALL
+        .iter()
+        .map(|v| format!("{} {}", outcome.counts.get(*v), v.word()))
+        .collect();
     let total = count(outcome.counts.total(), "case", "cases");
     let mut out = format!("{}   ({total})\n", counts.join("   "));
     let (verdict, numbers) = wording::verdict_sentence(outcome);
     out += &paragraph(&wording::summary(outcome, PLAIN), "", look);
-    out + &paint(&format!("{verdict} {numbers}\n"), verdict, outcome.verdict, look)
+    out + &paint(
+        &format!("{verdict} {numbers}\n"),
+        verdict,
+        outcome.verdict,
+        look,
+    )
 }

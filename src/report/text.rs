@@ -98,7 +98,10 @@ mod tests {
 
     #[test]
     fn nothing_foreign_survives_unescaped() {
-        assert_eq!(escape("a<b>&\"c'\u{1}\u{1b}[31m"), "a&lt;b&gt;&amp;&quot;c&#39;[31m");
+        assert_eq!(
+            escape("a<b>&\"c'\u{1}\u{1b}[31m"),
+            "a&lt;b&gt;&amp;&quot;c&#39;[31m"
+        );
         assert_eq!(clean("fail\u{202E}\nssap"), "fail ssap");
     }
 

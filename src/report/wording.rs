@@ -32,7 +32,10 @@ pub fn verdict_sentence(outcome: &Outcome) -> (&'static str, String) {
     let counts = outcome.counts;
     match outcome.verdict {
         Verdict::Fail => ("Not qualified.", failing(counts)),
-        Verdict::Pass => ("Qualified within the stated range.", all_pass(counts.total())),
+        Verdict::Pass => (
+            "Qualified within the stated range.",
+            all_pass(counts.total()),
+        ),
         Verdict::Inconclusive | Verdict::NotRun => ("Not decided.", open_counts(counts)),
     }
 }
@@ -59,10 +62,18 @@ fn open_counts(counts: Counts) -> String {
     let are = |number| if number == 1 { "is" } else { "are" };
     let mut parts = Vec::new();
     if counts.inconclusive > 0 {
-        parts.push(format!("{} {} inconclusive", cases(counts.inconclusive), are(counts.inconclusive)));
+        parts.push(format!(
+            "{} {} inconclusive",
+            cases(counts.inconclusive),
+            are(counts.inconclusive)
+        ));
     }
     if counts.not_run > 0 {
-        let number = if parts.is_empty() { cases(counts.not_run) } else { counts.not_run.to_string() };
+        let number = if parts.is_empty() {
+            cases(counts.not_run)
+        } else {
+            counts.not_run.to_string()
+        };
         parts.push(format!("{number} {} not run", were(counts.not_run)));
     }
     match parts.is_empty() {
@@ -73,15 +84,25 @@ fn open_counts(counts: Counts) -> String {
 
 /// What holds and what does not, in at most two sentences.
 pub fn summary(outcome: &Outcome, voice: Voice) -> String {
-    let all: Vec<_> = outcome.cases.iter().flat_map(|case| case.criteria.iter().map(move |c| (case, c))).collect();
+    let all: Vec<_> = outcome
+        .cases
+        .iter()
+        .flat_map(|case| case.criteria.iter().map(move |c| (case, c)))
+        .collect();
     if all.is_empty() {
         return "The suite has no criteria.".to_string();
     }
-    let holding = all.iter().filter(|(_, c)| c.verdict == Verdict::Pass).count();
+    let holding = all
+        .iter()
+        .filter(|(_, c)| c.verdict == Verdict::Pass)
+        .count();
     let first = match (holding, all.len()) {
         (1, 1) => "The one criterion is met.".to_string(),
         (holding, total) if holding == total => format!("All {total} criteria are met."),
-        (holding, total) => format!("{holding} of {} met.", count(total, "criterion is", "criteria are")),
+        (holding, total) => format!(
+            "{holding} of {} met.",
+            count(total, "criterion is", "criteria are")
+        ),
     };
     let worst = all.iter().min_by(|a, b| margin::attention(a.1, b.1));
     let second = worst.and_then(|(case, criterion)| extreme(case, criterion, voice));
@@ -99,8 +120,18 @@ fn extreme(case: &CaseOutcome, criterion: &CriterionOutcome, voice: Voice) -> Op
         Verdict::Pass => "The smallest margin",
         Verdict::Inconclusive | Verdict::NotRun => return None,
     };
-    let (title, id) = ((voice.text)(&criterion.title), (voice.text)(&case.id));
+    let (title, id) = ((voice.text)(&name(criterion)), (voice.text)(&case.id));
     Some(format!("{lead}: {title} of {id}, {phrase}."))
+}
+
+/// What is judged, in words: the measure, and whether it is its order.
+pub fn name(criterion: &CriterionOutcome) -> String {
+    match criterion.judged {
+        Judged::Order if !criterion.title.contains("order") => {
+            format!("{}, order", criterion.title)
+        }
+        _ => criterion.title.clone(),
+    }
 }
 
 /// The value of a criterion with its uncertainty and unit.
@@ -111,7 +142,11 @@ pub fn value(criterion: &CriterionOutcome, voice: Voice) -> Option<String> {
         Some(half_width) => {
             let (value, half_width) = with_uncertainty(value, half_width, order);
             let sign = format!("{THIN}±{THIN}");
-            format!("{}{sign}{}", (voice.number)(&value), (voice.number)(&half_width))
+            format!(
+                "{}{sign}{}",
+                (voice.number)(&value),
+                (voice.number)(&half_width)
+            )
         }
         None => (voice.number)(&order.map_or(Number::three(value), |_| Number::fixed(value, 2))),
     };
@@ -120,12 +155,19 @@ pub fn value(criterion: &CriterionOutcome, voice: Voice) -> Option<String> {
 
 /// The limit as the suite wrote it; an order's as "≥ 3 − 0.2".
 pub fn limit(criterion: &CriterionOutcome, voice: Voice) -> String {
-    let text = with_unit(limit_number(&criterion.limit_text, voice), &criterion.unit, voice);
+    let text = with_unit(
+        limit_number(&criterion.limit_text, voice),
+        &criterion.unit,
+        voice,
+    );
     match (criterion.bound, criterion.theory) {
         (Bound::AtMost, _) => text,
         (Bound::AtLeast, _) => format!("≥{THIN}{text}"),
         (Bound::Within, Some(theory)) => {
-            format!("≥{THIN}{}{THIN}−{THIN}{text}", (voice.number)(&Number::exact(theory)))
+            format!(
+                "≥{THIN}{}{THIN}−{THIN}{text}",
+                (voice.number)(&Number::exact(theory))
+            )
         }
         (Bound::Within, None) => format!("theory{THIN}−{THIN}{text}"),
     }
@@ -137,8 +179,13 @@ fn limit_number(text: &str, voice: Voice) -> String {
     if let Some(percent) = trimmed.strip_suffix('%') {
         return format!("{}{NBSP}%", (voice.text)(percent.trim()));
     }
-    match trimmed.split_once(['e', 'E']).map(|(digits, power)| (digits, power.parse::<i32>())) {
-        Some((digits, Ok(power))) if digits.parse::<f64>().is_ok() => (voice.number)(&Number::written(digits, power)),
+    match trimmed
+        .split_once(['e', 'E'])
+        .map(|(digits, power)| (digits, power.parse::<i32>()))
+    {
+        Some((digits, Ok(power))) if digits.parse::<f64>().is_ok() => {
+            (voice.number)(&Number::written(digits, power))
+        }
         _ => (voice.text)(trimmed),
     }
 }
@@ -159,22 +206,37 @@ pub fn question(case: &CaseOutcome) -> String {
     };
     match case.criteria.len() {
         0 => "No criterion was set for this case.".to_string(),
-        1 => format!("Does the solution on {meshes} keep to its one limit against the exact solution?"),
-        n => format!("Does the solution on {meshes} keep to all {n} limits against the exact solution?"),
+        1 => format!(
+            "Does the solution on {meshes} keep to its one limit against the exact solution?"
+        ),
+        n => format!(
+            "Does the solution on {meshes} keep to all {n} limits against the exact solution?"
+        ),
     }
 }
 
 /// The answer: Yes. / No. / Not decided. / Not run., then the numbers.
 pub fn answer(case: &CaseOutcome, voice: Voice) -> String {
-    let reason = case.reason.as_deref().map(|reason| sentence(&(voice.text)(reason)));
+    let reason = case
+        .reason
+        .as_deref()
+        .map(|reason| sentence(&(voice.text)(reason)));
     let tightest = margin::tightest(case);
     let told = tightest.map(|criterion| told(criterion, voice));
     match case.verdict {
         Verdict::Pass => join(["Yes.".into(), reason.or(told).unwrap_or_default()]),
-        Verdict::Fail => join(["No.".into(), reason.or(told).unwrap_or_default(), rest(case)]),
+        Verdict::Fail => join([
+            "No.".into(),
+            reason.or(told).unwrap_or_default(),
+            rest(case),
+        ]),
         Verdict::Inconclusive => {
             let why = tightest.map(|criterion| undecided(criterion, voice));
-            join(["Not decided.".into(), reason.or(why).unwrap_or_default(), rest(case)])
+            join([
+                "Not decided.".into(),
+                reason.or(why).unwrap_or_default(),
+                rest(case),
+            ])
         }
         Verdict::NotRun => {
             let why = tightest.map(|criterion| undecided(criterion, voice));
@@ -191,30 +253,51 @@ fn join<const N: usize>(parts: [String; N]) -> String {
 
 /// "Stress, L2 is 0.0541 at level 4, the limit 10⁻³ times 54."
 pub fn told(criterion: &CriterionOutcome, voice: Voice) -> String {
-    let title = (voice.text)(&criterion.title);
+    let title = (voice.text)(&name(criterion));
     let Some(value) = value(criterion, voice) else {
         return undecided(criterion, voice);
     };
-    let level = criterion.level.as_deref().map_or(String::new(), |l| format!(" at level {}", (voice.text)(l)));
+    let level = criterion
+        .level
+        .as_deref()
+        .map_or(String::new(), |l| format!(" at level {}", (voice.text)(l)));
     let limit = limit(criterion, voice);
     let margin = match Margin::of(criterion) {
-        Margin::Divided(by) => format!("the limit {limit} divided by {}", (voice.number)(&Number::ratio(by))),
-        Margin::Times(by) => format!("the limit {limit} times {}", (voice.number)(&Number::ratio(by))),
+        Margin::Divided(by) => format!(
+            "the limit {limit} divided by {}",
+            (voice.number)(&Number::ratio(by))
+        ),
+        Margin::Times(by) => format!(
+            "the limit {limit} times {}",
+            (voice.number)(&Number::ratio(by))
+        ),
         Margin::At => format!("exactly the limit {limit}"),
         Margin::Clear(words) => format!("{words}; the limit is {limit}"),
         Margin::Spans | Margin::None => format!("the limit is {limit}"),
     };
-    let tightest = if criterion.verdict == Verdict::Pass { "Tightest: " } else { "" };
+    let tightest = if criterion.verdict == Verdict::Pass {
+        "Tightest: "
+    } else {
+        ""
+    };
     format!("{tightest}{title} is {value}{level}, {margin}.")
 }
 
 fn undecided(criterion: &CriterionOutcome, voice: Voice) -> String {
-    sentence(&format!("{}: {}", (voice.text)(&criterion.title), (voice.text)(&criterion.reason)))
+    sentence(&format!(
+        "{}: {}",
+        (voice.text)(&name(criterion)),
+        (voice.text)(&criterion.reason)
+    ))
 }
 
 /// How many of the criteria are not met, when it is more than one.
 fn rest(case: &CaseOutcome) -> String {
-    let open = case.criteria.iter().filter(|c| c.verdict != Verdict::Pass).count();
+    let open = case
+        .criteria
+        .iter()
+        .filter(|c| c.verdict != Verdict::Pass)
+        .count();
     match open {
         0 | 1 => String::new(),
         _ => format!("{open} of {} criteria are not met.", case.criteria.len()),
@@ -241,15 +324,26 @@ pub fn cautions(outcome: &Outcome) -> Vec<(String, String)> {
             "Geometry, material, load level, element, solver version and settings other than those listed are not covered.",
         ),
     ];
-    let mut out: Vec<_> = fixed.iter().map(|(a, b)| (a.to_string(), b.to_string())).collect();
-    let single: Vec<_> = outcome.cases.iter().filter(|case| case.levels.len() == 1).map(|case| clean(&case.id)).collect();
+    let mut out: Vec<_> = fixed
+        .iter()
+        .map(|(a, b)| (a.to_string(), b.to_string()))
+        .collect();
+    let single: Vec<_> = outcome
+        .cases
+        .iter()
+        .filter(|case| case.levels.len() == 1)
+        .map(|case| clean(&case.id))
+        .collect();
     if !single.is_empty() {
         let named = match single.len() {
             1..=5 => single.join(", "),
             n => format!("{n} cases"),
         };
         let verb = if single.len() == 1 { "rests" } else { "rest" };
-        out.push((format!("{named} {verb} on one mesh."), "An order of convergence is not known there.".to_string()));
+        out.push((
+            format!("{named} {verb} on one mesh."),
+            "An order of convergence is not known there.".to_string(),
+        ));
     }
     out
 }
