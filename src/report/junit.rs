@@ -4,8 +4,9 @@
 //! skipped test counts as green nearly everywhere.
 
 use super::margin::Margin;
-use super::numbers::Number;
+use super::numbers::{NBSP, Number, THIN};
 use super::text::escape;
+use super::wording::{self, PLAIN};
 use crate::verdict::Verdict;
 use crate::verdict::outcome::{CaseOutcome, Counts, CriterionOutcome, Outcome};
 
@@ -74,12 +75,16 @@ fn test_case(class: &str, name: &str, verdict: Verdict, reason: &str, detail: &s
 fn detail(criterion: &CriterionOutcome) -> String {
     let value = criterion
         .value
-        .map_or("none".to_string(), |v| format!("{v:?}"));
+        .map_or("no value".to_string(), |v| format!("value {v:?}"));
+    let half_width = criterion
+        .uncertainty
+        .map_or(String::new(), |u| format!(" ± {u:?}"));
     let margin = Margin::of(criterion).cell(Number::ascii);
-    format!(
-        "value {value}, limit {}, value is limit {margin}",
-        criterion.limit_text
-    )
+    let text = format!(
+        "{value}{half_width}, limit {}, {margin}",
+        wording::limit(criterion, PLAIN)
+    );
+    text.replace([THIN, NBSP], " ")
 }
 
 /// The verdict of the one test that stands for a case whose criteria do not tell it: a case without criteria,

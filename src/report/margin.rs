@@ -10,11 +10,17 @@ use std::cmp::Ordering;
 
 /// A margin, before it is put in words.
 #[derive(Debug, Clone, PartialEq)]
-pub enum Margin {
-    /// The limit divided by this.
-    Divided(f64),
-    /// The limit times this.
-    Times(f64),
+pub struct Margin {
+    size: Size,
+    bound: Bound,
+}
+
+#[derive(Debug, Clone, PartialEq)]
+enum Size {
+    /// Inside by this factor.
+    Inside(f64),
+    /// Beyond by this factor.
+    Beyond(f64),
     At,
     /// Nothing to divide by: no error at all, or an order above theory.
     Clear(&'static str),
@@ -25,41 +31,68 @@ pub enum Margin {
 
 impl Margin {
     pub fn of(criterion: &CriterionOutcome) -> Self {
-        match (end_ratio(criterion), criterion.verdict) {
-            (None, _) => Self::None,
-            (Some(_), Verdict::Inconclusive) => Self::Spans,
-            (Some(ratio), _) if ratio > 1.0 => Self::Times(ratio),
-            (Some(1.0), _) => Self::At,
-            (Some(ratio), _) if ratio > 0.0 => Self::Divided(1.0 / ratio),
-            _ if criterion.bound == Bound::Within => Self::Clear("above theory"),
-            _ if criterion.value == Some(0.0) => Self::Clear("zero"),
-            _ => Self::Clear("clear of it"),
+        let size = match (end_ratio(criterion), criterion.verdict) {
+            (None, _) => Size::None,
+            (Some(_), Verdict::Inconclusive) => Size::Spans,
+            (Some(ratio), _) if ratio > 1.0 => Size::Beyond(ratio),
+            (Some(1.0), _) => Size::At,
+            (Some(ratio), _) if ratio > 0.0 => Size::Inside(1.0 / ratio),
+            _ if criterion.bound == Bound::Within => Size::Clear("above theory"),
+            _ if criterion.value == Some(0.0) => Size::Clear("zero"),
+            _ => Size::Clear("clear of it"),
+        };
+        Self {
+            size,
+            bound: criterion.bound,
         }
     }
 
-    /// For a table cell: `× 54`, `÷ 233`. `number` writes the ratio.
+    /// For a table cell headed "Value is limit": `× 54`, `÷ 233`; for a lower limit with its side, `÷ 2.5 below`.
+    /// Of an order it is the shortfall below theory that is compared. `number` writes the factor.
     pub fn cell(&self, number: fn(&Number) -> String) -> String {
-        match self {
-            Self::Divided(by) => format!("÷{THIN}{}", number(&Number::ratio(*by))),
-            Self::Times(by) => format!("×{THIN}{}", number(&Number::ratio(*by))),
-            Self::At => "at the limit".to_string(),
-            Self::Clear(words) => (*words).to_string(),
-            Self::Spans => "spans it".to_string(),
-            Self::None => "—".to_string(),
+        let least = self.bound == Bound::AtLeast;
+        let factor = |by: f64| number(&Number::ratio(by));
+        match self.size {
+            Size::Inside(by) if least => format!("×{THIN}{} above", factor(by)),
+            Size::Beyond(by) if least => format!("÷{THIN}{} below", factor(by)),
+            Size::Inside(by) => format!("÷{THIN}{}", factor(by)),
+            Size::Beyond(by) => format!("×{THIN}{}", factor(by)),
+            Size::At => "at the limit".to_string(),
+            Size::Clear(words) => words.to_string(),
+            Size::Spans => "spans it".to_string(),
+            Size::None => "—".to_string(),
         }
     }
 
-    /// For a sentence: "the limit times 54".
-    pub fn phrase(&self, number: fn(&Number) -> String) -> Option<String> {
-        match self {
-            Self::Divided(by) => Some(format!(
-                "the limit divided by {}",
-                number(&Number::ratio(*by))
-            )),
-            Self::Times(by) => Some(format!("the limit times {}", number(&Number::ratio(*by)))),
-            Self::At => Some("exactly the limit".to_string()),
-            _ => None,
+    /// For a sentence: "the limit 10⁻³ times 54"; `limit` may be empty.
+    pub fn phrase(&self, number: fn(&Number) -> String, limit: &str) -> Option<String> {
+        let factor = |by: f64| number(&Number::ratio(by));
+        let limit = if limit.is_empty() {
+            String::new()
+        } else {
+            format!(" {limit}")
+        };
+        let subject = match self.bound {
+            Bound::Within => format!("its shortfall is the allowed one{limit}"),
+            Bound::AtMost | Bound::AtLeast => format!("the limit{limit}"),
+        };
+        match (&self.size, self.bound) {
+            (Size::Inside(by), Bound::AtLeast) => {
+                Some(format!("above {subject} by a factor of {}", factor(*by)))
+            }
+            (Size::Beyond(by), Bound::AtLeast) => {
+                Some(format!("below {subject} by a factor of {}", factor(*by)))
+            }
+            (Size::Inside(by), _) => Some(format!("{subject} divided by {}", factor(*by))),
+            (Size::Beyond(by), _) => Some(format!("{subject} times {}", factor(*by))),
+            (Size::At, _) => Some(format!("exactly {subject}")),
+            (Size::Clear(_) | Size::Spans | Size::None, _) => None,
         }
+    }
+
+    /// True when there is nothing to say.
+    pub fn is_none(&self) -> bool {
+        self.size == Size::None
     }
 }
 

@@ -54,5 +54,6 @@ fn row(case: &CaseOutcome, series: &MeasureSeries, value: &LevelValue) -> [Strin
 
 /// The shortest digits that read back to the same double.
 fn number(value: Option<f64>) -> String {
-    value.map(|v| format!("{v:?}")).unwrap_or_default()
+    let text = value.map(|v| format!("{v:?}")).unwrap_or_default();
+    text.strip_suffix(".0").unwrap_or(&text).to_string()
 }

@@ -10,8 +10,8 @@ use super::wording::{self, PLAIN};
 use crate::verdict::Verdict;
 use crate::verdict::outcome::{CaseOutcome, CriterionOutcome, Outcome};
 use comfy_table::{
-    Cell, CellAlignment, Color, ColumnConstraint, ContentArrangement, LineStyle, Row, Table,
-    TableStyle, Width,
+    Cell, CellAlignment, ColumnConstraint, ContentArrangement, LineStyle, Row, Table, TableStyle,
+    Width,
 };
 
 /// How the text is to look; decided once, by the caller.
@@ -109,22 +109,6 @@ fn lanes(verdict: Verdict) -> String {
         .collect()
 }
 
-fn colour(verdict: Verdict) -> Option<Color> {
-    match verdict {
-        Verdict::Fail => Some(Color::Red),
-        Verdict::Inconclusive => Some(Color::Magenta),
-        Verdict::NotRun => None,
-        Verdict::Pass => Some(Color::Green),
-    }
-}
-
-fn verdict_cell(text: String, verdict: Verdict) -> Cell {
-    match colour(verdict) {
-        Some(colour) => Cell::new(text).fg(colour),
-        None => Cell::new(text),
-    }
-}
-
 /// One row a case, passes first.
 fn table(outcome: &Outcome, look: Look) -> String {
     const RULE: TableStyle = TableStyle::new()
@@ -135,9 +119,6 @@ fn table(outcome: &Outcome, look: Look) -> String {
         .load_style(RULE)
         .set_content_arrangement(ContentArrangement::Dynamic);
     table.force_no_tty().set_width(look.width as u16);
-    if look.colour {
-        table.enforce_styling();
-    }
     table.set_header([
         "",
         "Verdict",
@@ -166,7 +147,21 @@ fn table(outcome: &Outcome, look: Look) -> String {
     if let Some(column) = table.column_mut(0) {
         column.set_padding((0, 1));
     }
-    table.trim_fmt() + "\n"
+    // painted here, not by the table: its styling looks at the environment
+    let paint_row = |line: &str| {
+        let verdict = Verdict::ALL
+            .into_iter()
+            .find(|verdict| line.starts_with(&lanes(*verdict)));
+        let lead: String = line.chars().take(INDENT).collect();
+        verdict.map_or(line.to_string(), |verdict| {
+            paint(line, &lead, verdict, look)
+        })
+    };
+    table
+        .trim_fmt()
+        .lines()
+        .map(|line| paint_row(line) + "\n")
+        .collect()
 }
 
 fn row(number: usize, case: &CaseOutcome) -> Row {
@@ -174,12 +169,12 @@ fn row(number: usize, case: &CaseOutcome) -> Row {
     let title = tightest.map_or("none judged".to_string(), |criterion| {
         clean(&wording::name(criterion))
     });
-    let margin = tightest
-        .map_or(Margin::None, Margin::of)
-        .cell(Number::ascii);
+    let margin = tightest.map_or("—".to_string(), |criterion| {
+        Margin::of(criterion).cell(Number::ascii)
+    });
     Row::from([
-        verdict_cell(lanes(case.verdict), case.verdict),
-        verdict_cell(case.verdict.word().to_string(), case.verdict),
+        Cell::new(lanes(case.verdict)),
+        Cell::new(case.verdict.word()),
         Cell::new(number),
         Cell::new(clean(&case.id)),
         Cell::new(title),
@@ -223,9 +218,10 @@ fn criterion_lines(criterion: &CriterionOutcome, look: Look) -> String {
         Some(value) => format!("value {value}, limit {}", wording::limit(criterion, PLAIN)),
         None => format!("no value, limit {}", wording::limit(criterion, PLAIN)),
     };
-    let margin = match Margin::of(criterion) {
-        Margin::None => String::new(),
-        margin => format!("  {}", margin.cell(Number::ascii)),
+    let margin = Margin::of(criterion);
+    let margin = match margin.is_none() {
+        true => String::new(),
+        false => format!(", {}", margin.cell(Number::ascii)),
     };
     let level = criterion
         .level

@@ -114,7 +114,7 @@ pub fn summary(outcome: &Outcome, voice: Voice) -> String {
 
 /// The farthest beyond its limit, or the one nearest to it.
 fn extreme(case: &CaseOutcome, criterion: &CriterionOutcome, voice: Voice) -> Option<String> {
-    let phrase = Margin::of(criterion).phrase(voice.number)?;
+    let phrase = Margin::of(criterion).phrase(voice.number, "")?;
     let lead = match criterion.verdict {
         Verdict::Fail => "Farthest beyond its limit",
         Verdict::Pass => "The smallest margin",
@@ -261,26 +261,26 @@ pub fn told(criterion: &CriterionOutcome, voice: Voice) -> String {
         .level
         .as_deref()
         .map_or(String::new(), |l| format!(" at level {}", (voice.text)(l)));
-    let limit = limit(criterion, voice);
-    let margin = match Margin::of(criterion) {
-        Margin::Divided(by) => format!(
-            "the limit {limit} divided by {}",
-            (voice.number)(&Number::ratio(by))
+    let bare = with_unit(
+        limit_number(&criterion.limit_text, voice),
+        &criterion.unit,
+        voice,
+    );
+    let margin = Margin::of(criterion).phrase(voice.number, &bare);
+    let margin = margin.unwrap_or_else(|| format!("the limit is {}", limit(criterion, voice)));
+    let expected = match (criterion.bound, criterion.theory) {
+        (Bound::Within, Some(theory)) => format!(
+            " where {} is expected",
+            (voice.number)(&Number::exact(theory))
         ),
-        Margin::Times(by) => format!(
-            "the limit {limit} times {}",
-            (voice.number)(&Number::ratio(by))
-        ),
-        Margin::At => format!("exactly the limit {limit}"),
-        Margin::Clear(words) => format!("{words}; the limit is {limit}"),
-        Margin::Spans | Margin::None => format!("the limit is {limit}"),
+        _ => String::new(),
     };
     let tightest = if criterion.verdict == Verdict::Pass {
         "Tightest: "
     } else {
         ""
     };
-    format!("{tightest}{title} is {value}{level}, {margin}.")
+    format!("{tightest}{title} is {value}{level}{expected}, {margin}.")
 }
 
 fn undecided(criterion: &CriterionOutcome, voice: Voice) -> String {

@@ -16,7 +16,7 @@ const RIGHT: f64 = 232.0;
 const TOP: f64 = 44.0;
 const BOTTOM: f64 = 264.0;
 /// Largest width and height of the slope fan.
-const FAN: (f64, f64) = (53.0, 40.0);
+const FAN: (f64, f64) = (60.0, 46.0);
 
 /// Series drawn when they are there; judged ones are added up to four.
 const USUAL: [&str; 4] = [
@@ -64,7 +64,7 @@ pub fn panel(case: &CaseOutcome, length_unit: &str) -> String {
         caption += " An error of exactly 0 has no place on this axis.";
     }
     format!(
-        "<figure class=\"panel\"><h4>{}</h4>{}<figcaption>{caption}</figcaption></figure>\n",
+        "<figure class=\"panel\"><h4><span>{}</span></h4>{}<figcaption>{caption}</figcaption></figure>\n",
         escape(&title(case)),
         draw(case, &curves, length_unit)
     )
@@ -485,7 +485,13 @@ fn draw_fan(canvas: &mut Canvas, frame: &Frame, curves: &[Curve]) {
     for ((order, colour), (end, height)) in rays.iter().zip(ends.iter().zip(&heights)) {
         canvas.line((x0, y0), (x1, *end), colour, 1.2);
         canvas.line((x1, *end), (x1 + 5.0, *height), colour, 0.6);
-        let factor = Number::ratio(2f64.powf(*order));
+        let factor = 2f64.powf(*order);
+        let whole = (factor - factor.round()).abs() < 1e-9;
+        let factor = if whole {
+            Number::fixed(factor, 0)
+        } else {
+            Number::ratio(factor)
+        };
         canvas.markup(
             (x1 + 7.0, height + 4.0),
             10.5,

@@ -18,7 +18,8 @@ pub fn section(number: usize, outcome: &Outcome) -> String {
         "<section id=\"margins\"><h2><span>{number}</span>How far each case is from its limits</h2>\
          <p class=\"lede\">One row a case, one mark a criterion: value divided by limit. Left of the black line is \
          inside, the hatched side is beyond. The large mark is the tightest criterion, named at the right; its \
-         distance to the line, counted from the end of its uncertainty bar, is the margin.</p>\n"
+         distance to the line, counted from the end of its uncertainty bar, is the margin. Of an \
+         order it is the shortfall below theory that is compared.</p>\n"
     );
     let open = outcome.counts.total() - outcome.counts.pass;
     if outcome.cases.len() > MANY && open > 0 && outcome.counts.pass > 0 {
@@ -57,7 +58,7 @@ fn row(number: usize, case: &CaseOutcome) -> String {
         lane_and_word(case.verdict),
         escape(&case.title),
         tightest.map_or("none judged".to_string(), |c| escape(&wording::name(c))),
-        tightest.map_or(Margin::None, Margin::of).cell(Number::html)
+        tightest.map_or("—".to_string(), |c| Margin::of(c).cell(Number::html))
     )
 }
 

@@ -38,7 +38,7 @@ pub fn panel(profile: &Profile) -> String {
         String::new()
     };
     format!(
-        "<figure class=\"panel\"><h4>{}</h4>{}<figcaption>Lines: exact. Marks: computed at integration points along one \
+        "<figure class=\"panel\"><h4><span>{}</span></h4>{}<figcaption>Lines: exact. Marks: computed at integration points along one \
          radius, level {}.{named} Strip beneath: computed minus exact.{thinned}</figcaption></figure>\n",
         title(profile, largest),
         draw(profile, every),
