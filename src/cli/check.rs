@@ -1,12 +1,12 @@
 //! `check`: the main job, from suite files to reports.
 
+use super::Exit;
 use super::args;
 use super::exact::print;
 use super::files;
 use super::look::Look;
-use super::Exit;
 use crate::input::Finding;
-use crate::report::{self, terminal};
+use crate::report::{self, Format, terminal};
 use crate::run::check::{Progress, check};
 use crate::run::plan::{Plan, plan};
 use crate::verdict::Verdict;
@@ -31,7 +31,10 @@ pub fn refuse(findings: &[Finding]) -> Exit {
         text.push_str(&format!("error: {finding}\n"));
     }
     if findings.len() > 1 {
-        text.push_str(&format!("{} problems; nothing was judged and no report was changed\n", findings.len()));
+        text.push_str(&format!(
+            "{} problems; nothing was judged and no report was changed\n",
+            findings.len()
+        ));
     }
     eprint(&text);
     Exit::CouldNotJudge
@@ -53,9 +56,14 @@ pub fn eprint(text: &str) {
 /// `truebore check`.
 pub fn run(options: &args::Check, look: Look) -> Exit {
     if options.out.is_some() && options.suites.len() > 1 {
-        return complain("--out names the folder of one suite, and there are several\n  hint: check them one by one");
+        return complain(
+            "--out names the folder of one suite, and there are several\n  hint: check them one by one",
+        );
     }
-    let exits = options.suites.iter().map(|suite| run_one(suite, options, look));
+    let exits = options
+        .suites
+        .iter()
+        .map(|suite| run_one(suite, options, look));
     exits.max().unwrap_or(Exit::CouldNotJudge)
 }
 
@@ -84,21 +92,44 @@ fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
         }
     };
     progress.clear();
-    let out = options.out.clone().unwrap_or_else(|| Path::new("reports").join(&plan.suite.id));
-    if let Err(finding) = files::write_together(&out, &report::all(&outcome)) {
+    let out = options
+        .out
+        .clone()
+        .unwrap_or_else(|| Path::new("reports").join(&plan.suite.id));
+    if let Err(finding) = files::write_together(&out, &reports(&outcome)) {
         return refuse(&[finding]);
     }
     if options.json {
         print(&report::json::json(&outcome));
     } else {
-        print(&terminal::terminal(&outcome, terminal::Look { colour: look.colour, width: 80 }));
+        print(&terminal::terminal(
+            &outcome,
+            terminal::Look {
+                colour: look.colour,
+                width: 80,
+            },
+        ));
         print(&format!("reports in {}\n", out.display()));
     }
     exit_of(&outcome)
 }
 
+/// Every report that is a file, with its name.
+fn reports(outcome: &Outcome) -> Vec<(&'static str, String)> {
+    let formats = Format::ALL
+        .into_iter()
+        .filter(|format| *format != Format::Text);
+    formats
+        .map(|format| (format.file_name(), report::write(format, outcome)))
+        .collect()
+}
+
 fn exit_of(outcome: &Outcome) -> Exit {
-    if outcome.verdict == Verdict::Pass { Exit::AllPass } else { Exit::NotAllPass }
+    if outcome.verdict == Verdict::Pass {
+        Exit::AllPass
+    } else {
+        Exit::NotAllPass
+    }
 }
 
 /// The progress line on stderr.

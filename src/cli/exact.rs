@@ -62,8 +62,11 @@ fn done(text: &str) -> Exit {
 }
 
 /// The case of that id.
-fn case_of<'p>(plan: &'p Plan, id: &str) -> Result<&'p CasePlan, String> {
-    plan.cases.iter().find(|case| case.id == id).ok_or_else(|| unknown_case(plan, id))
+pub fn case_of<'p>(plan: &'p Plan, id: &str) -> Result<&'p CasePlan, String> {
+    plan.cases
+        .iter()
+        .find(|case| case.id == id)
+        .ok_or_else(|| unknown_case(plan, id))
 }
 
 fn unknown_case(plan: &Plan, id: &str) -> String {
@@ -75,7 +78,10 @@ fn unknown_case(plan: &Plan, id: &str) -> String {
     let shown: Vec<_> = ids().take(20).collect();
     message.push_str(&format!("\n  expected: one of {}", shown.join(", ")));
     if plan.cases.len() > shown.len() {
-        message.push_str(&format!(" and {} more (`truebore brief` lists all)", plan.cases.len() - shown.len()));
+        message.push_str(&format!(
+            " and {} more (`truebore brief` lists all)",
+            plan.cases.len() - shown.len()
+        ));
     }
     message
 }
@@ -92,7 +98,10 @@ pub fn brief(options: &args::Brief) -> Exit {
         return check::complain(&message);
     }
     if let Some(folder) = &options.headers {
-        let cases = plan.cases.iter().filter(|case| options.case.as_ref().is_none_or(|id| case.id == *id));
+        let cases = plan
+            .cases
+            .iter()
+            .filter(|case| options.case.as_ref().is_none_or(|id| case.id == *id));
         for case in cases {
             let texts = [
                 ("nodes.csv", briefs::nodes_header(case) + "\n"),

@@ -37,7 +37,8 @@ pub fn read_bytes(path: &Path) -> Result<Vec<u8>, Finding> {
 pub fn write_together(folder: &Path, files: &[(&str, String)]) -> Result<(), Finding> {
     let failed = |path: &Path, what: &str, e: std::io::Error| {
         let place = Place::file(path.display().to_string());
-        Finding::refused("cannot-write", place, format!("{what}: {e}")).hint("choose another folder with --out")
+        Finding::refused("cannot-write", place, format!("{what}: {e}"))
+            .hint("choose another folder with --out")
     };
     fs::create_dir_all(folder).map_err(|e| failed(folder, "the folder cannot be made", e))?;
     let mut written: Vec<(PathBuf, PathBuf)> = Vec::new();
@@ -47,7 +48,10 @@ pub fn write_together(folder: &Path, files: &[(&str, String)]) -> Result<(), Fin
         }
     };
     for (name, text) in files {
-        let (beside, place) = (folder.join(format!(".{name}.{}.part", std::process::id())), folder.join(name));
+        let (beside, place) = (
+            folder.join(format!(".{name}.{}.part", std::process::id())),
+            folder.join(name),
+        );
         let done = fs::File::create(&beside).and_then(|mut file| {
             file.write_all(text.as_bytes())?;
             file.sync_all()

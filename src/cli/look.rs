@@ -28,6 +28,9 @@ impl Look {
             Color::Never => false,
             Color::Auto => !refused && std::io::stdout().is_terminal(),
         };
-        Self { colour, live: std::io::stderr().is_terminal() }
+        Self {
+            colour,
+            live: std::io::stderr().is_terminal(),
+        }
     }
 }

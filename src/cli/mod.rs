@@ -29,7 +29,11 @@ pub fn main() -> ExitCode {
         Ok(arguments) => arguments,
         Err(error) => {
             // help and version go to stdout and are no failure; a wrong argument could not be judged
-            let code = if error.use_stderr() { Exit::CouldNotJudge } else { Exit::AllPass };
+            let code = if error.use_stderr() {
+                Exit::CouldNotJudge
+            } else {
+                Exit::AllPass
+            };
             let _ = error.print();
             return ExitCode::from(code as u8);
         }
@@ -37,7 +41,9 @@ pub fn main() -> ExitCode {
     let look = look::Look::decide(arguments.color);
     if let Some(threads) = arguments.threads {
         // only the first call can set it, and this is the first
-        let _ = rayon::ThreadPoolBuilder::new().num_threads(threads).build_global();
+        let _ = rayon::ThreadPoolBuilder::new()
+            .num_threads(threads)
+            .build_global();
     }
     let exit = match arguments.command {
         Command::Check(options) => check::run(&options, look),

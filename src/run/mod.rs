@@ -1,9 +1,11 @@
 //! Where the parts meet: suite, cases, outcome.
 
 pub mod brief;
+pub mod catalogue;
 pub mod check;
 pub mod expand;
 pub mod facts;
+pub mod inspect;
 pub mod level;
 pub mod plan;
 pub mod tables;

@@ -281,14 +281,16 @@ class Wall:
     def nodes(self):
         """Columns node, X, Y, ux, uy; quad9 connectivity in the order of VTK's biquadratic quadrilateral.
 
-        scikit-fem orders an element's nodes as corners, mid-sides 01 12 23 30, centre: the same order.
+        scikit-fem orders an element's nodes as corners, mid-sides 01 12 23 30, centre: the same order, but these
+        meshes run clockwise (hoop direction first), so that it is turned round to have a positive Jacobian.
         """
         dofs = self.displacement.element_dofs               # rows: ux, uy of node 1, ux, uy of node 2, ...
         ux_dofs, first = np.unique(dofs[0::2], return_index=True)
         uy_dofs = dofs[1::2].ravel()[first]
         xy = self.displacement.doflocs[:, ux_dofs]
         number = np.arange(1, len(ux_dofs) + 1)
-        connectivity = np.searchsorted(ux_dofs, dofs[0::2]).T + 1
+        counterclockwise = [0, 3, 2, 1, 7, 6, 5, 4, 8]
+        connectivity = np.searchsorted(ux_dofs, dofs[0::2]).T[:, counterclockwise] + 1
         return [number, xy[0], xy[1], self.u[ux_dofs], self.u[uy_dofs]], connectivity
 
     def points(self):

@@ -141,7 +141,8 @@ def make(material, level, out):
              "lengths mm, stresses MPa; scikit-fem 11.0.0")
     write_table(folder / "nodes.csv", compress, title, ["node", "X", "Y", "ux", "uy"], zip(*ring.nodes()))
     write_table(folder / "elements.csv", compress, title, ["element", "shape", "n1", "n2", "n3", "n4"],
-                [(e, "quad4", *nodes) for e, nodes in enumerate(ring.mesh.t.T + 1, start=1)])
+                # the mesh runs clockwise; the exchange format wants a positive Jacobian
+                [(e, "quad4", *nodes[[0, 3, 2, 1]]) for e, nodes in enumerate(ring.mesh.t.T + 1, start=1)])
     write_table(folder / "points.csv", compress, title,
                 ["element", "point", "X", "Y", "weight", "sxx", "syy", "szz", "sxy", "p", "J", "W"],
                 zip(*ring.points()))
