@@ -202,7 +202,9 @@ fn expected(curves: &[Curve]) -> Vec<(f64, &'static str)> {
     let orders = curves
         .iter()
         .filter_map(|c| c.series.expected_order.map(|order| (order, c.colour)));
-    orders.filter(|(order, _)| *order > 0.0).collect()
+    orders
+        .filter(|(order, _)| (0.1..=20.0).contains(order))
+        .collect()
 }
 
 fn fan(curves: &[Curve], x: &Log, y: &Log) -> Option<Fan> {

@@ -12,17 +12,20 @@ pub struct Linear {
 impl Linear {
     /// `low` is drawn at pixel `start`, `high` at `end`. Equal or unusable ends are moved apart.
     pub fn new((low, high): (f64, f64), (start, end): (f64, f64)) -> Self {
-        let usable = low.is_finite() && high.is_finite() && high > low;
-        let middle = if low.is_finite() { low } else { 0.0 };
-        let half = if middle == 0.0 {
-            1.0
-        } else {
-            0.5 * middle.abs()
+        // far from the ends of the doubles, so that no difference overflows or vanishes
+        let tame = |v: f64| {
+            if v.is_finite() {
+                v.clamp(-1e300, 1e300)
+            } else {
+                0.0
+            }
         };
-        let (low, high) = if usable {
-            (low, high)
-        } else {
-            (middle - half, middle + half)
+        let (low, high) = (tame(low), tame(high));
+        let least = (1e-12 * low.abs().max(high.abs())).max(1e-290);
+        let (low, high) = match high - low > least {
+            true => (low, high),
+            false if low.abs() < 1e-280 => (low - 1.0, low + 1.0),
+            false => (low - 0.5 * low.abs(), low + 0.5 * low.abs()),
         };
         Self {
             low,
@@ -140,7 +143,7 @@ pub fn spread(wanted: &[f64], gap: f64, (top, bottom): (f64, f64)) -> Vec<f64> {
         .flat_map(|&(sum, n)| std::iter::repeat_n(sum / n as f64, n));
     let mut heights = vec![0.0; wanted.len()];
     for (k, (index, mean)) in order.into_iter().zip(means).enumerate() {
-        heights[index] = mean.clamp(top, (bottom - last).max(top)) + k as f64 * gap;
+        heights[index] = mean.min(bottom - last).max(top) + k as f64 * gap;
     }
     heights
 }

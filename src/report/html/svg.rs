@@ -33,8 +33,13 @@ pub struct Canvas {
     body: String,
 }
 
-/// A coordinate: one decimal, never "-0.0".
+/// A coordinate: one decimal, never "-0.0", never so far off that a viewer chokes on it.
 pub fn at(value: f64) -> String {
+    let value = if value.is_nan() {
+        0.0
+    } else {
+        value.clamp(-9999.0, 9999.0)
+    };
     let text = format!("{value:.1}");
     if text == "-0.0" {
         "0.0".to_string()
