@@ -39,7 +39,7 @@ impl Linear {
         self.start + (value - self.low) / (self.high - self.low) * (self.end - self.start)
     }
 
-    /// Round values, about `wanted` of them, with the decimals that tell them apart.
+    /// Round values, about `wanted` of them.
     pub fn ticks(&self, wanted: usize) -> Ticks {
         let raw = (self.high - self.low) / wanted.max(1) as f64;
         let power = 10f64.powf(raw.log10().floor());
@@ -48,11 +48,11 @@ impl Linear {
             .find(|m| m * power >= raw * 0.999)
             .unwrap_or(10.0)
             * power;
-        let decimals = (-(step * 1.0001).log10().floor()).clamp(0.0, 12.0) as usize;
+        let power = (step * 1.0001).log10().floor() as i32;
         Ticks {
             major: multiples(self.low, self.high, step),
             minor: multiples(self.low, self.high, step / 5.0),
-            decimals,
+            power,
         }
     }
 }
@@ -63,7 +63,15 @@ pub struct Ticks {
     pub major: Vec<f64>,
     /// Fifths, the major ones included.
     pub minor: Vec<f64>,
-    pub decimals: usize,
+    /// Power of ten of the step.
+    power: i32,
+}
+
+impl Ticks {
+    /// Decimals that tell the major ticks apart when they are written in units of `10^unit`.
+    pub fn decimals(&self, unit: i32) -> usize {
+        (unit - self.power).clamp(0, 12) as usize
+    }
 }
 
 fn multiples(low: f64, high: f64, step: f64) -> Vec<f64> {
@@ -158,7 +166,7 @@ mod tests {
         let texts: Vec<_> = ticks
             .major
             .iter()
-            .map(|t| format!("{t:.*}", ticks.decimals))
+            .map(|t| format!("{t:.*}", ticks.decimals(0)))
             .collect();
         assert_eq!(texts, ["-0.05", "0.00", "0.05", "0.10", "0.15"]);
     }

@@ -80,12 +80,11 @@ impl Canvas {
         }
     }
 
-    /// A tinted area: the quantity's colour at 13 %.
-    pub fn band(&mut self, points: &[(f64, f64)], fill: &str) {
-        self.body += &format!(
-            "<polygon points=\"{}\" fill=\"{fill}\" fill-opacity=\".13\"/>",
-            join(points)
-        );
+    /// A tinted area.
+    pub fn band(&mut self, points: &[(f64, f64)], fill: &str, opacity: f64) {
+        let points = join(points);
+        self.body +=
+            &format!("<polygon points=\"{points}\" fill=\"{fill}\" fill-opacity=\"{opacity}\"/>");
     }
 
     /// Text is foreign unless it comes from `numbers`: it is escaped here.
