@@ -334,6 +334,23 @@ fn the_terminal_text_ends_with_failures_and_verdict() {
 }
 
 #[test]
+fn margins_are_said_in_words_that_are_true_of_the_value() {
+    let text = report::write(Format::Text, &fixture::outcome());
+    // 0.6 where 1.5 is the least: below it, not "times 2.5"
+    assert!(
+        text.contains("value 0.600, limit ≥ 1.5, ÷ 2.5 below"),
+        "{text}"
+    );
+    // (0.52 - 0.013) / 0.001: a fail is counted from the near end of its interval
+    assert!(text.contains("limit 0.001 mm, × 510"), "{text}");
+    assert!(text.contains("limit ≥ 2 − 0.2, spans it"), "{text}");
+    let page = report::write(Format::Html, &fixture::all_pass());
+    // order 2.97 ± 0.04 where 3 is expected within 0.2: (0.03 + 0.04) / 0.2 = 1 / 2.9
+    assert!(page.contains("its shortfall is the allowed 0.2 divided by 2.9"));
+    assert!(page.contains(">above theory<") && page.contains(">zero<"));
+}
+
+#[test]
 fn every_format_is_found_by_its_name() {
     for format in Format::ALL {
         assert_eq!(Format::find(format.name()), Some(format));
