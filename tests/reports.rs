@@ -336,6 +336,7 @@ fn the_terminal_text_ends_with_failures_and_verdict() {
 #[test]
 fn margins_are_said_in_words_that_are_true_of_the_value() {
     let text = report::write(Format::Text, &fixture::outcome());
+    let text = text.split_whitespace().collect::<Vec<_>>().join(" ");
     // 0.6 where 1.5 is the least: below it, not "times 2.5"
     assert!(
         text.contains("value 0.600, limit ≥ 1.5, ÷ 2.5 below"),
