@@ -261,7 +261,7 @@ fn ending(outcome: &Outcome, look: Look) -> String {
         .map(|v| format!("{} {}", outcome.counts.get(*v), v.word()))
         .collect();
     let total = count(outcome.counts.total(), "case", "cases");
-    let mut out = format!("{}   ({total})\n", counts.join("   "));
+    let mut out = paragraph(&format!("{} ({total})", counts.join(", ")), "", look);
     let (verdict, numbers) = wording::verdict_sentence(outcome);
     out += &paragraph(&wording::summary(outcome, PLAIN), "", look);
     out + &paint(

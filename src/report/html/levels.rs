@@ -82,10 +82,13 @@ fn open(case: &CaseOutcome, caption: &str, last: &str) -> String {
         let h = level.h.map_or(String::new(), |h| {
             format!("h{NBSP}{} · ", Number::three(h).html())
         });
+        let mesh = match level.missing {
+            Some(_) => "not read".to_string(),
+            None => format!("{h}{}{NBSP}el.", grouped(level.elements)),
+        };
         format!(
-            "<th scope=\"col\" class=\"r\">level {}<br/><small>{h}{}{NBSP}el.</small></th>",
-            escape(&level.level),
-            grouped(level.elements)
+            "<th scope=\"col\" class=\"r\">level {}<br/><small>{mesh}</small></th>",
+            escape(&level.level)
         )
     };
     let columns: String = case.levels.iter().map(level).collect();
@@ -182,12 +185,9 @@ fn reasons(case: &CaseOutcome) -> String {
                 escape(&reason)
             );
         }
-        if let Some((level, place)) = series
-            .values
-            .iter()
-            .rev()
-            .find_map(|value| value.place.as_ref().map(|place| (&value.level, place)))
-        {
+        let found = |value: &&LevelValue| value.value.is_some() && value.place.is_some();
+        let finest = series.values.iter().rev().find(found);
+        if let Some((level, place)) = finest.and_then(|v| Some((&v.level, v.place.as_ref()?))) {
             out += &format!(
                 "<li>{title}, level {}: at {}.</li>\n",
                 escape(level),
