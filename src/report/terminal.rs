@@ -134,7 +134,7 @@ fn table(outcome: &Outcome, look: Look) -> String {
     }
     let fixed = |width| ColumnConstraint::Absolute(Width::Fixed(width));
     let number = 2 + outcome.cases.len().to_string().len().max(3) as u16;
-    for (k, width) in [(0, 5), (1, 14), (2, number), (5, 16)] {
+    for (k, width) in [(0, 5), (1, 14), (2, number), (3, CASE as u16 + 2), (5, 12)] {
         if let Some(column) = table.column_mut(k) {
             column.set_constraint(fixed(width));
         }
@@ -176,10 +176,27 @@ fn row(number: usize, case: &CaseOutcome) -> Row {
         Cell::new(lanes(case.verdict)),
         Cell::new(case.verdict.word()),
         Cell::new(number),
-        Cell::new(clean(&case.id)),
+        Cell::new(folded(&clean(&case.id), CASE)),
         Cell::new(title),
         Cell::new(margin.replace([THIN, NBSP], " ")),
     ])
+}
+
+/// Columns of a case's id in the table.
+const CASE: usize = 25;
+
+/// An id over several lines, broken behind its hyphens where possible.
+fn folded(id: &str, width: usize) -> String {
+    let mut lines: Vec<String> = vec![String::new()];
+    for part in id.split_inclusive('-') {
+        let last = lines.len() - 1;
+        if !lines[last].is_empty() && lines[last].chars().count() + part.chars().count() > width {
+            lines.push(part.to_string());
+        } else {
+            lines[last].push_str(part);
+        }
+    }
+    lines.join("\n")
 }
 
 /// A case that is not passed: every criterion that is not met, with its numbers and its reason.

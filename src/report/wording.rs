@@ -138,7 +138,9 @@ pub fn name(criterion: &CriterionOutcome) -> String {
 pub fn value(criterion: &CriterionOutcome, voice: Voice) -> Option<String> {
     let value = criterion.value?;
     let order = (criterion.judged == Judged::Order).then_some(2);
-    let number = match criterion.uncertainty.filter(|u| *u > 0.0) {
+    // an uncertainty below half of the third digit would only lengthen the number
+    let visible = |u: &f64| *u > 5e-4 * value.abs();
+    let number = match criterion.uncertainty.filter(visible) {
         Some(half_width) => {
             let (value, half_width) = with_uncertainty(value, half_width, order);
             let sign = format!("{THIN}±{THIN}");

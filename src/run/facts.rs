@@ -28,6 +28,17 @@ pub fn facts(case: &CasePlan) -> Vec<Fact> {
     facts
 }
 
+/// The solution and the digits it vouches for.
+fn exact(case: &CasePlan) -> String {
+    let bound = case.exact.bound();
+    let worst = bound.displacement.max(bound.stress).max(bound.totals);
+    let digits = (-worst.log10()).floor().clamp(0.0, 15.0);
+    format!(
+        "{}, good for {digits} digits by its own bound",
+        case.problem
+    )
+}
+
 /// Law and constants, with their units.
 pub fn material(case: &CasePlan) -> String {
     let material = &case.parameters.material;

@@ -400,6 +400,7 @@ fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reade
     }
 }
 
+/// What was chosen comes first: it tells the cases of a family apart.
 fn title(entry: &CaseEntry, id: &str, problem: &Combination, element: &[String]) -> String {
     match &entry.title {
         None => id.to_string(),
@@ -408,7 +409,7 @@ fn title(entry: &CaseEntry, id: &str, problem: &Combination, element: &[String])
             if labels.is_empty() {
                 title.clone()
             } else {
-                format!("{title}: {}", labels.join(", "))
+                format!("{}: {title}", labels.join(", "))
             }
         }
     }

@@ -159,6 +159,28 @@ fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String 
     }
 }
 
+/// In percent where the limit is, else with its unit; three digits.
+fn in_words(value: f64, criterion: &Criterion) -> String {
+    let plain = |v: f64| match v.abs() {
+        size if size == 0.0 || (1e-3..1e4).contains(&size) => {
+            let digits = if size < 1.0 {
+                2 - size.log10().floor() as i32
+            } else {
+                2
+            };
+            format!("{v:.*}", digits.clamp(0, 6) as usize)
+        }
+        _ => format!("{v:.2e}"),
+    };
+    if criterion.limit_text.ends_with('%') {
+        return format!("{} %", plain(100.0 * value));
+    }
+    match criterion.unit.as_str() {
+        "1" => plain(value),
+        unit => format!("{} {unit}", plain(value)),
+    }
+}
+
 fn missing(entry: &LevelValue) -> &str {
     entry.reason.as_deref().unwrap_or("no number at this level")
 }
