@@ -55,6 +55,9 @@ const FARTHEST: f64 = 50.0;
 /// Beyond this g the axial equation takes the form whose terms do not grow with the bore.
 const WIDE: f64 = 1.5;
 
+/// Most stations of a march, so that it always ends; 40 to 80 are usual.
+const MOST_STATIONS: usize = 500;
+
 /// The path at given axial condition.
 pub(super) struct Path<'a> {
     pub wall: &'a Wall,
@@ -155,7 +158,7 @@ impl Path<'_> {
                 }
                 _ => step *= 0.5,
             }
-            if step < 1e-7 {
+            if step < 1e-4 {
                 let mut refusal = lost();
                 refusal.message += &format!("; the limit is about {:.5} of the given load", done);
                 return Err(refusal);
@@ -178,6 +181,9 @@ impl Path<'_> {
         loop {
             if stop(&here) {
                 return (trail, None);
+            }
+            if trail.len() > MOST_STATIONS {
+                return (trail, Some(End::Lost(here)));
             }
             if here.g.abs() >= FARTHEST {
                 let end = if saturated(&trail, &here) {
