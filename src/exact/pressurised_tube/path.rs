@@ -143,7 +143,9 @@ impl Path<'_> {
             return self.station(0.0, e).ok_or_else(lost);
         };
         let (mut e, mut done, mut step) = (0.0_f64, 0.0_f64, 1.0_f64);
+        let mut tries = 0;
         while done < 1.0 {
+            tries += 1;
             let share = (done + step).min(1.0);
             let part = Path {
                 wall: self.wall,
@@ -158,7 +160,7 @@ impl Path<'_> {
                 }
                 _ => step *= 0.5,
             }
-            if step < 1e-4 {
+            if step < 1e-7 || tries > MOST_STATIONS {
                 let mut refusal = lost();
                 refusal.message += &format!("; the limit is about {:.5} of the given load", done);
                 return Err(refusal);
