@@ -373,11 +373,11 @@ fn snapshots() {
     insta::assert_snapshot!("html", body.replace("><", ">\n<"));
 }
 
-/// For looking at: `cargo test --test reports -- --ignored` writes every format under the temporary folder.
+/// Every format of every fixture can be written; with `TRUEBORE_LOOK=DIR` into DIR, for looking at in a browser.
 #[test]
-#[ignore = "writes files to look at"]
-fn write_all_for_looking_at() {
-    let folder = std::env::temp_dir().join("truebore-reports");
+fn all_formats_of_all_fixtures_are_written() {
+    let scratch = tempfile::tempdir().unwrap();
+    let folder = std::env::var_os("TRUEBORE_LOOK").map_or(scratch.path().to_path_buf(), Into::into);
     let named = [
         ("all", fixture::outcome()),
         ("many", fixture::many(200)),
@@ -386,11 +386,9 @@ fn write_all_for_looking_at() {
     for (name, outcome) in named {
         std::fs::create_dir_all(folder.join(name)).unwrap();
         for format in Format::ALL {
-            std::fs::write(
-                folder.join(name).join(format.file_name()),
-                report::write(format, &outcome),
-            )
-            .unwrap();
+            let text = report::write(format, &outcome);
+            assert!(text.ends_with('\n'), "{}", format.name());
+            std::fs::write(folder.join(name).join(format.file_name()), text).unwrap();
         }
     }
 }

@@ -21,10 +21,7 @@ pub fn facts(case: &CasePlan) -> Vec<Fact> {
     facts.push(fact("Body", body(case)));
     facts.push(fact("Load", load(case)));
     facts.push(fact("Ends", ends(case)));
-    facts.push(fact(
-        "Exact",
-        format!("{}: {}", case.problem, case.exact.method()),
-    ));
+    facts.push(fact("Exact", exact(case)));
     facts
 }
 

@@ -149,10 +149,8 @@ fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String 
         Bound::AtLeast => "at least",
         Bound::AtMost | Bound::Within => "at most",
     };
-    let said = format!(
-        "{value:.3e} where {bound} {} is asked",
-        criterion.limit_text
-    );
+    let value = in_words(value, criterion);
+    let said = format!("{value} where {bound} {} is asked", criterion.limit_text);
     match verdict {
         Verdict::Inconclusive => format!("{said}: closer than the exact solution is known"),
         _ => said,
@@ -162,13 +160,11 @@ fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String 
 /// In percent where the limit is, else with its unit; three digits.
 fn in_words(value: f64, criterion: &Criterion) -> String {
     let plain = |v: f64| match v.abs() {
-        size if size == 0.0 || (1e-3..1e4).contains(&size) => {
-            let digits = if size < 1.0 {
-                2 - size.log10().floor() as i32
-            } else {
-                2
-            };
-            format!("{v:.*}", digits.clamp(0, 6) as usize)
+        0.0 => "0".to_string(),
+        size if (1e-3..1e4).contains(&size) => {
+            // three significant digits: the decimals are what is left of them behind the point
+            let decimals = 2 - size.log10().floor() as i32;
+            format!("{v:.*}", decimals.clamp(0, 5) as usize)
         }
         _ => format!("{v:.2e}"),
     };

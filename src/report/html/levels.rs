@@ -16,7 +16,7 @@ pub fn tables(case: &CaseOutcome, length_unit: &str) -> String {
         "Errors by level; the small figure in front of a value is the order from the level before",
     );
     out += &meshes(&case.levels, length_unit);
-    out += &reasons(case, &first);
+    out += &reasons(&first);
     if more
         .iter()
         .any(|series| series.values.iter().any(|v| v.value.is_some()))
@@ -28,7 +28,7 @@ pub fn tables(case: &CaseOutcome, length_unit: &str) -> String {
         );
         out += &errors(case, &more, "More errors by level");
         out += &values(case, &more);
-        out += &reasons(case, &more);
+        out += &reasons(&more);
         out += "</details>\n";
     }
     out
@@ -210,7 +210,7 @@ fn fitted(series: &MeasureSeries) -> String {
 }
 
 /// Why there is no number where there is none, and where the finest number was found.
-fn reasons(case: &CaseOutcome, all: &[&MeasureSeries]) -> String {
+fn reasons(all: &[&MeasureSeries]) -> String {
     let mut out = String::new();
     for series in all {
         let title = escape(&series.title);
