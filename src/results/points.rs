@@ -415,6 +415,8 @@ struct Running<'a> {
     mean_gap: (f64, Option<Place>),
     largest: f64,
     coords: [[f64; 3]; MAX_NODES],
+    /// How far a point may be from where the declared rule has it.
+    slack: f64,
 }
 
 impl<'a> Running<'a> {
@@ -442,6 +444,7 @@ impl<'a> Running<'a> {
             mean_gap: (0.0, None),
             largest: 0.0,
             coords: [[0.0; 3]; MAX_NODES],
+            slack: source.nodes.as_ref().map_or(0.0, |n| 1e-6 * n.extent()),
         }
     }
 
@@ -514,7 +517,11 @@ impl<'a> Running<'a> {
         };
         let weight = match (plan.weight, computed) {
             (None, Some(weight)) => weight,
-            (None, None) if !plan.tables.is_empty() => self.from_rule(row, element, point, log)?.1,
+            (None, None) if !plan.tables.is_empty() => {
+                let (expected, weight) = self.from_rule(row, element, point, log)?;
+                self.same_place(row, &placed, &expected, log)?;
+                weight
+            }
             _ => weight?,
         };
         if let Some(column) = plan.weight.filter(|_| weight <= 0.0) {
@@ -640,6 +647,30 @@ impl<'a> Running<'a> {
             },
             weight,
         ))
+    }
+
+    /// Weights taken from the declared rule need its points: a point elsewhere is a finding.
+    fn same_place(
+        &self,
+        row: &Row,
+        given: &Placed,
+        expected: &Placed,
+        log: &mut Log,
+    ) -> Option<()> {
+        let far = (0..3).any(|i| (given.position[i] - expected.position[i]).abs() > self.slack);
+        if far {
+            let what = format!("the point is at {:?}", given.position);
+            let finding =
+                Finding::refused("standard-rule", row.place(self.plan.point), what).expected(
+                    format!("{:?}, where the declared rule has it", expected.position),
+                );
+            log.add(
+                finding
+                    .hint("export the column weight, or declare the rule whose points these are"),
+            );
+            return None;
+        }
+        Some(())
     }
 
     fn compare_mean(&mut self, row: &Row, parsed: &Parsed) {
