@@ -15,6 +15,7 @@ mod ids;
 mod log;
 mod nodes;
 mod number;
+mod pass;
 mod points;
 pub mod rules;
 pub mod sanity;
@@ -39,5 +40,7 @@ pub use set::ResultSet;
 pub use stress::Components;
 pub use totals::{Total, Totals, dimension_of};
 
+#[cfg(test)]
+mod invariance;
 #[cfg(test)]
 mod tests;
