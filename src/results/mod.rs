@@ -7,6 +7,7 @@
 mod block;
 mod channel;
 mod conventions;
+mod cover;
 mod elements;
 mod files;
 mod frame;
@@ -42,5 +43,7 @@ pub use totals::{Total, Totals, dimension_of};
 
 #[cfg(test)]
 mod invariance;
+#[cfg(test)]
+mod sanity_tests;
 #[cfg(test)]
 mod tests;

@@ -11,8 +11,8 @@ use super::table::Row;
 use crate::elements::{MAX_NODES, map};
 use crate::input::{Finding, Place, Weight};
 
-/// Declared mean pressure and stress may differ by this share of the largest stress before a caution.
-const MEAN_TOLERANCE: f64 = 1e-4;
+/// Two ways to know a quantity may differ by this share of its largest size before a caution.
+const TWO_WAYS: f64 = 1e-4;
 
 /// One row as it was understood.
 struct Parsed {
@@ -37,9 +37,10 @@ pub(super) struct Running<'a> {
     seen: Seen,
     pub points: u64,
     last_step: Option<i64>,
-    /// Largest |p + tr(sigma)/3|, where, and the largest stress.
-    mean_gap: (f64, Option<Place>),
-    largest: f64,
+    /// p against -tr(sigma)/3.
+    mean: Gap,
+    /// J against det F.
+    volume: Gap,
     coords: [[f64; 3]; MAX_NODES],
     /// How far a point may be from where the declared rule has it.
     slack: f64,
@@ -67,8 +68,8 @@ impl<'a> Running<'a> {
             seen: Seen::new(source.elements.as_ref().map_or(0, |e| e.len())),
             points: 0,
             last_step: None,
-            mean_gap: (0.0, None),
-            largest: 0.0,
+            mean: Gap::default(),
+            volume: Gap::default(),
             coords: [[0.0; 3]; MAX_NODES],
             slack: source.nodes.as_ref().map_or(0.0, |n| 1e-6 * n.extent()),
         }
@@ -165,10 +166,14 @@ impl<'a> Running<'a> {
             ));
             return None;
         }
-        if plan.j.is_none()
-            && let Some(f) = &f
-        {
-            j = matrix(f).determinant();
+        if let Some(f) = &f {
+            let determinant = matrix(f).determinant();
+            match plan.j {
+                None => j = determinant,
+                Some(column) => self
+                    .volume
+                    .take(j - determinant, determinant, || row.place(column)),
+            }
         }
         let stress = match &plan.stress {
             None => [f64::NAN; 6],
@@ -305,16 +310,9 @@ impl<'a> Running<'a> {
             return;
         };
         let [a, b, c, ..] = parsed.stress;
-        let gap = (parsed.p + (a + b + c) / 3.0).abs();
-        self.largest = self
-            .largest
-            .max(a.abs())
-            .max(b.abs())
-            .max(c.abs())
-            .max(parsed.p.abs());
-        if gap > self.mean_gap.0 {
-            self.mean_gap = (gap, Some(row.place(column)));
-        }
+        let size = a.abs().max(b.abs()).max(c.abs()).max(parsed.p.abs());
+        let gap = parsed.p + (a + b + c) / 3.0;
+        self.mean.take(gap, size, || row.place(column));
     }
 
     /// What can only be said at the end.
@@ -336,14 +334,40 @@ impl<'a> Running<'a> {
                 );
             }
         }
-        if self.mean_gap.0 > MEAN_TOLERANCE * self.largest {
-            let place = self.mean_gap.1.clone().unwrap_or_default();
-            let what = format!(
-                "p differs from -tr(sigma)/3 by up to {:.3e} (largest stress {:.3e})",
-                self.mean_gap.0, self.largest
-            );
+        if let Some((place, gap)) = self.mean.beyond(TWO_WAYS) {
+            let what = format!("p differs from -tr(sigma)/3 by up to {gap}");
             let hint = "check the sign of p, and whether it is the multiplier of a mixed method";
             log.add(Finding::new(Weight::Caution, "mean-pressure", place, what).hint(hint));
         }
+        if let Some((place, gap)) = self.volume.beyond(TWO_WAYS) {
+            let what = format!("J differs from det F by up to {gap}");
+            let hint = "a mixed method may carry a J of its own: say which one is exported";
+            log.add(Finding::new(Weight::Caution, "volume-ratio", place, what).hint(hint));
+        }
+    }
+}
+
+/// The largest difference between two ways to know a quantity, where, and the size of the quantity.
+#[derive(Debug, Default)]
+struct Gap {
+    largest: f64,
+    place: Option<Place>,
+    size: f64,
+}
+
+impl Gap {
+    fn take(&mut self, gap: f64, size: f64, place: impl FnOnce() -> Place) {
+        self.size = self.size.max(size.abs());
+        if gap.abs() > self.largest {
+            self.largest = gap.abs();
+            self.place = Some(place());
+        }
+    }
+
+    /// Place and description when the difference is more than `share` of the size.
+    fn beyond(&self, share: f64) -> Option<(Place, String)> {
+        let place = self.place.clone()?;
+        let text = format!("{:.3e} (largest size {:.3e})", self.largest, self.size);
+        (self.largest > share * self.size).then_some((place, text))
     }
 }

@@ -395,3 +395,59 @@ fn inputs_are_hashed_as_they_lie_on_the_disk_and_changes_are_noticed() {
 }
 
 const SHA_OF_NODES: &str = "5ced5468dd3a8ba291c6e268e888397df4e1c4b3c09222205321327ebc7898b1";
+
+#[test]
+fn a_conversion_that_needs_components_which_are_not_there_is_refused() {
+    let mut reading = Reading::default();
+    reading.conventions.stress = StressMeasure::SecondPiolaKirchhoff;
+    let text = |f13: &str| {
+        format!(
+            "element,point,X,Y,sxx,syy,szz,sxy,F11,F12,F13,F21,F22,F33\n1,1,0,0,1,2,3,0,2,0,{f13},0,1,1\n"
+        )
+    };
+    let stress = one_point(&text("0"), &reading).stress.unwrap()[0];
+    assert_eq!(stress[..4], [2.0, 1.0, 1.5, 0.0]);
+    let dir = folder(&[("points.csv", text("0.1").as_bytes())]);
+    let set = ResultSet::open(dir.path(), "r", &reading).unwrap();
+    let found = set
+        .points()
+        .unwrap()
+        .for_each_block(1, &mut |_| Ok(()))
+        .unwrap_err();
+    assert_eq!(found.last().unwrap().rule, "stress-conversion");
+    assert!(found.last().unwrap().found.contains("F13 is 0.1"));
+}
+
+#[test]
+fn a_step_column_without_numbers_is_refused() {
+    let found = open(
+        &[("nodes.csv", "node,X,Y,step\n1,0,0,last\n")],
+        &Reading::default(),
+    );
+    assert_eq!(found.unwrap_err()[0].rule, "integer");
+}
+
+#[test]
+fn a_load_history_of_totals_beside_final_fields_is_a_caution() {
+    let files = [
+        ("nodes.csv", "node,X,Y\n1,0,0\n"),
+        (
+            "totals.csv",
+            "quantity,value,step\nload_factor,0.5,1\nload_factor,1,2\n",
+        ),
+    ];
+    let set = open(&files, &Reading::default()).unwrap();
+    assert_eq!(
+        (set.remarks()[0].rule.as_str(), set.remarks()[0].weight),
+        ("ambiguous-step", Weight::Caution)
+    );
+    assert_eq!(set.totals().unwrap().get("load_factor").unwrap().value, 1.0);
+    let earlier = Reading {
+        step: Some(1),
+        ..Reading::default()
+    };
+    assert_eq!(
+        open(&files, &earlier).unwrap_err()[0].rule,
+        "ambiguous-step"
+    );
+}
