@@ -44,6 +44,8 @@ pub use totals::{Total, Totals, dimension_of};
 #[cfg(test)]
 mod invariance;
 #[cfg(test)]
+mod nodes_tests;
+#[cfg(test)]
 mod sanity_tests;
 #[cfg(test)]
 mod tests;

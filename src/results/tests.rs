@@ -14,7 +14,7 @@ pub(super) fn folder(files: &[(&str, &[u8])]) -> tempfile::TempDir {
     dir
 }
 
-fn open(files: &[(&str, &str)], reading: &Reading) -> Result<ResultSet, Vec<Finding>> {
+pub(super) fn open(files: &[(&str, &str)], reading: &Reading) -> Result<ResultSet, Vec<Finding>> {
     let raw: Vec<(&str, &[u8])> = files.iter().map(|(n, t)| (*n, t.as_bytes())).collect();
     ResultSet::open(folder(&raw).path(), "r", reading)
 }
