@@ -1,10 +1,12 @@
 //! Do the integration points lie in their elements and cover the mesh?
 
+use super::block::PointBlock;
 use super::channel::Channel;
 use super::elements::Elements;
 use super::frame::ModelKind;
 use super::log::Log;
 use super::nodes::Nodes;
+use super::points::Pass;
 use super::sanity::{element_volumes, mesh_volume};
 use super::set::ResultSet;
 use crate::elements::{MAX_NODES, map};
@@ -29,81 +31,119 @@ pub struct Coverage {
     pub remarks: Vec<Finding>,
 }
 
-/// Reads all points once: are they inside their elements, has every element some, do the weights add up to the
-/// volume of the mesh and of each element? `None` without points or without a mesh.
+/// Reads all points once and checks them with a [`CoverCheck`]. `None` without points or without a mesh.
 pub fn check_points(set: &ResultSet) -> Result<Option<Coverage>, Vec<Finding>> {
-    let (Some(elements), Some(nodes), Some(points)) = (set.elements(), set.nodes(), set.points())
-    else {
+    let (Some(mut check), Some(points)) = (CoverCheck::new(set), set.points()) else {
         return Ok(None);
     };
-    let volumes = element_volumes(elements, nodes);
-    let mut sums = vec![0.0; elements.len()];
-    let mut counts = vec![0u32; elements.len()];
-    let mut log = Log::new();
-    let given = points.channels().coordinates == Channel::Given;
-    let mut coords = [[0.0; 3]; MAX_NODES];
     let pass = points.for_each_block(4096, &mut |block| {
-        for i in 0..block.len() {
-            let element = block.element[i] as usize;
-            counts[element] += 1;
-            if let Some(weight) = &block.weight {
-                sums[element] += weight[i];
-            }
-            if !given {
-                continue;
-            }
-            let count = elements.coordinates(element, nodes, &mut coords);
-            let shape = elements.shapes[element];
-            let target = elements.kind.in_plane(block.position[i]);
-            let inside = map::inverse_map(shape, &coords[..count], target);
-            if !inside.is_some_and(|xi| shape.contains(xi, INSIDE_SLACK)) {
-                log.add(outside(
-                    block.place(i),
-                    block.point[i],
-                    elements.ids[element],
-                    inside,
-                ));
-            }
-        }
+        check.visit(block);
         Ok(())
     })?;
-    log.extend(pass.remarks);
-    for (element, _) in counts.iter().enumerate().filter(|(_, count)| **count == 0) {
-        let what = format!(
-            "element {} has no integration point in {}",
-            elements.ids[element],
-            points.file()
-        );
-        log.add(Finding::refused(
-            "element-without-points",
-            elements.place(element),
-            what,
-        ));
-    }
-    let mesh_volume: f64 = volumes.iter().sum();
-    let weighted = points.channels().weight.is_available();
-    let weight_sum = weighted.then(|| sums.iter().sum::<f64>());
-    let ratio = weight_sum.map(|sum| sum / mesh_volume);
-    if let Some(ratio) = ratio
-        && !log.is_refused()
-    {
-        compare(
+    check.finish(pass).map(Some)
+}
+
+/// Are the points inside their elements, has every element some, do the weights add up to the volume of the mesh
+/// and of each element? Fed block by block, so that it can share a pass over a large table with others.
+#[derive(Debug)]
+pub struct CoverCheck<'a> {
+    elements: &'a Elements,
+    nodes: &'a Nodes,
+    file: &'a str,
+    /// Coordinates were read, and not made from a rule.
+    given: bool,
+    weighted: bool,
+    sums: Vec<f64>,
+    counts: Vec<u32>,
+    log: Log,
+}
+
+impl<'a> CoverCheck<'a> {
+    /// `None` without points or without a mesh.
+    pub fn new(set: &'a ResultSet) -> Option<Self> {
+        let (elements, nodes, points) = (set.elements()?, set.nodes()?, set.points()?);
+        Some(Self {
             elements,
             nodes,
-            points.file(),
-            (&sums, &volumes),
-            ratio,
-            &mut log,
-        );
+            file: points.file(),
+            given: points.channels().coordinates == Channel::Given,
+            weighted: points.channels().weight.is_available(),
+            sums: vec![0.0; elements.len()],
+            counts: vec![0; elements.len()],
+            log: Log::new(),
+        })
     }
-    let remarks = log.finish(points.file())?;
-    Ok(Some(Coverage {
-        points: pass.points,
-        weight_sum,
-        mesh_volume,
-        ratio,
-        remarks,
-    }))
+
+    /// Takes in the next block.
+    pub fn visit(&mut self, block: &PointBlock) {
+        let mut coords = [[0.0; 3]; MAX_NODES];
+        for i in 0..block.len() {
+            let element = block.element[i] as usize;
+            self.counts[element] += 1;
+            if let Some(weight) = &block.weight {
+                self.sums[element] += weight[i];
+            }
+            if !self.given {
+                continue;
+            }
+            let count = self.elements.coordinates(element, self.nodes, &mut coords);
+            let shape = self.elements.shapes[element];
+            let target = self.elements.kind.in_plane(block.position[i]);
+            let inside = map::inverse_map(shape, &coords[..count], target);
+            if !inside.is_some_and(|xi| shape.contains(xi, INSIDE_SLACK)) {
+                let id = self.elements.ids[element];
+                self.log
+                    .add(outside(block.place(i), block.point[i], id, inside));
+            }
+        }
+    }
+
+    /// What the whole table says, after its last block.
+    ///
+    /// # Errors
+    /// Everything that forbids judging.
+    pub fn finish(mut self, pass: Pass) -> Result<Coverage, Vec<Finding>> {
+        self.log.extend(pass.remarks);
+        let empty = self
+            .counts
+            .iter()
+            .enumerate()
+            .filter(|(_, count)| **count == 0);
+        for (element, _) in empty {
+            let what = format!(
+                "element {} has no integration point in {}",
+                self.elements.ids[element], self.file
+            );
+            let place = self.elements.place(element);
+            self.log
+                .add(Finding::refused("element-without-points", place, what));
+        }
+        let volumes = element_volumes(self.elements, self.nodes);
+        let mesh_volume: f64 = volumes.iter().sum();
+        let weight_sum = self.weighted.then(|| self.sums.iter().sum::<f64>());
+        let ratio = weight_sum.map(|sum| sum / mesh_volume);
+        if let Some(ratio) = ratio
+            && !self.log.is_refused()
+        {
+            let sums = (self.sums.as_slice(), volumes.as_slice());
+            compare(
+                self.elements,
+                self.nodes,
+                self.file,
+                sums,
+                ratio,
+                &mut self.log,
+            );
+        }
+        let remarks = self.log.finish(self.file)?;
+        Ok(Coverage {
+            points: pass.points,
+            weight_sum,
+            mesh_volume,
+            ratio,
+            remarks,
+        })
+    }
 }
 
 fn outside(place: Place, point: i64, element: i64, at: Option<[f64; 3]>) -> Finding {

@@ -1,7 +1,9 @@
 //! Checks that need only the mesh and its points, no exact solution: is this a mesh, and do the integration
 //! points cover it?
 
-pub use super::cover::{COVER_CAUTION, COVER_REFUSED, Coverage, INSIDE_SLACK, check_points};
+pub use super::cover::{
+    COVER_CAUTION, COVER_REFUSED, CoverCheck, Coverage, INSIDE_SLACK, check_points,
+};
 use super::elements::Elements;
 use super::frame::ModelKind;
 use super::log::Log;
