@@ -56,10 +56,10 @@ fn row(number: usize, case: &CaseOutcome, unique: bool) -> String {
     let criteria: Vec<&CriterionOutcome> = case.criteria.iter().collect();
     let gauge = match tightest {
         Some(first) if case.criteria.iter().any(|c| c.ratio.is_some()) => {
-            gauge::track(&criteria, Some(first), 34)
+            gauge::track(&criteria, Some(first), 38)
         }
-        Some(first) => gauge::empty(case.reason.as_ref().unwrap_or(&first.reason), 34),
-        None => gauge::empty(case.reason.as_deref().unwrap_or("no criteria"), 34),
+        Some(first) => gauge::empty(case.reason.as_ref().unwrap_or(&first.reason), 38),
+        None => gauge::empty(case.reason.as_deref().unwrap_or("no criteria"), 38),
     };
     format!(
         "<tr class=\"w{}\"><td class=\"v\">{}</td><td class=\"c\">{number}</td>\
