@@ -1,0 +1,111 @@
+//! Orders of convergence of nodal interpolants of the exact solution, in every shape, through the whole chain from
+//! files to observed orders: displacement in L2 as theory says for an interpolant (k + 1), its gradient k.
+//!
+//! Red when an order is computed from a wrong mesh size, when quadrature hides the error, when a shape function or
+//! its map has a lower degree than it should, or when straight wall sides go unnoticed.
+
+mod common;
+
+use common::mesh::{Mesh, Sector};
+use common::perfect::{Dialect, Export, Layout, Tube};
+use common::{case, judged, series};
+use truebore::elements::Shape;
+use truebore::exact::Ends;
+use truebore::verdict::outcome::{Kind, Outcome};
+
+/// Observed orders may be off by this.
+const WITHIN: f64 = 0.15;
+
+fn tube() -> Tube {
+    Tube {
+        inner: 1.0,
+        outer: 2.0,
+        ..Tube::rubber(Ends::FixedStretch { axial_stretch: 1.1 })
+    }
+}
+
+/// Interpolants on three meshes, each with twice the cells in every direction.
+fn refine(coarsest: Sector, share: &str) -> Outcome {
+    let folder = tempfile::tempdir().unwrap();
+    for level in 0..3 {
+        let sector = Sector {
+            cells: coarsest.cells.map(|n| n << level),
+            ..coarsest
+        };
+        let mut export = Export::of(&tube(), &Mesh::of(sector), Dialect::default());
+        export.tables.remove("points");
+        export.write(&folder.path().join(format!("level-{}", level + 1)), Layout::Plain);
+    }
+    let suite = tube().suite(&format!(
+        "    levels: [1, 2, 3]\n{share}    accept: [{{ error: displacement-L2, at-most: 1 }}]\n"
+    ));
+    judged(&suite, folder.path())
+}
+
+/// The last pair's order of a measure.
+fn order(outcome: &Outcome, measure: &str) -> f64 {
+    let series = series(case(outcome, "tube"), measure, Kind::Relative).unwrap();
+    series.values.last().unwrap().observed_order.unwrap()
+}
+
+fn check(name: &str, outcome: &Outcome, l2: f64, h1: f64) {
+    let found = (order(outcome, "displacement-L2"), order(outcome, "displacement-H1"));
+    println!("{name:20} L2 {:.3} ({l2})   H1 {:.3} ({h1})", found.0, found.1);
+    assert!((found.0 - l2).abs() < WITHIN, "{name}: L2 {found:?}");
+    assert!((found.1 - h1).abs() < WITHIN, "{name}: H1 {found:?}");
+}
+
+fn has_finding(outcome: &Outcome, rule: &str) -> bool {
+    case(outcome, "tube").findings.iter().any(|f| f.rule == rule)
+}
+
+#[test]
+fn every_shape_shows_its_order() {
+    for shape in Shape::ALL {
+        let cells = if shape.dimension() == 2 { [3, 4, 1] } else { [2, 3, 1] };
+        let sector = Sector {
+            cells,
+            length: 0.4,
+            ..Sector::quarter(shape, 1.0, 2.0, 2)
+        };
+        let outcome = refine(sector, "    section: 1/4\n");
+        let k = shape.degree() as f64;
+        check(shape.name(), &outcome, k + 1.0, k);
+        assert!(!has_finding(&outcome, "straight-wall-sides"));
+    }
+}
+
+#[test]
+fn straight_sides_lose_an_order_and_are_named() {
+    for shape in [Shape::Tri6, Shape::Quad8] {
+        let sector = Sector {
+            straight: true,
+            cells: [3, 4, 1],
+            ..Sector::quarter(shape, 1.0, 2.0, 2)
+        };
+        let outcome = refine(sector, "    section: 1/4\n");
+        let l2 = order(&outcome, "displacement-L2");
+        println!("{:20} straight: L2 {l2:.3}", shape.name());
+        assert!(has_finding(&outcome, "straight-wall-sides"));
+    }
+}
+
+#[test]
+fn an_axisymmetric_mesh_shows_its_order() {
+    for shape in [Shape::Tri3, Shape::Quad4, Shape::Tri6, Shape::Quad8, Shape::Quad9] {
+        let sector = Sector {
+            axisymmetric: true,
+            cells: [3, 1, 2],
+            length: 0.7,
+            ..Sector::quarter(shape, 1.0, 2.0, 2)
+        };
+        let outcome = refine(sector, "");
+        let k = shape.degree() as f64;
+        check(&format!("{} in R, Z", shape.name()), &outcome, k + 1.0, k);
+        for level in &case(&outcome, "tube").levels {
+            // the meshed half plane is 1 by 0.7
+            let h = (0.7 / level.elements as f64).sqrt();
+            assert!((level.h.unwrap() - h).abs() < 1e-12, "{level:?}");
+        }
+    }
+}
