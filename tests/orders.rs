@@ -24,17 +24,24 @@ fn tube() -> Tube {
     }
 }
 
+fn exported(sector: Sector) -> Export {
+    let mut export = Export::of(&tube(), &Mesh::of(sector), Dialect::default());
+    export.tables.remove("points");
+    export
+}
+
 /// Interpolants on three meshes, each with twice the cells in every direction.
-fn refine(coarsest: Sector, share: &str) -> Outcome {
+fn refine(coarsest: Sector, share: &str, export: impl Fn(Sector) -> Export) -> Outcome {
     let folder = tempfile::tempdir().unwrap();
     for level in 0..3 {
         let sector = Sector {
             cells: coarsest.cells.map(|n| n << level),
             ..coarsest
         };
-        let mut export = Export::of(&tube(), &Mesh::of(sector), Dialect::default());
-        export.tables.remove("points");
-        export.write(&folder.path().join(format!("level-{}", level + 1)), Layout::Plain);
+        export(sector).write(
+            &folder.path().join(format!("level-{}", level + 1)),
+            Layout::Plain,
+        );
     }
     let suite = tube().suite(&format!(
         "    levels: [1, 2, 3]\n{share}    accept: [{{ error: displacement-L2, at-most: 1 }}]\n"
@@ -49,57 +56,88 @@ fn order(outcome: &Outcome, measure: &str) -> f64 {
 }
 
 fn check(name: &str, outcome: &Outcome, l2: f64, h1: f64) {
-    let found = (order(outcome, "displacement-L2"), order(outcome, "displacement-H1"));
-    println!("{name:20} L2 {:.3} ({l2})   H1 {:.3} ({h1})", found.0, found.1);
+    let found = (
+        order(outcome, "displacement-L2"),
+        order(outcome, "displacement-H1"),
+    );
+    println!(
+        "{name:20} L2 {:.3} ({l2})   H1 {:.3} ({h1})",
+        found.0, found.1
+    );
     assert!((found.0 - l2).abs() < WITHIN, "{name}: L2 {found:?}");
     assert!((found.1 - h1).abs() < WITHIN, "{name}: H1 {found:?}");
 }
 
 fn has_finding(outcome: &Outcome, rule: &str) -> bool {
-    case(outcome, "tube").findings.iter().any(|f| f.rule == rule)
+    case(outcome, "tube")
+        .findings
+        .iter()
+        .any(|f| f.rule == rule)
 }
 
 #[test]
 fn every_shape_shows_its_order() {
     for shape in Shape::ALL {
-        let cells = if shape.dimension() == 2 { [3, 4, 1] } else { [2, 3, 1] };
+        let cells = if shape.dimension() == 2 {
+            [3, 4, 1]
+        } else {
+            [2, 3, 1]
+        };
         let sector = Sector {
             cells,
             length: 0.4,
             ..Sector::quarter(shape, 1.0, 2.0, 2)
         };
-        let outcome = refine(sector, "    section: 1/4\n");
+        let outcome = refine(sector, "    section: 1/4\n", exported);
         let k = shape.degree() as f64;
         check(shape.name(), &outcome, k + 1.0, k);
         assert!(!has_finding(&outcome, "straight-wall-sides"));
     }
 }
 
+/// Displacements of an analysis with curved sides on a mesh whose middle nodes were put on the chords. (An interpolant
+/// taken on the straight mesh itself would keep its order: measured 3.02. It is the solution, or here the export, that
+/// loses it.) The gradient loses its order too, since the chords differ from the circles element by element.
 #[test]
 fn straight_sides_lose_an_order_and_are_named() {
-    for shape in [Shape::Tri6, Shape::Quad8] {
-        let sector = Sector {
-            straight: true,
+    for shape in [Shape::Tri6, Shape::Quad8, Shape::Quad9] {
+        let curved = Sector {
             cells: [3, 4, 1],
             ..Sector::quarter(shape, 1.0, 2.0, 2)
         };
-        let outcome = refine(sector, "    section: 1/4\n");
-        let l2 = order(&outcome, "displacement-L2");
-        println!("{:20} straight: L2 {l2:.3}", shape.name());
+        let straighten = |sector: Sector| {
+            let mut export = exported(sector);
+            let straight = exported(Sector {
+                straight: true,
+                ..sector
+            });
+            export
+                .table("nodes")
+                .take_columns(&["X", "Y"], &straight.tables["nodes"]);
+            export
+        };
+        let outcome = refine(curved, "    section: 1/4\n", straighten);
+        check(&format!("{} straight", shape.name()), &outcome, 2.0, 1.0);
         assert!(has_finding(&outcome, "straight-wall-sides"));
     }
 }
 
 #[test]
 fn an_axisymmetric_mesh_shows_its_order() {
-    for shape in [Shape::Tri3, Shape::Quad4, Shape::Tri6, Shape::Quad8, Shape::Quad9] {
+    for shape in [
+        Shape::Tri3,
+        Shape::Quad4,
+        Shape::Tri6,
+        Shape::Quad8,
+        Shape::Quad9,
+    ] {
         let sector = Sector {
             axisymmetric: true,
             cells: [3, 1, 2],
             length: 0.7,
             ..Sector::quarter(shape, 1.0, 2.0, 2)
         };
-        let outcome = refine(sector, "");
+        let outcome = refine(sector, "", exported);
         let k = shape.degree() as f64;
         check(&format!("{} in R, Z", shape.name()), &outcome, k + 1.0, k);
         for level in &case(&outcome, "tube").levels {

@@ -117,8 +117,9 @@ impl Mesh {
         let mut places = corners.to_vec();
         let mut positions: Vec<[f64; 3]> = corners.iter().map(|p| self.position(*p)).collect();
         for (_, of) in self.sector.shape.mid_nodes() {
-            let place: Place =
-                std::array::from_fn(|axis| of.iter().map(|&c| places[c][axis]).sum::<usize>() / of.len());
+            let place: Place = std::array::from_fn(|axis| {
+                of.iter().map(|&c| places[c][axis]).sum::<usize>() / of.len()
+            });
             let chord = std::array::from_fn(|axis| {
                 of.iter().map(|&c| positions[c][axis]).sum::<f64>() / of.len() as f64
             });

@@ -158,7 +158,8 @@ impl Table {
         if self.rows.is_empty() {
             self.header = row.iter().map(|(name, _)| name.clone()).collect();
         }
-        self.rows.push(row.into_iter().map(|(_, text)| text).collect());
+        self.rows
+            .push(row.into_iter().map(|(_, text)| text).collect());
     }
 
     /// The same rows with a column before all others.
@@ -189,8 +190,23 @@ impl Table {
     }
 
     pub fn without(&self, name: &str) -> Self {
-        let names: Vec<_> = self.header.iter().map(String::as_str).filter(|n| *n != name).collect();
+        let names: Vec<_> = self
+            .header
+            .iter()
+            .map(String::as_str)
+            .filter(|n| *n != name)
+            .collect();
         self.only(&names)
+    }
+
+    /// Replaces the text of some columns by that of another table, row by row.
+    pub fn take_columns(&mut self, names: &[&str], from: &Table) {
+        for name in names {
+            let (here, there) = (self.column(name), from.column(name));
+            for (row, other) in self.rows.iter_mut().zip(&from.rows) {
+                row[here].clone_from(&other[there]);
+            }
+        }
     }
 
     pub fn rename(&mut self, from: &str, to: &str) {
@@ -291,7 +307,8 @@ impl Export {
     pub fn write(&self, folder: &Path, layout: Layout) {
         std::fs::create_dir_all(folder).unwrap();
         for (name, table) in &self.tables {
-            let put = |file: String, bytes: &[u8]| std::fs::write(folder.join(file), bytes).unwrap();
+            let put =
+                |file: String, bytes: &[u8]| std::fs::write(folder.join(file), bytes).unwrap();
             let packed = |text: String| {
                 let mut encoder = GzEncoder::new(Vec::new(), Compression::fast());
                 encoder.write_all(text.as_bytes()).unwrap();
@@ -338,9 +355,10 @@ impl Writer<'_> {
         match self.dialect.coordinates {
             Coordinates::Cartesian => pairs(&["X", "Y", "Z"][..count], &[x, y, z]),
             Coordinates::Radians => pairs(&["R", "Theta", "Z"][..count], &[radius, angle, z]),
-            Coordinates::Degrees => {
-                pairs(&["R", "Theta", "Z"][..count], &[radius, angle.to_degrees(), z])
-            }
+            Coordinates::Degrees => pairs(
+                &["R", "Theta", "Z"][..count],
+                &[radius, angle.to_degrees(), z],
+            ),
         }
     }
 
@@ -373,9 +391,13 @@ impl Writer<'_> {
         for (i, nodes) in self.mesh.elements.iter().enumerate() {
             let mut row = vec![
                 ("element".to_string(), (i + 1).to_string()),
-                ("shape".to_string(), self.mesh.sector.shape.name().to_string()),
+                (
+                    "shape".to_string(),
+                    self.mesh.sector.shape.name().to_string(),
+                ),
             ];
-            let named = |(n, node): (usize, &usize)| (format!("n{}", n + 1), (node + 1).to_string());
+            let named =
+                |(n, node): (usize, &usize)| (format!("n{}", n + 1), (node + 1).to_string());
             row.extend(nodes.iter().enumerate().map(named));
             table.push(row);
         }
@@ -407,7 +429,11 @@ impl Writer<'_> {
                     at = [at[0], 0.0, at[1]];
                     weight *= 2.0 * PI * at[0];
                 }
-                let power = if self.solid() || self.mesh.sector.axisymmetric { 3 } else { 2 };
+                let power = if self.solid() || self.mesh.sector.axisymmetric {
+                    3
+                } else {
+                    2
+                };
                 let weight = weight * self.dialect.per_mm.powi(power);
                 let mut row = vec![
                     ("element".to_string(), (e + 1).to_string()),
@@ -427,7 +453,11 @@ impl Writer<'_> {
         let (state, d) = (self.state(at), &self.dialect);
         let mut row = self.stress(at, &state);
         let p = state.pressure * d.per_mpa;
-        let p = if d.multiplier { 0.7 * p - 0.1 * d.per_mpa } else { p };
+        let p = if d.multiplier {
+            0.7 * p - 0.1 * d.per_mpa
+        } else {
+            p
+        };
         let p = if d.tension_positive { -p } else { p };
         row.push(("p".to_string(), number(p)));
         if d.volume_ratio {
@@ -460,17 +490,26 @@ impl Writer<'_> {
             };
         if self.dialect.stress == StressMeasure::FirstPiolaKirchhoff {
             let name = |k: usize| format!("P{}{}", k / 3 + 1, k % 3 + 1);
-            return (0..9).map(|k| (name(k), number(written[(k / 3, k % 3)]))).collect();
+            return (0..9)
+                .map(|k| (name(k), number(written[(k / 3, k % 3)])))
+                .collect();
         }
         let axisymmetric = self.mesh.sector.axisymmetric;
         let (local, names) = if self.dialect.cylindrical || axisymmetric {
             let (c, s) = direction(at);
             let turn = Matrix3::new(c, -s, 0.0, s, c, 0.0, 0.0, 0.0, 1.0);
-            (turn.transpose() * written * turn, ["srr", "stt", "szz", "srt", "stz", "szr"])
+            (
+                turn.transpose() * written * turn,
+                ["srr", "stt", "szz", "srt", "stz", "szr"],
+            )
         } else {
             (written, ["sxx", "syy", "szz", "sxy", "syz", "szx"])
         };
-        let shear = if self.dialect.engineering_shear { 2.0 } else { 1.0 };
+        let shear = if self.dialect.engineering_shear {
+            2.0
+        } else {
+            1.0
+        };
         let all = [
             local[(0, 0)],
             local[(1, 1)],
@@ -484,24 +523,37 @@ impl Writer<'_> {
             (_, true) => &[0, 1, 2, 3, 4, 5],
             _ => &[0, 1, 2, 3],
         };
-        kept.iter().map(|&i| (names[i].to_string(), number(all[i]))).collect()
+        kept.iter()
+            .map(|&i| (names[i].to_string(), number(all[i])))
+            .collect()
     }
 
     fn totals(&self) -> Table {
         let sector = &self.mesh.sector;
-        let share = if sector.axisymmetric { 1.0 } else { sector.share };
+        let share = if sector.axisymmetric {
+            1.0
+        } else {
+            sector.share
+        };
         let planar = !self.solid() && !sector.axisymmetric;
         let length = if planar { 1.0 } else { sector.length };
         let per_area = self.dialect.per_mpa * self.dialect.per_mm.powi(2);
-        let per_volume = if planar { per_area } else { per_area * self.dialect.per_mm };
+        let per_volume = if planar {
+            per_area
+        } else {
+            per_area * self.dialect.per_mm
+        };
         let mut table = Table::default();
         for total in self.exact.totals() {
-            let (Ok(value), unit) = (&total.value, match total.name {
-                "axial_stretch" => 1.0,
-                "axial_force" => per_area,
-                "strain_energy" => per_volume,
-                _ => continue,
-            }) else {
+            let (Ok(value), unit) = (
+                &total.value,
+                match total.name {
+                    "axial_stretch" => 1.0,
+                    "axial_force" => per_area,
+                    "strain_energy" => per_volume,
+                    _ => continue,
+                },
+            ) else {
                 continue;
             };
             let part = match total.extent {
