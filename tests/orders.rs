@@ -8,7 +8,7 @@ mod common;
 
 use common::mesh::{Mesh, Sector};
 use common::perfect::{Dialect, Export, Layout, Tube};
-use common::{case, judged, series};
+use common::{case, finest, judged, series};
 use truebore::elements::Shape;
 use truebore::exact::Ends;
 use truebore::verdict::outcome::{Kind, Outcome};
@@ -145,5 +145,49 @@ fn an_axisymmetric_mesh_shows_its_order() {
             let h = (0.7 / level.elements as f64).sqrt();
             assert!((level.h.unwrap() - h).abs() < 1e-12, "{level:?}");
         }
+    }
+}
+
+/// A wall under the same pressure on both sides, linear-elastic: u = c R, which every shape interpolates exactly. A
+/// constant radial error d then has the norms d sqrt(V) and, through its hoop strain d / R alone,
+/// d sqrt(2 pi L ln(B/A)).
+#[test]
+fn norms_of_an_axisymmetric_mesh_are_those_of_the_turn() {
+    let tube = Tube {
+        inner: 1.0,
+        outer: 2.0,
+        inner_pressure: 0.01,
+        outer_pressure: 0.01,
+        ends: Ends::PlaneStrain,
+        ..Tube::linear()
+    };
+    let (d, length) = (1e-3, 0.7);
+    for shape in [Shape::Tri3, Shape::Quad4, Shape::Tri6, Shape::Quad9] {
+        let sector = Sector {
+            axisymmetric: true,
+            cells: [4, 1, 2],
+            length,
+            ..Sector::quarter(shape, 1.0, 2.0, 2)
+        };
+        let mut export = Export::of(&tube, &Mesh::of(sector), Dialect::default());
+        export.table("nodes").shift("ur", d);
+        let folder = tempfile::tempdir().unwrap();
+        export.write(&folder.path().join("level-1"), Layout::Plain);
+        let suite =
+            tube.suite("    levels: [1]\n    accept: [{ error: displacement-L2, at-most: 1 }]\n");
+        let outcome = judged(&suite, folder.path());
+        let error = |measure| finest(case(&outcome, "tube"), measure, Kind::Absolute);
+        let turn = 2.0 * std::f64::consts::PI * length;
+        let (l2, h1) = (d * (turn * 1.5).sqrt(), d * (turn * 2.0_f64.ln()).sqrt());
+        assert!(
+            (error("displacement-L2") / l2 - 1.0).abs() < 1e-11,
+            "{}",
+            shape.name()
+        );
+        assert!(
+            (error("displacement-H1") / h1 - 1.0).abs() < 1e-11,
+            "{}",
+            shape.name()
+        );
     }
 }

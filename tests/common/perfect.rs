@@ -209,6 +209,14 @@ impl Table {
         }
     }
 
+    /// Adds a number to a whole column.
+    pub fn shift(&mut self, name: &str, by: f64) {
+        let column = self.column(name);
+        for row in &mut self.rows {
+            row[column] = number(row[column].parse::<f64>().unwrap() + by);
+        }
+    }
+
     pub fn rename(&mut self, from: &str, to: &str) {
         let column = self.column(from);
         self.header[column] = to.to_string();
