@@ -361,15 +361,23 @@ impl<'a> Level<'a> {
         if !channels.stress.is_available() {
             return Err(channels.stress.reason().to_string());
         }
-        let needed: &[usize] = if component == 2 { &[2] } else { &[0, 1, 3] };
-        let axisymmetric = self.set.kind() == ModelKind::Axisymmetric;
-        let lacks = |i: &&usize| !channels.components.has(**i) && !(axisymmetric && **i == 3);
-        match needed.iter().find(lacks) {
+        let lacks = |i: &&usize| !channels.components.has(**i);
+        match self.needed_for(component).iter().find(lacks) {
             None => Ok(&points.kept),
             Some(&i) => Err(format!(
                 "stress component {} is not exported",
                 crate::results::Components::NAMES[i]
             )),
+        }
+    }
+
+    /// Cartesian components that the radial and hoop (0, 1) or the axial stress (2) are made of.
+    fn needed_for(&self, component: usize) -> &'static [usize] {
+        match (component, self.set.kind()) {
+            (2, _) => &[2],
+            // on the X axis the shear has no part in them
+            (_, ModelKind::Axisymmetric) => &[0, 1],
+            _ => &[0, 1, 3],
         }
     }
 
@@ -381,7 +389,7 @@ impl<'a> Level<'a> {
         component: usize,
         level: &mut LevelMeasures,
     ) {
-        let needed: &[usize] = if component == 2 { &[2] } else { &[0, 1, 3] };
+        let needed = self.needed_for(component);
         let found = match &mesh.nodes.stress {
             None => Err(mesh.nodes.stress_channel.reason().to_string()),
             Some(_) if needed.iter().any(|&i| !mesh.nodes.stress_components.has(i)) => {

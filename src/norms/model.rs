@@ -1,7 +1,8 @@
 //! How a mesh stands for the body, and which part of the exact state it is held to.
 
+use crate::elements::{MAX_NODES, ShapeTable, map};
 use crate::exact::State;
-use crate::mechanics::Point;
+use crate::mechanics::{Point, SymTensor};
 use crate::results::{Elements, ModelKind, Nodes};
 
 /// A mesh with its nodes.
@@ -20,6 +21,37 @@ impl Mesh<'_> {
     pub fn node(&self, node: usize) -> Point {
         point(self.nodes.positions[node])
     }
+
+    /// Area or volume of the mesh itself: in an axisymmetric model that of the half section, not of the turn.
+    pub fn own_measure(&self) -> f64 {
+        let shapes = self.elements.shapes_used().into_iter();
+        // the Jacobian of hex27 has degree 5 in each direction, that of tet10 and wedge15 less in all
+        let tables: Vec<_> = shapes.map(|s| ShapeTable::of_degree(s, 5)).collect();
+        let mut sum = 0.0;
+        for (element, shape) in self.elements.shapes.iter().enumerate() {
+            let mut coords = [[0.0; 3]; MAX_NODES];
+            let count = self.elements.coordinates(element, self.nodes, &mut coords);
+            for table in tables.iter().filter(|table| table.shape == *shape) {
+                for (q, weight) in table.rule.weights.iter().enumerate() {
+                    let gradients = table.gradients(q);
+                    let jacobian = map::jacobian(shape.dimension(), gradients, &coords[..count]);
+                    sum += weight * map::determinant(&jacobian);
+                }
+            }
+        }
+        sum
+    }
+}
+
+/// Radial, hoop and axial stress from Cartesian components, of which those that are not given hold NaN. NaN stays
+/// only where a component that is not given is needed: on the X axis, where every axisymmetric model lies, no shear is.
+pub fn local_normal_stress(mut stress: [f64; 6], direction: (f64, f64)) -> [f64; 3] {
+    let idle = if direction.1 == 0.0 { 3 } else { 4 };
+    for shear in stress[idle..].iter_mut().filter(|shear| shear.is_nan()) {
+        *shear = 0.0;
+    }
+    let local = SymTensor::from_array(stress).cartesian_to_cylindrical(direction);
+    [local.xx, local.yy, local.zz]
 }
 
 /// A position in space as a point.
@@ -91,5 +123,23 @@ pub fn computed_gradient(
             h[1][1] = displacement[0] / position[0];
             h
         }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_shear_that_is_not_given_matters_only_off_the_x_axis() {
+        let stress = [1.0, 2.0, 3.0, f64::NAN, f64::NAN, 0.5];
+        assert_eq!(local_normal_stress(stress, (1.0, 0.0)), [1.0, 2.0, 3.0]);
+        let turned = local_normal_stress(stress, (0.6, 0.8));
+        assert!(turned[0].is_nan() && turned[1].is_nan());
+        assert_eq!(turned[2], 3.0);
+        let known = [1.0, 2.0, 3.0, 0.25, f64::NAN, f64::NAN];
+        let turned = local_normal_stress(known, (0.6, 0.8));
+        // 0.36 + 2 * 0.64 + 2 * 0.25 * 0.48
+        assert!((turned[0] - 1.88).abs() < 1e-15 && (turned[1] - 1.12).abs() < 1e-15);
     }
 }

@@ -4,7 +4,6 @@ use super::accumulate::SquaredError;
 use super::model;
 use crate::exact::{ExactSolution, State};
 use crate::input::Finding;
-use crate::mechanics::SymTensor;
 use crate::results::{Components, ModelKind, Pass, PointBlock, PointSource};
 use rayon::prelude::*;
 
@@ -172,17 +171,7 @@ fn kept(block: &PointBlock, row: usize, state: &State) -> KeptPoint {
     let point = model::point(block.position[row]);
     let computed = match &block.stress {
         None => [f64::NAN; 3],
-        Some(stress) => {
-            // components that are not there must not reach those that are
-            let mut known = stress[row];
-            for shear in &mut known[4..] {
-                if shear.is_nan() {
-                    *shear = 0.0;
-                }
-            }
-            let local = SymTensor::from_array(known).cartesian_to_cylindrical(point.direction());
-            [local.xx, local.yy, local.zz]
-        }
+        Some(stress) => model::local_normal_stress(stress[row], point.direction()),
     };
     KeptPoint {
         element: block.element[row],

@@ -1,10 +1,9 @@
 //! Errors at a place: the walls and mid-wall, from nodes and from the integration points kept on the way.
 
 use super::accumulate::Largest;
-use super::model::Mesh;
+use super::model::{self, Mesh};
 use super::points::KeptPoint;
 use crate::exact::ExactSolution;
-use crate::mechanics::SymTensor;
 
 /// A number at a place with the exact one it is held against.
 #[derive(Debug, Clone, PartialEq)]
@@ -89,13 +88,9 @@ pub fn nodal_stress(
     for &node in nodes {
         let point = mesh.node(node);
         let state = exact.at(point).map_err(|r| r.to_string())?;
-        let mut known = stress[node];
-        for shear in known[4..].iter_mut().filter(|shear| shear.is_nan()) {
-            *shear = 0.0;
-        }
-        let local = SymTensor::from_array(known).cartesian_to_cylindrical(point.direction());
+        let local = model::local_normal_stress(stress[node], point.direction());
         candidates.push(AtPlace {
-            computed: local.to_array()[component],
+            computed: local[component],
             exact: state.local_stress.to_array()[component],
             place: format!(
                 "node {} {}",

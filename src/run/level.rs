@@ -328,18 +328,13 @@ fn outcome(
     let elements = set.elements();
     let count = elements.map_or(0, |e| e.len());
     let dimension = elements.map(|e| e.dimension());
-    let size = match (volume, dimension) {
-        (Some(volume), Some(dimension)) if count > 0 => {
-            // an axisymmetric mesh is measured by its area in the half plane, as its elements are
-            let measure = if set.kind() == crate::results::ModelKind::Axisymmetric {
-                None
-            } else {
-                Some(volume)
-            };
-            measure.map(|m| (m / count as f64).powf(1.0 / dimension as f64))
-        }
-        _ => None,
-    };
+    let mesh = set.nodes().zip(elements);
+    let size = mesh
+        .filter(|(_, elements)| !elements.is_empty())
+        .map(|(nodes, elements)| {
+            let each = Mesh { nodes, elements }.own_measure() / count as f64;
+            each.powf(1.0 / elements.dimension() as f64)
+        });
     let shapes = elements.map_or_else(Vec::new, |e| e.shapes_used());
     LevelOutcome {
         level: plan.name.clone(),
