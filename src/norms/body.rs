@@ -2,7 +2,6 @@
 //! and a quarter that is a quarter.
 
 use super::model::{self, Mesh};
-use crate::elements::{MAX_NODES, map};
 use crate::exact::Body;
 use crate::input::{Finding, Place, Weight};
 use crate::results::ModelKind;
@@ -98,20 +97,20 @@ pub fn compare(
     report
 }
 
-struct Look<'a> {
-    mesh: Mesh<'a>,
-    body: &'a Body,
-    slack: f64,
-    folder: &'a str,
+pub(super) struct Look<'a> {
+    pub(super) mesh: Mesh<'a>,
+    pub(super) body: &'a Body,
+    pub(super) slack: f64,
+    pub(super) folder: &'a str,
 }
 
 impl Look<'_> {
     /// Distance of a position in space from the axis.
-    fn radius(&self, position: [f64; 3]) -> f64 {
+    pub(super) fn radius(&self, position: [f64; 3]) -> f64 {
         model::point(position).radius()
     }
 
-    fn wall_of(&self, radius: f64) -> Option<Wall> {
+    pub(super) fn wall_of(&self, radius: f64) -> Option<Wall> {
         let Body::Tube { inner, outer } = self.body;
         if (radius - inner).abs() <= self.slack {
             Some(Wall::Inner)
@@ -122,7 +121,7 @@ impl Look<'_> {
         }
     }
 
-    fn place(&self, file: &str) -> Place {
+    pub(super) fn place(&self, file: &str) -> Place {
         Place::file(format!("{}/{file}", self.folder))
     }
 
@@ -318,109 +317,6 @@ impl Look<'_> {
                 .expected(format!("{length}, as `axial-length:` declares")),
             );
         }
-    }
-
-    /// The meshed volume against the exact body's share, allowing for what the sides cut off.
-    fn share(
-        &self,
-        declared: Declared,
-        mesh_volume: f64,
-        boundary: &[Side],
-        report: &mut BodyReport,
-    ) {
-        let whole = self.body.section_area() * report.axial_length;
-        report.exact_volume = declared.share * whole;
-        if self.mesh.kind() == ModelKind::Axisymmetric && declared.share != 1.0 {
-            let found = format!(
-                "`section:` declares {} of the section of an axisymmetric model",
-                declared.share
-            );
-            report.findings.push(
-                Finding::refused("share-of-body", self.place("nodes.csv"), found)
-                    .expected("no `section:`, since such a model stands for the whole ring"),
-            );
-            return;
-        }
-        let allowed = 1.2 * self.cut_off(boundary, declared.share * report.axial_length)
-            + 2e-6 * report.exact_volume;
-        let excess = (mesh_volume - report.exact_volume).abs();
-        if excess <= allowed {
-            return;
-        }
-        report.findings.push(
-            Finding::refused(
-                "share-of-body",
-                self.place("elements.csv"),
-                format!(
-                    "the mesh covers {:.6} of the body, {} is declared; the sides explain a difference of {:.1e} at most",
-                    mesh_volume / whole,
-                    declared.share,
-                    allowed / whole
-                ),
-            )
-            .expected(format!("a meshed volume of {:.6e}, found {mesh_volume:.6e}", report.exact_volume))
-            .hint("is `section:` right, and is the mesh whole, without overlaps and gaps?"),
-        );
-    }
-
-    /// Volume between the wall circles and the sides that stand for them, from the largest gap found on any side.
-    fn cut_off(&self, boundary: &[Side], share_and_length: f64) -> f64 {
-        let Body::Tube { inner, outer } = self.body;
-        let (mut inner_gap, mut outer_gap) = (self.slack, self.slack);
-        for side in boundary {
-            let nodes = self.mesh.elements.nodes(side.element as usize);
-            let shape = self.mesh.elements.shapes[side.element as usize];
-            let corners: Vec<usize> = shape.sides()[side.side as usize]
-                .iter()
-                .copied()
-                .filter(|&l| l < shape.corner_count())
-                .collect();
-            let radius = |l: usize| self.radius(self.mesh.nodes.positions[nodes[l] as usize]);
-            let Some(wall) = corners.first().and_then(|&l| self.wall_of(radius(l))) else {
-                continue;
-            };
-            if corners
-                .iter()
-                .any(|&l| self.wall_of(radius(l)) != Some(wall))
-            {
-                continue;
-            }
-            let gap = self.side_gap(
-                side.element as usize,
-                &corners,
-                if wall == Wall::Inner { *inner } else { *outer },
-            );
-            match wall {
-                Wall::Inner => inner_gap = inner_gap.max(gap),
-                Wall::Outer => outer_gap = outer_gap.max(gap),
-            }
-        }
-        2.0 * std::f64::consts::PI * (inner * inner_gap + outer * outer_gap) * share_and_length
-    }
-
-    /// The largest distance from the wall on the lines between the corners of a side.
-    fn side_gap(&self, element: usize, corners: &[usize], wall: f64) -> f64 {
-        let shape = self.mesh.elements.shapes[element];
-        let mut coords = [[0.0; 3]; MAX_NODES];
-        let count = self
-            .mesh
-            .elements
-            .coordinates(element, self.mesh.nodes, &mut coords);
-        let reference = shape.reference_nodes();
-        let mut values = [0.0; MAX_NODES];
-        let mut gap: f64 = 0.0;
-        for (i, &a) in corners.iter().enumerate() {
-            for &b in &corners[i + 1..] {
-                for t in [0.25, 0.5, 0.75] {
-                    let xi =
-                        std::array::from_fn(|j| (1.0 - t) * reference[a][j] + t * reference[b][j]);
-                    shape.values(xi, &mut values[..count]);
-                    let at = map::position(&values[..count], &coords[..count]);
-                    gap = gap.max((self.radius(self.mesh.kind().in_space(at)) - wall).abs());
-                }
-            }
-        }
-        gap
     }
 }
 

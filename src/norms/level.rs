@@ -1,86 +1,17 @@
 //! Everything that is measured on one mesh: the result set against the exact solution.
 
-use super::accumulate::{NoNorm, SquaredError};
+use super::accumulate::NoNorm;
 use super::body::BodyReport;
 use super::displacement::{DisplacementNorms, displacement_norms, largest_nodal};
+use super::measured::Measured;
 use super::model::Mesh;
 use super::points::{self, PointNorms};
 use super::profile::{self, StressProfile};
 use super::wall::{self, AtPlace};
+use super::watched::elements_across;
 use crate::exact::{Body, ExactSolution, Extent};
 use crate::mechanics::{Dimension, Point, UnitSystem};
 use crate::results::{Channel, ModelKind, ResultSet};
-
-/// One measure of one mesh.
-#[derive(Debug, Clone, PartialEq)]
-pub struct Measured {
-    /// Name in the catalogue.
-    pub measure: String,
-    /// A pure number, or why there is none.
-    pub relative: Result<f64, String>,
-    /// In `unit`.
-    pub absolute: Result<f64, String>,
-    /// The computed number itself, for numbers at a place and totals.
-    pub value: Option<f64>,
-    /// What it is held against: the exact number, or the norm of the exact field.
-    pub exact: Option<f64>,
-    pub unit: String,
-    pub place: Option<String>,
-    /// What was compared.
-    pub note: Option<String>,
-}
-
-impl Measured {
-    fn missing(measure: &str, unit: &str, why: &str) -> Self {
-        Self {
-            measure: measure.to_string(),
-            relative: Err(why.to_string()),
-            absolute: Err(why.to_string()),
-            value: None,
-            exact: None,
-            unit: unit.to_string(),
-            place: None,
-            note: None,
-        }
-    }
-
-    /// A computed number against an exact one.
-    fn number(measure: &str, unit: &str, computed: f64, exact: f64, place: Option<String>) -> Self {
-        let error = (computed - exact).abs();
-        let relative = if exact == 0.0 {
-            Err(NoNorm::ExactIsZero.to_string())
-        } else {
-            Ok(error / exact.abs())
-        };
-        Self {
-            measure: measure.to_string(),
-            relative,
-            absolute: Ok(error),
-            value: Some(computed),
-            exact: Some(exact),
-            unit: unit.to_string(),
-            place,
-            note: None,
-        }
-    }
-
-    fn norm(measure: &str, unit: &str, norm: &SquaredError) -> Self {
-        match norm.finish() {
-            Err(why) => Self::missing(measure, unit, &why.to_string()),
-            Ok(norm) => Self {
-                relative: norm.relative().map_err(|why| why.to_string()),
-                absolute: Ok(norm.absolute),
-                exact: Some(norm.exact),
-                ..Self::missing(measure, unit, "")
-            },
-        }
-    }
-
-    fn noted(mut self, note: Option<String>) -> Self {
-        self.note = note;
-        self
-    }
-}
 
 /// All of one mesh.
 #[derive(Debug, Clone, Default)]
@@ -474,33 +405,3 @@ const FIELDS: [(&str, Dimension); 4] = [
     ("volume-ratio-L2", Dimension::None),
     ("energy-density-L2", Dimension::EnergyDensity),
 ];
-
-/// Elements whose corners reach to both sides of a radius, ascending.
-pub fn elements_across(mesh: Mesh, radius: f64) -> Vec<usize> {
-    let across = |element: &usize| {
-        let corners = mesh.elements.shapes[*element].corner_count();
-        let nodes = mesh.elements.nodes(*element)[..corners].iter();
-        let radii = nodes.map(|&n| mesh.node(n as usize).radius());
-        let (low, high) = radii.fold((f64::INFINITY, 0.0_f64), |(l, h), r| (l.min(r), h.max(r)));
-        let slack = 1e-9 * radius;
-        low <= radius + slack && radius <= high + slack
-    };
-    (0..mesh.elements.len()).filter(across).collect()
-}
-
-/// By element index, whether its integration points are needed after the pass.
-pub fn watched(mesh: Mesh, body: &BodyReport, exact: &dyn ExactSolution) -> Vec<bool> {
-    let Body::Tube { inner, outer } = exact.body();
-    let mut watched = vec![false; mesh.elements.len()];
-    let middle = elements_across(mesh, 0.5 * (inner + outer));
-    let lists = [
-        body.inner_elements.as_slice(),
-        &body.outer_elements,
-        &middle,
-        &profile::column(mesh),
-    ];
-    for &element in lists.into_iter().flatten() {
-        watched[element] = true;
-    }
-    watched
-}

@@ -5,9 +5,13 @@ pub mod body;
 pub mod catalogue;
 pub mod displacement;
 pub mod level;
+pub mod measured;
 pub mod model;
 pub mod points;
 pub mod profile;
+mod share;
 pub mod wall;
+pub mod watched;
 
-pub use level::{Level, LevelMeasures, Measured};
+pub use level::{Level, LevelMeasures};
+pub use measured::Measured;

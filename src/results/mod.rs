@@ -42,7 +42,7 @@ pub use stress::Components;
 pub use totals::{Total, Totals, dimension_of};
 
 #[cfg(test)]
-mod invariance;
+mod invariance_tests;
 #[cfg(test)]
 mod nodes_tests;
 #[cfg(test)]

@@ -6,7 +6,8 @@ use crate::input::{Finding, Place, Weight};
 use crate::norms::body::{self, BodyReport, Declared, WallSides};
 use crate::norms::model::Mesh;
 use crate::norms::points::{PointNorms, point_norms};
-use crate::norms::{Level, LevelMeasures, level};
+use crate::norms::watched::watched;
+use crate::norms::{Level, LevelMeasures};
 use crate::results::sanity;
 use crate::results::{
     AngleUnit, ColumnNames, Conventions, InputFile, PressureKind, PressureSign, Reading, ResultSet,
@@ -221,14 +222,14 @@ fn judge_points(
     let Some(source) = set.points() else {
         return Ok(None);
     };
-    let watched = match (set.nodes(), set.elements(), report) {
+    let needed = match (set.nodes(), set.elements(), report) {
         (Some(nodes), Some(elements), Some(report)) => {
-            level::watched(Mesh { nodes, elements }, report, case.exact.as_ref())
+            watched(Mesh { nodes, elements }, report, case.exact.as_ref())
         }
         _ => Vec::new(),
     };
     let mut cover = sanity::CoverCheck::new(set);
-    let (norms, pass) = point_norms(source, case.exact.as_ref(), &watched, &mut |block| {
+    let (norms, pass) = point_norms(source, case.exact.as_ref(), &needed, &mut |block| {
         if let Some(cover) = &mut cover {
             cover.visit(block);
         }

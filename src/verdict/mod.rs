@@ -2,6 +2,7 @@
 
 pub mod decision;
 pub mod judge;
+mod order;
 pub mod outcome;
 
 pub use decision::Verdict;

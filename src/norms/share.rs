@@ -1,0 +1,113 @@
+//! Is a quarter a quarter? The meshed volume against the exact body's share.
+
+use super::body::{BodyReport, Declared, Look, Wall};
+use crate::elements::{MAX_NODES, map};
+use crate::exact::Body;
+use crate::input::Finding;
+use crate::results::ModelKind;
+use crate::results::sanity::Side;
+
+impl Look<'_> {
+    /// The meshed volume against the exact body's share, allowing for what the sides cut off.
+    pub(super) fn share(
+        &self,
+        declared: Declared,
+        mesh_volume: f64,
+        boundary: &[Side],
+        report: &mut BodyReport,
+    ) {
+        let whole = self.body.section_area() * report.axial_length;
+        report.exact_volume = declared.share * whole;
+        if self.mesh.kind() == ModelKind::Axisymmetric && declared.share != 1.0 {
+            let found = format!(
+                "`section:` declares {} of the section of an axisymmetric model",
+                declared.share
+            );
+            report.findings.push(
+                Finding::refused("share-of-body", self.place("nodes.csv"), found)
+                    .expected("no `section:`, since such a model stands for the whole ring"),
+            );
+            return;
+        }
+        let allowed = 1.2 * self.cut_off(boundary, declared.share * report.axial_length)
+            + 2e-6 * report.exact_volume;
+        let excess = (mesh_volume - report.exact_volume).abs();
+        if excess <= allowed {
+            return;
+        }
+        report.findings.push(
+            Finding::refused(
+                "share-of-body",
+                self.place("elements.csv"),
+                format!(
+                    "the mesh covers {:.6} of the body, {} is declared; the sides explain a difference of {:.1e} at most",
+                    mesh_volume / whole,
+                    declared.share,
+                    allowed / whole
+                ),
+            )
+            .expected(format!("a meshed volume of {:.6e}, found {mesh_volume:.6e}", report.exact_volume))
+            .hint("is `section:` right, and is the mesh whole, without overlaps and gaps?"),
+        );
+    }
+
+    /// Volume between the wall circles and the sides that stand for them, from the largest gap found on any side.
+    fn cut_off(&self, boundary: &[Side], share_and_length: f64) -> f64 {
+        let Body::Tube { inner, outer } = self.body;
+        let (mut inner_gap, mut outer_gap) = (self.slack, self.slack);
+        for side in boundary {
+            let nodes = self.mesh.elements.nodes(side.element as usize);
+            let shape = self.mesh.elements.shapes[side.element as usize];
+            let corners: Vec<usize> = shape.sides()[side.side as usize]
+                .iter()
+                .copied()
+                .filter(|&l| l < shape.corner_count())
+                .collect();
+            let radius = |l: usize| self.radius(self.mesh.nodes.positions[nodes[l] as usize]);
+            let Some(wall) = corners.first().and_then(|&l| self.wall_of(radius(l))) else {
+                continue;
+            };
+            if corners
+                .iter()
+                .any(|&l| self.wall_of(radius(l)) != Some(wall))
+            {
+                continue;
+            }
+            let gap = self.side_gap(
+                side.element as usize,
+                &corners,
+                if wall == Wall::Inner { *inner } else { *outer },
+            );
+            match wall {
+                Wall::Inner => inner_gap = inner_gap.max(gap),
+                Wall::Outer => outer_gap = outer_gap.max(gap),
+            }
+        }
+        2.0 * std::f64::consts::PI * (inner * inner_gap + outer * outer_gap) * share_and_length
+    }
+
+    /// The largest distance from the wall on the lines between the corners of a side.
+    fn side_gap(&self, element: usize, corners: &[usize], wall: f64) -> f64 {
+        let shape = self.mesh.elements.shapes[element];
+        let mut coords = [[0.0; 3]; MAX_NODES];
+        let count = self
+            .mesh
+            .elements
+            .coordinates(element, self.mesh.nodes, &mut coords);
+        let reference = shape.reference_nodes();
+        let mut values = [0.0; MAX_NODES];
+        let mut gap: f64 = 0.0;
+        for (i, &a) in corners.iter().enumerate() {
+            for &b in &corners[i + 1..] {
+                for t in [0.25, 0.5, 0.75] {
+                    let xi =
+                        std::array::from_fn(|j| (1.0 - t) * reference[a][j] + t * reference[b][j]);
+                    shape.values(xi, &mut values[..count]);
+                    let at = map::position(&values[..count], &coords[..count]);
+                    gap = gap.max((self.radius(self.mesh.kind().in_space(at)) - wall).abs());
+                }
+            }
+        }
+        gap
+    }
+}
