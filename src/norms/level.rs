@@ -9,7 +9,7 @@ use super::points::{self, PointNorms};
 use super::profile::{self, StressProfile};
 use super::wall::{self, AtPlace};
 use super::watched::elements_across;
-use crate::exact::{Body, ExactSolution, Extent};
+use crate::exact::{Body, ExactSolution};
 use crate::mechanics::{Dimension, Point, UnitSystem};
 use crate::results::{Channel, ModelKind, ResultSet};
 
@@ -44,7 +44,7 @@ impl<'a> Level<'a> {
         })
     }
 
-    fn unit(&self, dimension: Dimension) -> String {
+    pub(super) fn unit(&self, dimension: Dimension) -> String {
         self.units.name_of(dimension)
     }
 
@@ -348,52 +348,6 @@ impl<'a> Level<'a> {
             Ok(Some(at)) => Measured::number(name, &unit, at.computed, at.exact, Some(at.place)),
             Ok(None) => Measured::missing(name, &unit, nothing),
             Err(why) => Measured::missing(name, &unit, &why),
-        }
-    }
-
-    fn totals(&self, level: &mut LevelMeasures) {
-        for (name, quantity) in [
-            ("strain-energy", "strain_energy"),
-            ("axial-stretch", "axial_stretch"),
-            ("axial-force", "axial_force"),
-        ] {
-            level.measured.push(self.total(name, quantity));
-        }
-    }
-
-    fn total(&self, name: &str, quantity: &str) -> Measured {
-        let planar = self.set.kind() == ModelKind::Planar;
-        let Some(exact) = self.exact.totals().iter().find(|t| t.name == quantity) else {
-            return Measured::missing(name, "1", "the exact solution has no such total");
-        };
-        let dimension = match exact.dimension {
-            Dimension::EnergyPerLength if !planar => Dimension::Energy,
-            other => other,
-        };
-        let unit = self.unit(dimension);
-        let length = self.body.map(|body| body.axial_length);
-        let scale = match (exact.extent, planar, length) {
-            (Extent::Whole, _, _) => 1.0,
-            (Extent::Section, _, _) | (Extent::SectionAndLength, true, _) => self.share,
-            (Extent::SectionAndLength, false, Some(length)) => self.share * length,
-            (Extent::SectionAndLength, false, None) => {
-                return Measured::missing(
-                    name,
-                    &unit,
-                    "the axial length is not known without nodes and elements",
-                );
-            }
-        };
-        let exact = match &exact.value {
-            Ok(value) => value * scale,
-            Err(why) => return Measured::missing(name, &unit, why),
-        };
-        let Some(totals) = self.set.totals() else {
-            return Measured::missing(name, &unit, "there is no totals.csv");
-        };
-        match totals.get(quantity) {
-            Some(total) => Measured::number(name, &unit, total.value, exact, None),
-            None => Measured::missing(name, &unit, &format!("totals.csv has no `{quantity}`")),
         }
     }
 }

@@ -10,6 +10,7 @@ pub mod model;
 pub mod points;
 pub mod profile;
 mod share;
+mod totals;
 pub mod wall;
 pub mod watched;
 
