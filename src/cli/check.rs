@@ -8,7 +8,7 @@ use super::look::Look;
 use crate::input::Finding;
 use crate::report::{self, Format, terminal};
 use crate::run::check::{Progress, check};
-use crate::run::plan::{Plan, plan};
+use crate::run::plan::{self, Plan};
 use crate::verdict::Verdict;
 use crate::verdict::outcome::Outcome;
 use std::io::Write;
@@ -20,15 +20,20 @@ use std::path::{Path, PathBuf};
 /// Every problem found.
 pub fn plan_of(path: &Path) -> Result<Plan, Vec<Finding>> {
     let text = files::read_text(path).map_err(|finding| vec![finding])?;
-    let shown = path.display().to_string();
-    plan(crate::suite::read(&text, &shown)?, &shown)
+    plan::read(&text, &path.display().to_string())
 }
+
+/// Findings that are printed; the rest are counted.
+const SHOWN: usize = 50;
 
 /// Prints findings to stderr.
 pub fn refuse(findings: &[Finding]) -> Exit {
     let mut text = String::new();
-    for finding in findings {
+    for finding in findings.iter().take(SHOWN) {
         text.push_str(&format!("error: {finding}\n"));
+    }
+    if findings.len() > SHOWN {
+        text.push_str(&format!("and {} more\n", findings.len() - SHOWN));
     }
     if findings.len() > 1 {
         text.push_str(&format!(
@@ -60,14 +65,21 @@ pub fn run(options: &args::Check, look: Look) -> Exit {
             "--out names the folder of one suite, and there are several\n  hint: check them one by one",
         );
     }
+    let mut written = Vec::new();
     let exits = options
         .suites
         .iter()
-        .map(|suite| run_one(suite, options, look));
+        .map(|suite| run_one(suite, options, look, &mut written));
     exits.max().unwrap_or(Exit::CouldNotJudge)
 }
 
-fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
+/// `written` are the report folders of the suites before, with their suites.
+fn run_one(
+    path: &Path,
+    options: &args::Check,
+    look: Look,
+    written: &mut Vec<(PathBuf, String)>,
+) -> Exit {
     let plan = match plan_of(path) {
         Ok(plan) => plan,
         Err(findings) => return refuse(&findings),
@@ -78,6 +90,18 @@ fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
             plan.file
         ));
     }
+    let out = options
+        .out
+        .clone()
+        .unwrap_or_else(|| Path::new("reports").join(&plan.suite.id));
+    if let Some((_, first)) = written.iter().find(|(folder, _)| *folder == out) {
+        return complain(&format!(
+            "{}: its reports would replace those of {first} in {}\n  hint: name each suite once, and give each its own `suite:`",
+            plan.file,
+            out.display()
+        ));
+    }
+    written.push((out.clone(), plan.file.clone()));
     let bytes = match files::read_bytes(path) {
         Ok(bytes) => bytes,
         Err(finding) => return refuse(&[finding]),
@@ -92,10 +116,6 @@ fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
         }
     };
     progress.clear();
-    let out = options
-        .out
-        .clone()
-        .unwrap_or_else(|| Path::new("reports").join(&plan.suite.id));
     if let Err(finding) = files::write_together(&out, &reports(&outcome)) {
         return refuse(&[finding]);
     }

@@ -12,6 +12,7 @@ use crate::suite::model::{CaseEntry, ExportEntry, Suite};
 use crate::suite::tree::{Node, Value};
 use crate::suite::{Placed, Quantity, Reader};
 use crate::verdict::judge::Criterion;
+use std::collections::{BTreeMap, HashSet};
 use std::sync::Arc;
 
 /// A case may expand to this many.
@@ -81,8 +82,52 @@ pub fn plan(suite: Suite, file: &str) -> Result<Plan, Vec<Finding>> {
         .findings
         .sort_by_key(|f| (f.place.line, f.place.column));
     // the same fault found in several combinations is said once
-    reader.findings.dedup();
+    let mut said = HashSet::new();
+    reader.findings.retain(|f| said.insert(f.to_string()));
     Err(reader.findings)
+}
+
+/// From the text of a suite to its plan.
+///
+/// # Errors
+/// Every problem at once, of form and of meaning, in file order; what only follows from another problem is left out.
+pub fn read(text: &str, file: &str) -> Result<Plan, Vec<Finding>> {
+    let (suite, mut findings) = crate::suite::read_all(text, file);
+    let Some(suite) = suite else {
+        return Err(findings);
+    };
+    match plan(suite, file) {
+        Ok(plan) if findings.is_empty() => Ok(plan),
+        Ok(_) => Err(findings),
+        Err(more) => {
+            let own: Vec<Finding> = more
+                .into_iter()
+                .filter(|f| !findings.iter().any(|earlier| follows(f, earlier)))
+                .collect();
+            findings.extend(own);
+            findings.sort_by_key(|f| (f.place.line, f.place.column));
+            Err(findings)
+        }
+    }
+}
+
+/// Whether a problem of meaning may only be there because something else could not be read.
+fn follows(finding: &Finding, earlier: &Finding) -> bool {
+    let (later, first) = (&finding.place.field, &earlier.place.field);
+    let part = |path: &str| -> String {
+        let named = path.strip_prefix("materials.").map(|rest| {
+            let name = rest.split('.').next().unwrap_or_default();
+            format!("materials.{name}")
+        });
+        named.unwrap_or_else(|| match path.split_once("].") {
+            Some((case, rest)) if rest.starts_with("problem") => format!("{case}].problem"),
+            Some((case, _)) => format!("{case}]"),
+            None => path.to_string(),
+        })
+    };
+    first.starts_with("units")
+        || (first.starts_with("materials") && finding.rule == "unknown-material")
+        || part(later) == part(first)
 }
 
 fn plan_case(
@@ -105,6 +150,7 @@ fn plan_case(
         .and_then(|q| length(q, suite, reader));
     let h = sizes(entry, suite, reader);
     let stated = criteria::stated_orders(entry, reader);
+    let mut folders = BTreeMap::new();
     for problem in &problems {
         let path = &entry.parameters.path;
         let Some(parameters) =
@@ -146,6 +192,12 @@ fn plan_case(
             let criteria =
                 criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
             unique_id(&id, entry, cases, reader);
+            for level in &levels {
+                if let Some(other) = folders.insert(level.folder.clone(), id.clone()) {
+                    own_folder(entry, &other, &id, &level.folder, reader);
+                    return;
+                }
+            }
             cases.push(CasePlan {
                 title: title(entry, &id, problem, labels),
                 id,
@@ -342,25 +394,22 @@ fn levels(
         let folder = template::fill(&results.value, &values);
         let folder = folder.and_then(|f| template::below_the_suite(&f).map(|()| f));
         match folder {
-            Ok(folder) if planned.iter().any(|p| p.folder == folder) => {
-                let found = format!(
-                    "levels {} and {name} have the same folder \"{folder}\"",
-                    planned[0].name
-                );
-                refuse(
-                    results,
-                    "results-folder",
-                    found,
-                    "a folder for each level, e.g. with {level}",
-                    reader,
-                );
-                return None;
+            Ok(folder) => {
+                if let Some(first) = planned.iter().find(|p| p.folder == folder) {
+                    let found = format!(
+                        "levels {} and {name} have the same folder \"{folder}\"",
+                        first.name
+                    );
+                    let expected = "a folder for each level, e.g. with {level}";
+                    refuse(results, "results-folder", found, expected, reader);
+                    return None;
+                }
+                planned.push(LevelPlan {
+                    name: name.clone(),
+                    folder,
+                    h: h.get(i).copied(),
+                });
             }
-            Ok(folder) => planned.push(LevelPlan {
-                name: name.clone(),
-                folder,
-                h: h.get(i).copied(),
-            }),
             Err(found) => {
                 refuse(
                     results,
@@ -398,6 +447,20 @@ fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reade
             reader,
         );
     }
+}
+
+/// Lists make several cases, and all would be judged on one result set: a `{name}` is missing.
+fn own_folder(entry: &CaseEntry, other: &str, id: &str, folder: &str, reader: &mut Reader) {
+    let Some(results) = &entry.results else {
+        return;
+    };
+    let place = reader.place(results.line, results.column, &results.path);
+    let found = format!("cases {other} and {id} have the same folder \"{folder}\"");
+    reader.push(
+        Finding::refused("results-folder", place, found)
+            .expected("a folder for each case the lists make")
+            .hint("name every parameter that has a list, e.g. results/{material}-{outer-radius}/level-{level}, or {id}"),
+    );
 }
 
 fn title(entry: &CaseEntry, id: &str, problem: &Combination, element: &[String]) -> String {
