@@ -128,6 +128,10 @@ fn resolve_one(
         .then(|| expected_order(measure, element, stated))
         .flatten();
     if entry.kind == LimitKind::Within && theory.is_none() {
+        if case.element.is_some() && element.is_none() {
+            // the element could not be read, which is said at its own place
+            return None;
+        }
         let found = format!("no order is known to expect of {}", measure.name);
         refuse(
             &entry.limit,

@@ -13,5 +13,6 @@ pub mod tables;
 mod criteria;
 mod pairing;
 mod parameters;
+mod refusals;
 mod series;
 mod template;

@@ -4,6 +4,7 @@ use super::criteria;
 use super::expand::{self, Combination};
 use super::pairing::{self, Element};
 use super::parameters::{self, Materials};
+use super::refusals::{self, Refusals};
 use super::template;
 use crate::exact::{ExactSolution, Parameters, catalogue};
 use crate::input::Finding;
@@ -102,32 +103,13 @@ pub fn read(text: &str, file: &str) -> Result<Plan, Vec<Finding>> {
         Err(more) => {
             let own: Vec<Finding> = more
                 .into_iter()
-                .filter(|f| !findings.iter().any(|earlier| follows(f, earlier)))
+                .filter(|f| !findings.iter().any(|earlier| refusals::follows(f, earlier)))
                 .collect();
             findings.extend(own);
             findings.sort_by_key(|f| (f.place.line, f.place.column));
             Err(findings)
         }
     }
-}
-
-/// Whether a problem of meaning may only be there because something else could not be read.
-fn follows(finding: &Finding, earlier: &Finding) -> bool {
-    let (later, first) = (&finding.place.field, &earlier.place.field);
-    let part = |path: &str| -> String {
-        let named = path.strip_prefix("materials.").map(|rest| {
-            let name = rest.split('.').next().unwrap_or_default();
-            format!("materials.{name}")
-        });
-        named.unwrap_or_else(|| match path.split_once("].") {
-            Some((case, rest)) if rest.starts_with("problem") => format!("{case}].problem"),
-            Some((case, _)) => format!("{case}]"),
-            None => path.to_string(),
-        })
-    };
-    first.starts_with("units")
-        || (first.starts_with("materials") && finding.rule == "unknown-material")
-        || part(later) == part(first)
 }
 
 fn plan_case(
@@ -137,10 +119,16 @@ fn plan_case(
     cases: &mut Vec<CasePlan>,
     reader: &mut Reader,
 ) {
-    let Some(solution) = parameters::solution_entry(&entry.problem, reader) else {
+    let Some((problems, elements)) = combinations(entry, reader) else {
         return;
     };
-    let Some((problems, elements)) = combinations(entry, reader) else {
+    let stated = criteria::stated_orders(entry, reader);
+    let element_path = entry.element.as_ref().map_or("", |e| e.path.as_str());
+    // once without regard to the problem, so that its faults hide none of the criteria's
+    let first = elements.first().and_then(Option::as_ref);
+    let element = first.and_then(|c| pairing::read(&c.node, element_path, reader));
+    criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
+    let Some(solution) = parameters::solution_entry(&entry.problem, reader) else {
         return;
     };
     let share = share(entry, reader);
@@ -149,9 +137,9 @@ fn plan_case(
         .as_ref()
         .and_then(|q| length(q, suite, reader));
     let h = sizes(entry, suite, reader);
-    let stated = criteria::stated_orders(entry, reader);
     let mut folders = BTreeMap::new();
-    for problem in &problems {
+    let mut refused = Refusals::default();
+    'all: for problem in &problems {
         let path = &entry.parameters.path;
         let Some(parameters) =
             parameters::read(&problem.node, path, materials, &suite.units, reader)
@@ -161,12 +149,11 @@ fn plan_case(
         let exact = match catalogue::build(solution.name, &parameters) {
             Ok(exact) => Arc::from(exact),
             Err(refusal) => {
-                refuse_solution(&refusal, &problem.node, path, problem, reader);
+                refused.note(refusal, problem, path);
                 continue;
             }
         };
         for element_choice in &elements {
-            let element_path = entry.element.as_ref().map_or("", |e| e.path.as_str());
             let element = element_choice
                 .as_ref()
                 .and_then(|c| pairing::read(&c.node, element_path, reader));
@@ -187,15 +174,17 @@ fn plan_case(
                 &h,
                 reader,
             ) else {
-                return;
+                break 'all;
             };
             let criteria =
                 criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
-            unique_id(&id, entry, cases, reader);
+            if !unique_id(&id, entry, cases, reader) {
+                break 'all;
+            }
             for level in &levels {
                 if let Some(other) = folders.insert(level.folder.clone(), id.clone()) {
                     own_folder(entry, &other, &id, &level.folder, reader);
-                    return;
+                    break 'all;
                 }
             }
             cases.push(CasePlan {
@@ -216,6 +205,7 @@ fn plan_case(
             });
         }
     }
+    refused.report(&entry.id.value, problems.len(), reader);
 }
 
 type Choices = (Vec<Combination>, Vec<Option<Combination>>);
@@ -250,35 +240,6 @@ fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
         Some(e) => expand::expand(&e.value).into_iter().map(Some).collect(),
     };
     Some((expand::expand(&entry.parameters.value), elements))
-}
-
-fn refuse_solution(
-    refusal: &crate::exact::Refusal,
-    node: &Node,
-    path: &str,
-    problem: &Combination,
-    reader: &mut Reader,
-) {
-    let at = match &node.value {
-        Value::Map(entries) => entries
-            .iter()
-            .find(|(key, _)| key.name == refusal.parameter)
-            .map(|(_, n)| n),
-        _ => None,
-    };
-    let path = match at {
-        Some(_) => format!("{path}.{}", refusal.parameter),
-        None => path.to_string(),
-    };
-    let which = if problem.labels.is_empty() {
-        String::new()
-    } else {
-        format!(" (in {})", problem.labels.join("-"))
-    };
-    let found = format!("{}{which}", refusal.message);
-    reader
-        .refuse("no-exact-solution", at.unwrap_or(node), &path, found)
-        .hint = refusal.hint.clone();
 }
 
 /// The declared share of the section, above 0 and at most 1.
@@ -436,8 +397,9 @@ fn chosen(node: &Node) -> Vec<(String, String)> {
     }
 }
 
-fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reader) {
-    if cases.iter().any(|case| case.id == id) {
+fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reader) -> bool {
+    let taken = cases.iter().any(|case| case.id == id);
+    if taken {
         let found = format!("two cases would be called \"{id}\"");
         refuse(
             &entry.id,
@@ -447,6 +409,7 @@ fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reade
             reader,
         );
     }
+    !taken
 }
 
 /// Lists make several cases, and all would be judged on one result set: a `{name}` is missing.

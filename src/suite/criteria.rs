@@ -1,6 +1,6 @@
 //! The `accept` list: limits set in advance.
 
-use super::block::{Block, Reader};
+use super::block::{Block, Reader, shown};
 use super::model::{CriterionEntry, LimitKind, Placed, Subject};
 use super::quantity::Quantity;
 use super::read::placed;
@@ -72,7 +72,7 @@ fn by_fit(block: &mut Block, reader: &mut Reader) -> bool {
         Some("fit") => true,
         Some("pair") => false,
         _ => {
-            let found = format!("found {}", node.scalar().unwrap_or(node.kind()));
+            let found = format!("found {}", shown(node));
             reader.refuse("unknown-word", node, &path, found).expected = "fit or pair".into();
             false
         }
