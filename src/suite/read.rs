@@ -299,12 +299,8 @@ fn words(block: &mut Block, key: &'static str, reader: &mut Reader) -> Vec<Place
             continue;
         };
         if list.iter().any(|earlier| earlier.value == word.value) {
-            reader.refuse(
-                "duplicate-level",
-                item,
-                &at,
-                format!("\"{}\" is listed twice", word.value),
-            );
+            let found = format!("\"{}\" is listed twice", word.value);
+            reader.refuse("duplicate-level", item, &at, found).expected = "each level once".into();
         }
         list.push(word);
     }
