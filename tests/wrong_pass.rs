@@ -450,10 +450,12 @@ fn the_wrong_body() {
             "nodes in metres",
             |d| {
                 d.change_all("nodes", |t| {
-                    ["X", "Y", "ux", "uy"].map(|c| t.map(c, |v| v * 1e-3));
+                    ["X", "Y", "ux", "uy"]
+                        .into_iter()
+                        .for_each(|c| t.map(c, |v| v * 1e-3));
                 });
                 d.change_all("points", |t| {
-                    ["X", "Y"].map(|c| t.map(c, |v| v * 1e-3));
+                    ["X", "Y"].into_iter().for_each(|c| t.map(c, |v| v * 1e-3));
                     t.map("weight", |v| v * 1e-6);
                 });
             },
@@ -463,10 +465,10 @@ fn the_wrong_body() {
             "one per cent too large",
             |d| {
                 d.change_all("nodes", |t| {
-                    ["X", "Y"].map(|c| t.map(c, |v| v * 1.01));
+                    ["X", "Y"].into_iter().for_each(|c| t.map(c, |v| v * 1.01));
                 });
                 d.change_all("points", |t| {
-                    ["X", "Y"].map(|c| t.map(c, |v| v * 1.01));
+                    ["X", "Y"].into_iter().for_each(|c| t.map(c, |v| v * 1.01));
                     t.map("weight", |v| v * 1.0201);
                 });
             },
@@ -562,7 +564,7 @@ fn fields_that_are_not_the_solution() {
             "no displacement",
             |d| {
                 d.change_all("nodes", |t| {
-                    ["ux", "uy"].map(|c| t.set(c, "0"));
+                    ["ux", "uy"].into_iter().for_each(|c| t.set(c, "0"));
                 })
             },
             "fail",
@@ -571,7 +573,7 @@ fn fields_that_are_not_the_solution() {
             "displacement of the other sign",
             |d| {
                 d.change_all("nodes", |t| {
-                    ["ux", "uy"].map(|c| t.map(c, |v| -v));
+                    ["ux", "uy"].into_iter().for_each(|c| t.map(c, |v| -v));
                 })
             },
             "fail",
@@ -595,7 +597,9 @@ fn fields_that_are_not_the_solution() {
             "no stress",
             |d| {
                 d.change_all("points", |t| {
-                    ["sxx", "syy", "szz", "sxy"].map(|c| t.set(c, "0"));
+                    ["sxx", "syy", "szz", "sxy"]
+                        .into_iter()
+                        .for_each(|c| t.set(c, "0"));
                 })
             },
             "fail",
@@ -604,7 +608,9 @@ fn fields_that_are_not_the_solution() {
             "stress in kPa",
             |d| {
                 d.change_all("points", |t| {
-                    ["sxx", "syy", "szz", "sxy", "p", "W"].map(|c| t.map(c, |v| v * 1e3));
+                    ["sxx", "syy", "szz", "sxy", "p", "W"]
+                        .into_iter()
+                        .for_each(|c| t.map(c, |v| v * 1e3));
                 })
             },
             "fail",
@@ -633,7 +639,9 @@ fn fields_that_are_not_the_solution() {
             "only shear exported",
             |d| {
                 d.change_all("points", |t| {
-                    ["sxx", "syy", "szz"].map(|c| t.drop_column(c));
+                    ["sxx", "syy", "szz"]
+                        .into_iter()
+                        .for_each(|c| t.drop_column(c));
                 })
             },
             "not-run",
@@ -662,7 +670,7 @@ fn fields_that_are_not_the_solution() {
             "points at the bore",
             |d| {
                 d.change_all("points", |t| {
-                    ["X", "Y"].map(|c| t.map(c, |v| v * 0.97));
+                    ["X", "Y"].into_iter().for_each(|c| t.map(c, |v| v * 0.97));
                 })
             },
             "refused point-inside-element",
@@ -746,6 +754,161 @@ fn totals_and_steps() {
             "a step before the last",
             |d| d.edit_suite("    levels:", "    step: 4\n    levels:"),
             "fail",
+        ),
+    ]);
+}
+
+/// What a suite says of its files is believed, so it must show when it is not so.
+#[test]
+fn declarations_that_do_not_fit_the_files() {
+    fn declare(demo: &Demo, line: &str) {
+        demo.edit_suite("    levels:", &format!("    {line}\n    levels:"));
+    }
+    run(&[
+        (
+            "what holds anyway",
+            |d| {
+                declare(
+                    d,
+                    "conventions: { stress: cauchy, pressure: mean, pressure-positive: compression }",
+                )
+            },
+            "pass",
+        ),
+        (
+            "kPa",
+            |d| declare(d, "units: { length: mm, stress: kPa }"),
+            "fail",
+        ),
+        (
+            "metres",
+            |d| declare(d, "units: { length: m, stress: MPa }"),
+            "refused node-on-body",
+        ),
+        (
+            "tension positive",
+            |d| declare(d, "conventions: { pressure-positive: tension }"),
+            "fail",
+        ),
+        (
+            "p is the multiplier, so that p is taken from the stress",
+            |d| declare(d, "conventions: { pressure: multiplier }"),
+            "pass",
+        ),
+        (
+            "p is the multiplier, and the stress lacks a component",
+            |d| {
+                declare(d, "conventions: { pressure: multiplier }");
+                d.change_all("points", |t| t.drop_column("szz"));
+            },
+            "not-run",
+        ),
+        (
+            "Kirchhoff stress, which is the same here",
+            |d| declare(d, "conventions: { stress: kirchhoff }"),
+            "pass",
+        ),
+        (
+            "second Piola-Kirchhoff stress, no deformation gradient",
+            |d| declare(d, "conventions: { stress: second-piola-kirchhoff }"),
+            "refused stress-conversion",
+        ),
+        (
+            "first Piola-Kirchhoff stress, no deformation gradient",
+            |d| declare(d, "conventions: { stress: first-piola-kirchhoff }"),
+            "not-run",
+        ),
+        (
+            "engineering shear",
+            |d| declare(d, "conventions: { shear: engineering }"),
+            "fail",
+        ),
+        (
+            "columns exchanged",
+            |d| declare(d, "columns: { sxx: syy, syy: sxx }"),
+            "fail",
+        ),
+        (
+            "one column for two",
+            |d| declare(d, "columns: { ux: uy }"),
+            "refused column-used-twice",
+        ),
+        (
+            "a column that is not there",
+            |d| declare(d, "columns: { ux: U1 }"),
+            "refused mapped-column-found",
+        ),
+        (
+            "a name that is none",
+            |d| declare(d, "columns: { Ux: U1 }"),
+            "refused unknown-canonical-name",
+        ),
+        (
+            "a table that is none",
+            |d| declare(d, "columns: { node: { ux: U1 } }"),
+            "refused wrong-type",
+        ),
+        (
+            "a rule that is none",
+            |d| declare(d, "point-rule: gauss-17"),
+            "refused standard-rule",
+        ),
+        (
+            "weights not exported",
+            |d| d.change_all("points", |t| t.drop_column("weight")),
+            "not-run",
+        ),
+        (
+            "coordinates of points not exported",
+            |d| {
+                d.change_all("points", |t| {
+                    ["X", "Y"].into_iter().for_each(|c| t.drop_column(c));
+                })
+            },
+            "refused missing-column",
+        ),
+        (
+            "element of points not exported",
+            |d| d.change_all("points", |t| t.drop_column("element")),
+            "refused missing-column",
+        ),
+        (
+            "no displacement at mid-side nodes",
+            |d| {
+                d.change_all("nodes", |t| {
+                    for row in 0..t.rows.len() {
+                        if t.number(row, "node") > 15.0 {
+                            let at = t.at("ux");
+                            t.rows[row][at] = "0".into();
+                        }
+                    }
+                })
+            },
+            "fail",
+        ),
+        (
+            "a cut-off compressed file",
+            |d| {
+                let half = [0x1f, 0x8b, 8, 0, 0, 0, 0, 0, 0, 3, 1, 2, 3];
+                fs::write(d.level(2).join("points.csv.gz"), half).unwrap();
+                fs::remove_file(d.file(2, "points")).unwrap();
+            },
+            "refused readable-file",
+        ),
+        (
+            "an element other than a mesh can hold",
+            |d| d.change(2, "points", |t| set_last(t, "element", "99")),
+            "refused unknown-element",
+        ),
+        (
+            "points numbered alike",
+            |d| d.change(2, "points", |t| t.set("point", "1")),
+            "refused unique-points",
+        ),
+        (
+            "steps that are no whole numbers",
+            |d| d.change(2, "points", |t| t.set("step", "5.5")),
+            "refused integer",
         ),
     ]);
 }
