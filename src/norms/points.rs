@@ -5,7 +5,7 @@ use super::model;
 use crate::exact::{ExactSolution, State};
 use crate::input::Finding;
 use crate::mechanics::SymTensor;
-use crate::results::{Components, ModelKind, PointBlock, PointSource};
+use crate::results::{Components, ModelKind, Pass, PointBlock, PointSource};
 use rayon::prelude::*;
 
 /// Rows that are read at once, and rows that one task judges. Part of the definition of the sums' last bit.
@@ -73,7 +73,8 @@ pub fn missing_components(kind: ModelKind, components: Components) -> Option<Str
         .then(|| format!("stress components {} are not exported", missing.join(", ")))
 }
 
-/// Reads and judges all points. `watched` says, by element index, which points to keep.
+/// Reads and judges all points in one pass. `watched` says, by element index, which points to keep; `also` sees
+/// every block, so that other checks need no pass of their own.
 ///
 /// # Errors
 /// What the reader finds wrong in the table.
@@ -81,9 +82,11 @@ pub fn point_norms(
     source: &PointSource,
     exact: &dyn ExactSolution,
     watched: &[bool],
-) -> Result<PointNorms, Vec<Finding>> {
+    also: &mut dyn FnMut(&PointBlock),
+) -> Result<(PointNorms, Pass), Vec<Finding>> {
     let mut whole = PointNorms::default();
-    source.for_each_block(READ, &mut |block| {
+    let pass = source.for_each_block(READ, &mut |block| {
+        also(block);
         let rows: Vec<usize> = (0..block.len()).collect();
         let parts: Vec<PointNorms> = rows
             .par_chunks(BLOCK)
@@ -95,7 +98,7 @@ pub fn point_norms(
         Ok(())
     })?;
     whole.kept.sort_by_key(|kept| (kept.element, kept.point));
-    Ok(whole)
+    Ok((whole, pass))
 }
 
 fn judge_rows(

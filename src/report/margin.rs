@@ -36,7 +36,7 @@ impl Margin {
             (Some(_), Verdict::Inconclusive) => Size::Spans,
             (Some(ratio), _) if ratio > 1.0 => Size::Beyond(ratio),
             (Some(1.0), _) => Size::At,
-            (Some(ratio), _) if ratio > 0.0 => Size::Inside(1.0 / ratio),
+            (Some(ratio), _) if ratio > 1e-300 => Size::Inside(1.0 / ratio),
             _ if criterion.bound == Bound::Within => Size::Clear("above theory"),
             _ if criterion.value == Some(0.0) => Size::Clear("zero"),
             _ => Size::Clear("clear of it"),
@@ -67,14 +67,11 @@ impl Margin {
     /// For a sentence: "the limit 10⁻³ times 54"; `limit` may be empty.
     pub fn phrase(&self, number: fn(&Number) -> String, limit: &str) -> Option<String> {
         let factor = |by: f64| number(&Number::ratio(by));
-        let limit = if limit.is_empty() {
-            String::new()
-        } else {
-            format!(" {limit}")
-        };
-        let subject = match self.bound {
-            Bound::Within => format!("its shortfall is the allowed one{limit}"),
-            Bound::AtMost | Bound::AtLeast => format!("the limit{limit}"),
+        let subject = match (self.bound, limit) {
+            (Bound::Within, "") => "its shortfall is the allowed one".to_string(),
+            (Bound::Within, limit) => format!("its shortfall is the allowed {limit}"),
+            (_, "") => "the limit".to_string(),
+            (_, limit) => format!("the limit {limit}"),
         };
         match (&self.size, self.bound) {
             (Size::Inside(by), Bound::AtLeast) => {

@@ -51,6 +51,9 @@ impl Number {
 
     /// A fixed count of decimals.
     pub fn fixed(value: f64, decimals: usize) -> Self {
+        if !value.is_finite() || value.abs() >= 1e6 {
+            return Self::three(value);
+        }
         let text = format!("{value:.decimals$}");
         let zero = text.chars().all(|c| matches!(c, '-' | '0' | '.'));
         Self::bare(if zero {

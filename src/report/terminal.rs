@@ -130,11 +130,17 @@ fn table(outcome: &Outcome, look: Look) -> String {
     let mut cases: Vec<_> = outcome.cases.iter().enumerate().collect();
     cases.sort_by_key(|(_, case)| std::cmp::Reverse(case.verdict));
     for (k, case) in cases {
-        table.add_row(row(k + 1, case));
+        table.add_row(row(k + 1, case, case_width(look)));
     }
     let fixed = |width| ColumnConstraint::Absolute(Width::Fixed(width));
     let number = 2 + outcome.cases.len().to_string().len().max(3) as u16;
-    for (k, width) in [(0, 5), (1, 14), (2, number), (5, 16)] {
+    for (k, width) in [
+        (0, 5),
+        (1, 14),
+        (2, number),
+        (3, case_width(look) as u16 + 2),
+        (5, 12),
+    ] {
         if let Some(column) = table.column_mut(k) {
             column.set_constraint(fixed(width));
         }
@@ -164,7 +170,7 @@ fn table(outcome: &Outcome, look: Look) -> String {
         .collect()
 }
 
-fn row(number: usize, case: &CaseOutcome) -> Row {
+fn row(number: usize, case: &CaseOutcome, width: usize) -> Row {
     let tightest = tightest(case);
     let title = tightest.map_or("none judged".to_string(), |criterion| {
         clean(&wording::name(criterion))
@@ -176,10 +182,29 @@ fn row(number: usize, case: &CaseOutcome) -> Row {
         Cell::new(lanes(case.verdict)),
         Cell::new(case.verdict.word()),
         Cell::new(number),
-        Cell::new(clean(&case.id)),
+        Cell::new(folded(&clean(&case.id), width)),
         Cell::new(title),
         Cell::new(margin.replace([THIN, NBSP], " ")),
     ])
+}
+
+/// Columns of a case's id in the table: 25 on the usual 80.
+fn case_width(look: Look) -> usize {
+    look.width.saturating_sub(55).clamp(10, 42)
+}
+
+/// An id over several lines, broken behind its hyphens where possible.
+fn folded(id: &str, width: usize) -> String {
+    let mut lines: Vec<String> = vec![String::new()];
+    for part in id.split_inclusive('-') {
+        let last = lines.len() - 1;
+        if !lines[last].is_empty() && lines[last].chars().count() + part.chars().count() > width {
+            lines.push(part.to_string());
+        } else {
+            lines[last].push_str(part);
+        }
+    }
+    lines.join("\n")
 }
 
 /// A case that is not passed: every criterion that is not met, with its numbers and its reason.
@@ -261,7 +286,7 @@ fn ending(outcome: &Outcome, look: Look) -> String {
         .map(|v| format!("{} {}", outcome.counts.get(*v), v.word()))
         .collect();
     let total = count(outcome.counts.total(), "case", "cases");
-    let mut out = format!("{}   ({total})\n", counts.join("   "));
+    let mut out = paragraph(&format!("{} ({total})", counts.join(", ")), "", look);
     let (verdict, numbers) = wording::verdict_sentence(outcome);
     out += &paragraph(&wording::summary(outcome, PLAIN), "", look);
     out + &paint(

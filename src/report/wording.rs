@@ -138,7 +138,9 @@ pub fn name(criterion: &CriterionOutcome) -> String {
 pub fn value(criterion: &CriterionOutcome, voice: Voice) -> Option<String> {
     let value = criterion.value?;
     let order = (criterion.judged == Judged::Order).then_some(2);
-    let number = match criterion.uncertainty.filter(|u| *u > 0.0) {
+    // an uncertainty below half of the third digit would only lengthen the number
+    let visible = |u: &f64| *u > 5e-4 * value.abs();
+    let number = match criterion.uncertainty.filter(visible) {
         Some(half_width) => {
             let (value, half_width) = with_uncertainty(value, half_width, order);
             let sign = format!("{THIN}±{THIN}");
@@ -204,15 +206,13 @@ pub fn question(case: &CaseOutcome) -> String {
         0 | 1 => "the one mesh".to_string(),
         n => format!("{n} meshes"),
     };
-    match case.criteria.len() {
-        0 => "No criterion was set for this case.".to_string(),
-        1 => format!(
-            "Does the solution on {meshes} keep to its one limit against the exact solution?"
-        ),
-        n => format!(
-            "Does the solution on {meshes} keep to all {n} limits against the exact solution?"
-        ),
-    }
+    let limits = match case.criteria.len() {
+        0 => return "No criterion was set for this case.".to_string(),
+        1 => "its one limit".to_string(),
+        2 => "both limits".to_string(),
+        n => format!("all {n} limits"),
+    };
+    format!("Does the solution on {meshes} keep to {limits} against the exact solution?")
 }
 
 /// The answer: Yes. / No. / Not decided. / Not run., then the numbers.
@@ -300,6 +300,7 @@ fn rest(case: &CaseOutcome) -> String {
         .count();
     match open {
         0 | 1 => String::new(),
+        n if n == case.criteria.len() => format!("Not one of the {n} criteria is met."),
         _ => format!("{open} of {} criteria are not met.", case.criteria.len()),
     }
 }

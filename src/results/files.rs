@@ -164,11 +164,17 @@ impl Read for Hashing {
     }
 }
 
-/// A file being read: plain text out, hash and size at the end.
+/// A file being read: plain text out, hash and size at the end. CRLF comes out as LF, and the last line always
+/// ends with a line break, so that line numbers can be counted.
 pub(crate) struct Opened {
     source: Source,
-    /// The last byte handed out.
+    chunk: Vec<u8>,
+    /// The part of the chunk that was not handed out yet.
+    ready: std::ops::Range<usize>,
+    /// A carriage return whose follower is not known yet.
+    pending: bool,
     last: Option<u8>,
+    completed: bool,
 }
 
 enum Source {
@@ -189,7 +195,14 @@ impl Opened {
         } else {
             Source::Plain(raw)
         };
-        Ok(Self { source, last: None })
+        Ok(Self {
+            source,
+            chunk: vec![0; 1 << 16],
+            ready: 0..0,
+            pending: false,
+            last: None,
+            completed: false,
+        })
     }
 
     /// Hash and size of the whole file: reads what is left of it.
@@ -212,19 +225,112 @@ impl Opened {
 
     /// False when the text ended without a line break.
     pub fn ended_with_newline(&self) -> bool {
-        self.last.is_none_or(|b| b == b'\n')
+        !self.completed
+    }
+
+    /// Reads the next chunk; an empty one is the end.
+    fn refill(&mut self) -> std::io::Result<()> {
+        // the first byte is kept free for a pending carriage return
+        let count = match &mut self.source {
+            Source::Plain(raw) => raw.read(&mut self.chunk[1..])?,
+            Source::Gz(gz) => gz.read(&mut self.chunk[1..])?,
+        };
+        let mut end = 0;
+        let mut put = |chunk: &mut Vec<u8>, byte: u8| {
+            chunk[end] = byte;
+            end += 1;
+        };
+        if std::mem::take(&mut self.pending) && (count == 0 || self.chunk[1] != b'\n') {
+            put(&mut self.chunk, b'\r');
+        }
+        if self.chunk[1..=count].contains(&b'\r') {
+            for at in 1..=count {
+                let byte = self.chunk[at];
+                if byte == b'\r' && at == count {
+                    self.pending = true;
+                } else if byte != b'\r' || self.chunk[at + 1] != b'\n' {
+                    put(&mut self.chunk, byte);
+                }
+            }
+        } else {
+            self.chunk.copy_within(1..=count, end);
+            end += count;
+        }
+        if end > 0 {
+            self.last = Some(self.chunk[end - 1]);
+        } else if count == 0 && !self.completed && self.last.is_some_and(|b| b != b'\n') {
+            self.chunk[0] = b'\n';
+            self.completed = true;
+            end = 1;
+        }
+        self.ready = 0..end;
+        if end == 0 && count > 0 {
+            return self.refill();
+        }
+        Ok(())
     }
 }
 
 impl Read for Opened {
     fn read(&mut self, buffer: &mut [u8]) -> std::io::Result<usize> {
-        let count = match &mut self.source {
-            Source::Plain(raw) => raw.read(buffer)?,
-            Source::Gz(gz) => gz.read(buffer)?,
-        };
-        if count > 0 {
-            self.last = Some(buffer[count - 1]);
+        if self.ready.is_empty() {
+            self.refill()?;
         }
+        let count = buffer.len().min(self.ready.len());
+        let from = self.ready.start;
+        buffer[..count].copy_from_slice(&self.chunk[from..from + count]);
+        self.ready.start += count;
         Ok(count)
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use proptest::prelude::*;
+
+    fn text_of(data: &[u8]) -> (Vec<u8>, bool) {
+        let dir = tempfile::tempdir().unwrap();
+        let path = dir.path().join("nodes.csv");
+        std::fs::write(&path, data).unwrap();
+        let part = Part {
+            path,
+            shown: String::new(),
+            gz: false,
+        };
+        let mut opened = Opened::open(&part).unwrap();
+        let mut text = Vec::new();
+        opened.read_to_end(&mut text).unwrap();
+        (text, opened.ended_with_newline())
+    }
+
+    #[test]
+    fn line_ends_become_line_feeds_across_chunks() {
+        let mut data = vec![b'x'; (1 << 16) - 2];
+        data.extend(b"\r\ny\rz");
+        let (text, ended) = text_of(&data);
+        assert!(!ended);
+        assert!(text.ends_with(b"x\ny\rz\n"));
+        assert_eq!(text.len(), data.len());
+        assert_eq!(text_of(b""), (Vec::new(), true));
+        assert_eq!(text_of(b"a\r"), (b"a\r\n".to_vec(), false));
+        assert_eq!(text_of(b"\r\n"), (b"\n".to_vec(), true));
+    }
+
+    proptest! {
+        #[test]
+        fn only_carriage_returns_before_line_feeds_are_lost(
+            piece in proptest::collection::vec(prop_oneof![Just(b'\r'), Just(b'\n'), Just(b'a')], 1..40),
+            lead in 65500usize..65540,
+        ) {
+            let mut data = vec![b'x'; lead];
+            data.extend(&piece);
+            let mut expected = String::from_utf8(data.clone()).unwrap().replace("\r\n", "\n");
+            let complete = expected.ends_with('\n');
+            if !complete {
+                expected.push('\n');
+            }
+            prop_assert_eq!(text_of(&data), (expected.into_bytes(), complete));
+        }
     }
 }

@@ -7,6 +7,7 @@
 mod block;
 mod channel;
 mod conventions;
+mod cover;
 mod elements;
 mod files;
 mod frame;
@@ -15,6 +16,7 @@ mod ids;
 mod log;
 mod nodes;
 mod number;
+mod pass;
 mod points;
 pub mod rules;
 pub mod sanity;
@@ -39,5 +41,11 @@ pub use set::ResultSet;
 pub use stress::Components;
 pub use totals::{Total, Totals, dimension_of};
 
+#[cfg(test)]
+mod invariance;
+#[cfg(test)]
+mod nodes_tests;
+#[cfg(test)]
+mod sanity_tests;
 #[cfg(test)]
 mod tests;

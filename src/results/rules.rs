@@ -53,6 +53,10 @@ pub const RULES: &[(&str, &str)] = &[
         "every header named under `columns:` exists",
     ),
     (
+        "matching-sides",
+        "two elements that share the corners of a side share its middle nodes",
+    ),
+    (
         "mean-pressure",
         "where p and all normal stresses are given, p is -tr(sigma)/3",
     ),
@@ -84,12 +88,12 @@ pub const RULES: &[(&str, &str)] = &[
         "point numbers lie in the stated range",
     ),
     (
-        "points-cover-mesh",
-        "the weights of the integration points add up to the meshed volume",
-    ),
-    (
         "points-cover-element",
         "the weights of an element's integration points add up to its volume",
+    ),
+    (
+        "points-cover-mesh",
+        "the weights of the integration points add up to the meshed volume",
     ),
     (
         "positive-jacobian",
@@ -110,12 +114,12 @@ pub const RULES: &[(&str, &str)] = &[
     ("repeated-node", "an element names each node once"),
     ("same-header", "every part repeats the same header"),
     (
-        "shape-node-count",
-        "an element has as many nodes as its shape, and no more",
-    ),
-    (
         "shape-name",
         "an element shape is one of the exchange format",
+    ),
+    (
+        "shape-node-count",
+        "an element has as many nodes as its shape, and no more",
     ),
     (
         "standard-rule",
@@ -156,6 +160,7 @@ pub const RULES: &[(&str, &str)] = &[
     ),
     ("unused-node", "every node belongs to an element"),
     ("utf-8", "text is UTF-8"),
+    ("volume-ratio", "where J and F are given, J is det F"),
 ];
 
 /// The meaning of a rule, if there is such a rule.
@@ -184,6 +189,11 @@ mod tests {
                 "{name}"
             );
         }
+    }
+
+    #[test]
+    fn rules_are_in_alphabetical_order() {
+        assert!(RULES.is_sorted_by_key(|(name, _)| name));
     }
 
     #[test]

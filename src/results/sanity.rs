@@ -1,6 +1,9 @@
 //! Checks that need only the mesh and its points, no exact solution: is this a mesh, and do the integration
 //! points cover it?
 
+pub use super::cover::{
+    COVER_CAUTION, COVER_REFUSED, CoverCheck, Coverage, INSIDE_SLACK, check_points,
+};
 use super::elements::Elements;
 use super::frame::ModelKind;
 use super::log::Log;
@@ -9,14 +12,8 @@ use super::set::ResultSet;
 use crate::elements::{MAX_NODES, Shape, ShapeTable, map};
 use crate::input::{Finding, Place, Weight};
 
-/// How far outside its element an integration point may lie, in reference coordinates.
-pub const INSIDE_SLACK: f64 = 1e-6;
 /// Nodes closer than this share of the model's extent are at the same place.
 pub const COINCIDENT: f64 = 1e-9;
-/// Relative difference of weights and volume from which on a caution is given.
-pub const COVER_CAUTION: f64 = 1e-6;
-/// Relative difference of weights and volume from which on nothing is judged.
-pub const COVER_REFUSED: f64 = 1e-3;
 
 /// A side that belongs to one element only.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
@@ -24,18 +21,6 @@ pub struct Side {
     pub element: u32,
     /// Index into [`Shape::sides`].
     pub side: u8,
-}
-
-/// What the points say about the mesh.
-#[derive(Debug, Clone, PartialEq)]
-pub struct Coverage {
-    pub points: u64,
-    /// Sum of the weights, where there are any.
-    pub weight_sum: Option<f64>,
-    pub mesh_volume: f64,
-    /// `weight_sum` over `mesh_volume`.
-    pub ratio: Option<f64>,
-    pub remarks: Vec<Finding>,
 }
 
 /// Shape functions at a rule fine enough for the volume of every element: one table a shape of the mesh.
@@ -193,8 +178,19 @@ fn check_jacobians(elements: &Elements, nodes: &Nodes, log: &mut Log) {
 fn check_sides(elements: &Elements, nodes: &Nodes, log: &mut Log) {
     let all = sorted_sides(elements);
     let mut alone = false;
+    let mut unlike: Vec<(Side, Side)> = Vec::new();
     for same in all.chunk_by(|a, b| a.0 == b.0) {
         alone |= same.len() == 1;
+        if let [one, other] = same {
+            let sorted = |side: Side| {
+                let mut nodes = side_nodes(elements, side);
+                nodes.sort_unstable();
+                nodes
+            };
+            if sorted(one.1) != sorted(other.1) {
+                unlike.push((one.1, other.1));
+            }
+        }
         if same.len() > 2 {
             let ids: Vec<String> = (same[0].0.iter().filter(|&&n| n != u32::MAX))
                 .map(|&n| nodes.ids[n as usize].to_string())
@@ -208,6 +204,20 @@ fn check_sides(elements: &Elements, nodes: &Nodes, log: &mut Log) {
             let hint = "elements overlap, or one is there twice";
             log.add(Finding::refused("manifold-sides", place, what).hint(hint));
         }
+    }
+    if let Some((one, other)) = unlike.iter().min() {
+        let id = |side: &Side| elements.ids[side.element as usize];
+        let what = format!(
+            "{} sides have other middle nodes in one element than in its neighbour; the first are elements {} and {}",
+            unlike.len(),
+            id(one),
+            id(other)
+        );
+        let place = elements.place(other.element as usize);
+        log.add(
+            Finding::new(Weight::Caution, "matching-sides", place, what)
+                .hint("the displacement may jump there: merge the nodes, or use shapes that fit"),
+        );
     }
     if !alone && !elements.is_empty() {
         let what = "no side belongs to one element only: the mesh has no boundary";
@@ -274,208 +284,4 @@ fn check_coincident(nodes: &Nodes, log: &mut Log) {
                 .hint("merge them, unless the body is meant to be cut there"),
         );
     }
-}
-
-/// Reads all points once: are they inside their elements, has every element some, do the weights add up to the
-/// volume of the mesh and of each element? `None` without points or without a mesh.
-pub fn check_points(set: &ResultSet) -> Result<Option<Coverage>, Vec<Finding>> {
-    let (Some(elements), Some(nodes), Some(points)) = (set.elements(), set.nodes(), set.points())
-    else {
-        return Ok(None);
-    };
-    let volumes = element_volumes(elements, nodes);
-    let mut sums = vec![0.0; elements.len()];
-    let mut counts = vec![0u32; elements.len()];
-    let mut log = Log::new();
-    let given = points.channels().coordinates == super::Channel::Given;
-    let mut coords = [[0.0; 3]; MAX_NODES];
-    let pass = points.for_each_block(4096, &mut |block| {
-        for i in 0..block.len() {
-            let element = block.element[i] as usize;
-            counts[element] += 1;
-            if let Some(weight) = &block.weight {
-                sums[element] += weight[i];
-            }
-            if !given {
-                continue;
-            }
-            let count = elements.coordinates(element, nodes, &mut coords);
-            let shape = elements.shapes[element];
-            let target = elements.kind.in_plane(block.position[i]);
-            let inside = map::inverse_map(shape, &coords[..count], target);
-            if !inside.is_some_and(|xi| shape.contains(xi, INSIDE_SLACK)) {
-                log.add(outside(
-                    block.place(i),
-                    block.point[i],
-                    elements.ids[element],
-                    inside,
-                ));
-            }
-        }
-        Ok(())
-    })?;
-    log.extend(pass.remarks);
-    for (element, _) in counts.iter().enumerate().filter(|(_, count)| **count == 0) {
-        let what = format!(
-            "element {} has no integration point in {}",
-            elements.ids[element],
-            points.file()
-        );
-        log.add(Finding::refused(
-            "element-without-points",
-            elements.place(element),
-            what,
-        ));
-    }
-    let mesh_volume: f64 = volumes.iter().sum();
-    let weighted = points.channels().weight.is_available();
-    let weight_sum = weighted.then(|| sums.iter().sum::<f64>());
-    let ratio = weight_sum.map(|sum| sum / mesh_volume);
-    if let Some(ratio) = ratio
-        && !log.is_refused()
-    {
-        compare(
-            elements,
-            nodes,
-            points.file(),
-            (&sums, &volumes),
-            ratio,
-            &mut log,
-        );
-    }
-    let remarks = log.finish(points.file())?;
-    Ok(Some(Coverage {
-        points: pass.points,
-        weight_sum,
-        mesh_volume,
-        ratio,
-        remarks,
-    }))
-}
-
-fn outside(place: Place, point: i64, element: i64, at: Option<[f64; 3]>) -> Finding {
-    let place = place.field("X");
-    let what = match at {
-        Some(xi) => {
-            format!("point {point} lies outside element {element}: reference coordinates {xi:?}")
-        }
-        None => format!("point {point} cannot be found in element {element}"),
-    };
-    Finding::refused("point-inside-element", place, what)
-        .expected(format!("inside, up to {INSIDE_SLACK:e} in reference coordinates"))
-        .hint("check the units and the element of the point, and that the coordinates are undeformed ones")
-}
-
-/// Weights against volumes: of the mesh, and of each element.
-fn compare(
-    elements: &Elements,
-    nodes: &Nodes,
-    file: &str,
-    (sums, volumes): (&[f64], &[f64]),
-    ratio: f64,
-    log: &mut Log,
-) {
-    let off = |ratio: f64| (ratio - 1.0).abs();
-    let weigh = |gap: f64| {
-        if gap.is_nan() || gap > COVER_REFUSED {
-            Some(Weight::Refused)
-        } else {
-            (gap > COVER_CAUTION).then_some(Weight::Caution)
-        }
-    };
-    let whole = weigh(off(ratio));
-    if let Some(weight) = whole {
-        let what = format!("the weights add up to {ratio:.9} times the volume of the mesh");
-        let hint = hint_for(elements, nodes, sums, ratio);
-        let finding = Finding::new(
-            weight,
-            "points-cover-mesh",
-            Place::file(file).field("weight"),
-            what,
-        );
-        log.add(
-            finding
-                .expected(format!("1, up to {COVER_CAUTION:e}"))
-                .hint(hint),
-        );
-    }
-    if whole == Some(Weight::Refused) {
-        return;
-    }
-    let mut worst: Option<(f64, usize)> = None;
-    let mut count = 0;
-    for element in 0..elements.len() {
-        let gap = off(sums[element] / volumes[element]);
-        if let Some(weight) = weigh(gap) {
-            if weight == Weight::Refused {
-                let what = format!(
-                    "the weights of element {} add up to {:.9} times its volume",
-                    elements.ids[element],
-                    sums[element] / volumes[element]
-                );
-                let hint = "a point is missing, or belongs to another element";
-                log.add(
-                    Finding::refused("points-cover-element", elements.place(element), what)
-                        .hint(hint),
-                );
-            } else {
-                count += 1;
-                if worst.is_none_or(|(w, _)| gap > w) {
-                    worst = Some((gap, element));
-                }
-            }
-        }
-    }
-    if let Some((gap, element)) = worst {
-        let what = format!(
-            "the weights of {count} elements differ from their volumes, most in element {}: by {gap:.3e}",
-            elements.ids[element]
-        );
-        let place = elements.place(element);
-        log.add(
-            Finding::new(Weight::Caution, "points-cover-element", place, what)
-                .hint("the rule of the solver may not be exact on curved elements"),
-        );
-    }
-}
-
-/// A guess at what went wrong with the weights.
-fn hint_for(elements: &Elements, nodes: &Nodes, sums: &[f64], ratio: f64) -> String {
-    let near = |a: f64, b: f64| (a - b).abs() <= 1e-6 * b.abs();
-    let sum: f64 = sums.iter().sum();
-    let bare: f64 = elements.shapes.iter().map(|s| s.reference_measure()).sum();
-    let turn = 2.0 * std::f64::consts::PI;
-    let thickness = 1.0 / ratio;
-    if near(sum, bare) {
-        "these are bare quadrature weights: multiply by det(dX/dxi)".to_string()
-    } else if elements.kind == ModelKind::Axisymmetric && near(ratio * turn, 1.0) {
-        "the factor 2 pi is missing".to_string()
-    } else if elements.kind == ModelKind::Axisymmetric && near(sum, section_area(elements, nodes)) {
-        "the factor 2 pi R is missing".to_string()
-    } else if near(thickness.round(), thickness) && thickness > 1.5 {
-        format!(
-            "1/{thickness:.0} of the mesh: points are missing, or the weights are those of a sector"
-        )
-    } else if near(ratio.round(), ratio) && ratio > 1.5 {
-        format!(
-            "{ratio:.0} times the mesh: a thickness, several steps or all sectors are in the weights"
-        )
-    } else {
-        "a weight is quadrature weight times det(dX/dxi), per unit thickness in two dimensions, times 2 pi R in \
-         axisymmetric models, of the modelled part only"
-            .to_string()
-    }
-}
-
-/// The area of an axisymmetric section.
-fn section_area(elements: &Elements, nodes: &Nodes) -> f64 {
-    let mut flat = elements.clone();
-    flat.kind = ModelKind::Planar;
-    let mut section = nodes.clone();
-    section.positions = nodes
-        .positions
-        .iter()
-        .map(|&x| elements.kind.in_plane(x))
-        .collect();
-    mesh_volume(&flat, &section)
 }

@@ -376,6 +376,9 @@ fn choose_step(
     }
     if all.len() > 1 {
         let last = all.last() == Some(&step);
+        let fields = [&tables.nodes, &tables.points];
+        let mut with_steps = fields.into_iter().flatten().map(|t| t.header.peek("step"));
+        let fields_stepped = with_steps.any(|column| column.is_some());
         for table in [&tables.nodes, &tables.points, &tables.totals]
             .into_iter()
             .flatten()
@@ -383,7 +386,7 @@ fn choose_step(
             if table.header.peek("step").is_some() {
                 continue;
             }
-            let remark_only = table.name == TableName::Totals && last;
+            let remark_only = last && (table.name == TableName::Totals || !fields_stepped);
             let weight = if remark_only {
                 Weight::Caution
             } else {

@@ -8,23 +8,23 @@ use std::collections::BTreeSet;
 /// Chooses the rows of one table.
 #[derive(Debug, Clone, Default)]
 pub(crate) struct StepFilter {
-    /// The column and the step wanted; `None` takes every row.
-    wanted: Option<(usize, i64)>,
+    column: Option<usize>,
+    step: Option<i64>,
 }
 
 impl StepFilter {
+    /// Without a column every row is taken.
     pub fn new(column: Option<usize>, step: Option<i64>) -> Self {
-        Self {
-            wanted: column.zip(step),
-        }
+        Self { column, step }
     }
 
     /// True for a row of the step; a step that is no number goes to the log.
     pub fn wants(&self, row: &Row, log: &mut Log) -> bool {
-        match self.wanted {
-            None => true,
-            Some((column, step)) => row.integer(column, log) == Some(step),
-        }
+        let Some(column) = self.column else {
+            return true;
+        };
+        let here = row.integer(column, log);
+        here.is_some() && (self.step.is_none() || here == self.step)
     }
 }
 

@@ -65,6 +65,9 @@ impl Components {
     }
 }
 
+/// Entries of F up to this count as zero.
+const OFF_BLOCK: f64 = 1e-12;
+
 const CARTESIAN: [&str; 6] = ["sxx", "syy", "szz", "sxy", "syz", "szx"];
 const CYLINDRICAL: [&str; 6] = ["srr", "stt", "szz", "srt", "stz", "szr"];
 const PIOLA: [&str; 9] = [
@@ -142,6 +145,8 @@ pub(crate) struct StressPlan {
     /// For measures that need it.
     needs_f: bool,
     needs_j: bool,
+    /// Entries of F that must be zero because not all components are given.
+    zero: Vec<usize>,
     pub components: Components,
 }
 
@@ -208,7 +213,12 @@ impl StressPlan {
                 if let Some(&i) = needed(kind).iter().find(|&&i| !given(i)) {
                     return Err(NoStress::NotConvertible(header.missing_reason(PIOLA[i])));
                 }
-                Components::of(|i| kind != ModelKind::Planar || i != 4 && i != 5)
+                let all = columns.iter().all(Option::is_some);
+                Components::of(|i| match kind {
+                    ModelKind::Solid => true,
+                    ModelKind::Planar => all || (i != 4 && i != 5),
+                    ModelKind::Axisymmetric => all || (i != 3 && i != 4),
+                })
             }
             _ => {
                 let frame_turns = cylindrical && kind != ModelKind::Axisymmetric;
@@ -227,8 +237,13 @@ impl StressPlan {
         } else {
             1.0
         };
+        let zero = match needs_f && !components.is_full() {
+            true => (0..9).filter(|i| !needed(kind).contains(i)).collect(),
+            false => Vec::new(),
+        };
         Ok(Self {
             columns,
+            zero,
             cylindrical,
             measure,
             shear,
@@ -263,6 +278,17 @@ impl StressPlan {
             }
         }
         if !complete {
+            return None;
+        }
+        if let Some(f) = f
+            && let Some(&i) = self.zero.iter().find(|&&i| f[i].abs() > OFF_BLOCK)
+        {
+            let what = format!(
+                "{} is {}, and not all stress components are given",
+                GRADIENT[i], f[i]
+            );
+            let hint = "the conversion to Cauchy stress needs them all";
+            log.add(Finding::refused("stress-conversion", row.line_place(), what).hint(hint));
             return None;
         }
         let tensor = if self.measure == StressMeasure::FirstPiolaKirchhoff {

@@ -165,8 +165,21 @@ impl Table {
                 if !reader.read_byte_record(&mut record).map_err(into_io)? {
                     break;
                 }
+                // every line ends with a line break: the record lies on the line before the reader's; only where
+                // a quote was not closed this may be the end of the file
                 let after = reader.position().line();
-                let line = skipped + record.position().map_or(before, csv::Position::line);
+                let breaks = if after > before + 1 {
+                    let bytes = record.as_slice();
+                    bytes.iter().filter(|&&b| b == b'\n').count() as u64
+                } else {
+                    0
+                };
+                let from = if breaks > 0 {
+                    before
+                } else {
+                    after.saturating_sub(1).max(1)
+                };
+                let line = skipped + from;
                 let Some(width) = expected else {
                     expected = Some(record.len());
                     continue;
@@ -179,7 +192,7 @@ impl Table {
                     part: index,
                     line,
                 };
-                if after > before + 1 && record.as_slice().contains(&b'\n') {
+                if breaks > 0 {
                     let what = "a cell holds a line break";
                     let hint = "close the quotation mark";
                     log.add(
@@ -258,7 +271,6 @@ fn after_comments<R: Read>(mut source: R) -> std::io::Result<(impl Read, u64)> {
                 text.consume(1);
                 skipped += 1;
             }
-            Some(b'\r') => text.consume(1),
             _ => return Ok((text, skipped)),
         }
     }
@@ -269,10 +281,9 @@ fn read_header(part: &Part, log: &mut Log) -> Option<(Vec<String>, u64)> {
     let read = || -> std::io::Result<(ByteRecord, u64)> {
         let (text, skipped) = after_comments(Opened::open(part)?)?;
         let mut record = ByteRecord::new();
-        csv_reader(text)
-            .read_byte_record(&mut record)
-            .map_err(into_io)?;
-        let line = skipped + record.position().map_or(1, csv::Position::line);
+        let mut reader = csv_reader(text);
+        reader.read_byte_record(&mut record).map_err(into_io)?;
+        let line = skipped + reader.position().line().saturating_sub(1);
         Ok((record, line))
     };
     let (record, line) = match read() {

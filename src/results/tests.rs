@@ -4,11 +4,9 @@ use super::*;
 use crate::input::{Finding, Weight};
 use crate::mechanics::UnitSystem;
 use crate::mechanics::stress_measure::StressMeasure;
-use proptest::prelude::*;
-use std::io::Write;
 
 /// Writes a folder of files.
-fn folder(files: &[(&str, &[u8])]) -> tempfile::TempDir {
+pub(super) fn folder(files: &[(&str, &[u8])]) -> tempfile::TempDir {
     let dir = tempfile::tempdir().unwrap();
     for (name, data) in files {
         std::fs::write(dir.path().join(name), data).unwrap();
@@ -16,7 +14,7 @@ fn folder(files: &[(&str, &[u8])]) -> tempfile::TempDir {
     dir
 }
 
-fn open(files: &[(&str, &str)], reading: &Reading) -> Result<ResultSet, Vec<Finding>> {
+pub(super) fn open(files: &[(&str, &str)], reading: &Reading) -> Result<ResultSet, Vec<Finding>> {
     let raw: Vec<(&str, &[u8])> = files.iter().map(|(n, t)| (*n, t.as_bytes())).collect();
     ResultSet::open(folder(&raw).path(), "r", reading)
 }
@@ -365,7 +363,7 @@ fn a_visitor_may_stop_and_nothing_is_visited_after_a_broken_row() {
     assert_eq!(set.inputs().len(), 0, "an incomplete pass hashes nothing");
     let stop = Finding::refused("number", crate::input::Place::file("x"), "enough");
     let found = points
-        .for_each_block(1, &mut |_| Err(stop.clone()))
+        .for_each_block(1, &mut |_| Err(Box::new(stop.clone())))
         .unwrap_err();
     assert_eq!(found.last(), Some(&stop));
 }
@@ -398,164 +396,58 @@ fn inputs_are_hashed_as_they_lie_on_the_disk_and_changes_are_noticed() {
 
 const SHA_OF_NODES: &str = "5ced5468dd3a8ba291c6e268e888397df4e1c4b3c09222205321327ebc7898b1";
 
-/// Everything a result set says, as text, points sorted.
-fn everything(dir: &std::path::Path) -> String {
-    let set = ResultSet::open(dir, "r", &Reading::default()).unwrap();
-    let nodes = set.nodes().unwrap();
-    let elements = set.elements().unwrap();
-    let mut text = format!(
-        "{:?} {:?} {:?}\n",
-        nodes.ids, nodes.positions, nodes.displacement
-    );
-    for e in 0..elements.len() {
-        let list = elements.nodes(e);
-        text += &format!(
-            "{} {:?} {list:?} {}\n",
-            elements.ids[e],
-            elements.shapes[e],
-            elements.region(e)
-        );
-    }
-    let mut rows = Vec::new();
-    let keep = &mut |b: &PointBlock| {
-        for i in 0..b.len() {
-            let (weight, stress) = (b.weight.as_ref().unwrap()[i], b.stress.as_ref().unwrap()[i]);
-            rows.push(format!(
-                "{} {} {:?} {weight} {stress:?}",
-                b.element[i], b.point[i], b.position[i]
-            ));
-        }
-        Ok(())
+#[test]
+fn a_conversion_that_needs_components_which_are_not_there_is_refused() {
+    let mut reading = Reading::default();
+    reading.conventions.stress = StressMeasure::SecondPiolaKirchhoff;
+    let text = |f13: &str| {
+        format!(
+            "element,point,X,Y,sxx,syy,szz,sxy,F11,F12,F13,F21,F22,F33\n1,1,0,0,1,2,3,0,2,0,{f13},0,1,1\n"
+        )
     };
-    let pass = set.points().unwrap().for_each_block(3, keep).unwrap();
-    rows.sort();
-    let coverage = sanity::check_points(&set).unwrap().unwrap();
-    format!(
-        "{text}{}\n{} {:?}",
-        rows.join("\n"),
-        pass.points,
-        coverage.ratio.map(|r| (r * 1e12).round())
-    )
+    let stress = one_point(&text("0"), &reading).stress.unwrap()[0];
+    assert_eq!(stress[..4], [2.0, 1.0, 1.5, 0.0]);
+    let dir = folder(&[("points.csv", text("0.1").as_bytes())]);
+    let set = ResultSet::open(dir.path(), "r", &reading).unwrap();
+    let found = set
+        .points()
+        .unwrap()
+        .for_each_block(1, &mut |_| Ok(()))
+        .unwrap_err();
+    assert_eq!(found.last().unwrap().rule, "stress-conversion");
+    assert!(found.last().unwrap().found.contains("F13 is 0.1"));
 }
 
-fn sound(name: &str) -> String {
-    let path = format!(
-        "{}/tests/data/broken-csv/sound/{name}",
-        env!("CARGO_MANIFEST_DIR")
+#[test]
+fn a_step_column_without_numbers_is_refused() {
+    let found = open(
+        &[("nodes.csv", "node,X,Y,step\n1,0,0,last\n")],
+        &Reading::default(),
     );
-    std::fs::read_to_string(path).unwrap()
+    assert_eq!(found.unwrap_err()[0].rule, "integer");
 }
 
-/// How a table is written down.
-#[derive(Debug, Clone)]
-struct Dress {
-    order: Vec<usize>,
-    parts: usize,
-    gz: bool,
-    crlf: bool,
-    bom: bool,
-    comment: bool,
-    final_newline: bool,
-}
-
-fn dress() -> impl Strategy<Value = Dress> {
-    let order = Just((0..8).collect::<Vec<usize>>()).prop_shuffle();
-    (order, 1usize..4, any::<[bool; 5]>()).prop_map(
-        |(order, parts, [gz, crlf, bom, comment, final_newline])| Dress {
-            order,
-            parts,
-            gz,
-            crlf,
-            bom,
-            comment,
-            final_newline,
-        },
-    )
-}
-
-fn write_dressed(dir: &std::path::Path, table: &str, text: &str, dress: &Dress) {
-    let mut lines = text.lines();
-    let header = lines.next().unwrap();
-    let rows: Vec<&str> = lines.collect();
-    let order: Vec<usize> = dress
-        .order
-        .iter()
-        .copied()
-        .filter(|&i| i < rows.len())
-        .collect();
-    let size = order.len().div_ceil(dress.parts);
-    for (n, piece) in order.chunks(size).enumerate() {
-        let mut out = String::new();
-        if dress.bom {
-            out.push('\u{feff}');
-        }
-        if dress.comment {
-            out += "# made by a solver, \"quoted\n";
-        }
-        out += header;
-        for &i in piece {
-            out += "\n";
-            out += rows[i];
-        }
-        if dress.final_newline {
-            out += "\n";
-        }
-        if dress.crlf {
-            out = out.replace('\n', "\r\n");
-        }
-        let part = if order.len() > size {
-            format!(".part-{:04}", n + 1)
-        } else {
-            String::new()
-        };
-        let ending = if dress.gz { ".csv.gz" } else { ".csv" };
-        let mut file = std::fs::File::create(dir.join(format!("{table}{part}{ending}"))).unwrap();
-        if dress.gz {
-            let mut gz = flate2::write::GzEncoder::new(file, flate2::Compression::fast());
-            gz.write_all(out.as_bytes()).unwrap();
-            gz.finish().unwrap();
-        } else {
-            file.write_all(out.as_bytes()).unwrap();
-        }
-    }
-}
-
-proptest! {
-    #![proptest_config(ProptestConfig::with_cases(64))]
-
-    #[test]
-    fn reading_does_not_depend_on_order_parts_compression_or_line_ends(
-        nodes in dress(), elements in dress(), points in dress(),
-    ) {
-        let plain = tempfile::tempdir().unwrap();
-        let dressed = tempfile::tempdir().unwrap();
-        for (table, dress) in [("nodes", &nodes), ("elements", &elements), ("points", &points)] {
-            let text = sound(&format!("{table}.csv"));
-            std::fs::write(plain.path().join(format!("{table}.csv")), &text).unwrap();
-            write_dressed(dressed.path(), table, &text, dress);
-        }
-        prop_assert_eq!(everything(plain.path()), everything(dressed.path()));
-    }
-
-    #[test]
-    fn any_bytes_are_read_or_refused_but_never_a_panic(
-        data in proptest::collection::vec(prop_oneof![
-            Just(b','), Just(b'\n'), Just(b'"'), Just(b'1'), Just(b'-'), Just(b'#'), Just(b'\r'), any::<u8>(),
-        ], 0..200),
-        table in 0usize..4,
-        headed in any::<bool>(),
-    ) {
-        let name = TableName::ALL[table].name();
-        let text = sound(&format!("{name}.csv"));
-        let mut bytes = if headed { text.lines().next().unwrap().as_bytes().to_vec() } else { Vec::new() };
-        bytes.push(b'\n');
-        bytes.extend(data);
-        let dir = folder(&[(&format!("{name}.csv"), &bytes)]);
-        if let Ok(set) = ResultSet::open(dir.path(), "r", &Reading::default()) {
-            let _ = sanity::check_mesh(&set);
-            if let Some(points) = set.points() {
-                let _ = points.for_each_block(2, &mut |_| Ok(()));
-            }
-        }
-    }
+#[test]
+fn a_load_history_of_totals_beside_final_fields_is_a_caution() {
+    let files = [
+        ("nodes.csv", "node,X,Y\n1,0,0\n"),
+        (
+            "totals.csv",
+            "quantity,value,step\nload_factor,0.5,1\nload_factor,1,2\n",
+        ),
+    ];
+    let set = open(&files, &Reading::default()).unwrap();
+    assert_eq!(
+        (set.remarks()[0].rule.as_str(), set.remarks()[0].weight),
+        ("ambiguous-step", Weight::Caution)
+    );
+    assert_eq!(set.totals().unwrap().get("load_factor").unwrap().value, 1.0);
+    let earlier = Reading {
+        step: Some(1),
+        ..Reading::default()
+    };
+    assert_eq!(
+        open(&files, &earlier).unwrap_err()[0].rule,
+        "ambiguous-step"
+    );
 }

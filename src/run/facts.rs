@@ -21,11 +21,19 @@ pub fn facts(case: &CasePlan) -> Vec<Fact> {
     facts.push(fact("Body", body(case)));
     facts.push(fact("Load", load(case)));
     facts.push(fact("Ends", ends(case)));
-    facts.push(fact(
-        "Exact",
-        format!("{}: {}", case.problem, case.exact.method()),
-    ));
+    facts.push(fact("Exact", exact(case)));
     facts
+}
+
+/// The solution and the digits it vouches for.
+fn exact(case: &CasePlan) -> String {
+    let bound = case.exact.bound();
+    let worst = bound.displacement.max(bound.stress).max(bound.totals);
+    let digits = (-worst.log10()).floor().clamp(0.0, 15.0);
+    format!(
+        "{}, good for {digits} digits by its own bound",
+        case.problem
+    )
 }
 
 /// Law and constants, with their units.

@@ -221,16 +221,23 @@ fn judge_points(
     let Some(source) = set.points() else {
         return Ok(None);
     };
-    if let Some(coverage) = sanity::check_points(set)? {
-        findings.extend(coverage.remarks);
-    }
     let watched = match (set.nodes(), set.elements(), report) {
         (Some(nodes), Some(elements), Some(report)) => {
             level::watched(Mesh { nodes, elements }, report, case.exact.as_ref())
         }
         _ => Vec::new(),
     };
-    point_norms(source, case.exact.as_ref(), &watched).map(Some)
+    let mut cover = sanity::CoverCheck::new(set);
+    let (norms, pass) = point_norms(source, case.exact.as_ref(), &watched, &mut |block| {
+        if let Some(cover) = &mut cover {
+            cover.visit(block);
+        }
+    })?;
+    match cover {
+        Some(cover) => findings.extend(cover.finish(pass)?.remarks),
+        None => findings.extend(pass.remarks),
+    }
+    Ok(Some(norms))
 }
 
 /// The mesh is of the declared element, or the orders expected of it mean nothing.

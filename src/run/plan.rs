@@ -426,6 +426,7 @@ fn own_folder(entry: &CaseEntry, other: &str, id: &str, folder: &str, reader: &m
     );
 }
 
+/// What was chosen comes first: it tells the cases of a family apart.
 fn title(entry: &CaseEntry, id: &str, problem: &Combination, element: &[String]) -> String {
     match &entry.title {
         None => id.to_string(),
@@ -434,7 +435,7 @@ fn title(entry: &CaseEntry, id: &str, problem: &Combination, element: &[String])
             if labels.is_empty() {
                 title.clone()
             } else {
-                format!("{title}: {}", labels.join(", "))
+                format!("{}: {title}", labels.join(", "))
             }
         }
     }

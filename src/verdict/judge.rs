@@ -149,13 +149,31 @@ fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String 
         Bound::AtLeast => "at least",
         Bound::AtMost | Bound::Within => "at most",
     };
-    let said = format!(
-        "{value:.3e} where {bound} {} is asked",
-        criterion.limit_text
-    );
+    let value = in_words(value, criterion);
+    let said = format!("{value} where {bound} {} is asked", criterion.limit_text);
     match verdict {
         Verdict::Inconclusive => format!("{said}: closer than the exact solution is known"),
         _ => said,
+    }
+}
+
+/// In percent where the limit is, else with its unit; three digits.
+fn in_words(value: f64, criterion: &Criterion) -> String {
+    let plain = |v: f64| match v.abs() {
+        0.0 => "0".to_string(),
+        size if (1e-3..1e4).contains(&size) => {
+            // three significant digits: the decimals are what is left of them behind the point
+            let decimals = 2 - size.log10().floor() as i32;
+            format!("{v:.*}", decimals.clamp(0, 5) as usize)
+        }
+        _ => format!("{v:.2e}"),
+    };
+    if criterion.limit_text.ends_with('%') {
+        return format!("{} %", plain(100.0 * value));
+    }
+    match criterion.unit.as_str() {
+        "1" => plain(value),
+        unit => format!("{} {unit}", plain(value)),
     }
 }
 

@@ -55,6 +55,9 @@ const FARTHEST: f64 = 50.0;
 /// Beyond this g the axial equation takes the form whose terms do not grow with the bore.
 const WIDE: f64 = 1.5;
 
+/// Most stations of a march, so that it always ends; 40 to 80 are usual.
+const MOST_STATIONS: usize = 500;
+
 /// The path at given axial condition.
 pub(super) struct Path<'a> {
     pub wall: &'a Wall,
@@ -140,7 +143,9 @@ impl Path<'_> {
             return self.station(0.0, e).ok_or_else(lost);
         };
         let (mut e, mut done, mut step) = (0.0_f64, 0.0_f64, 1.0_f64);
+        let mut tries = 0;
         while done < 1.0 {
+            tries += 1;
             let share = (done + step).min(1.0);
             let part = Path {
                 wall: self.wall,
@@ -155,7 +160,7 @@ impl Path<'_> {
                 }
                 _ => step *= 0.5,
             }
-            if step < 1e-7 {
+            if step < 1e-7 || tries > MOST_STATIONS {
                 let mut refusal = lost();
                 refusal.message += &format!("; the limit is about {:.5} of the given load", done);
                 return Err(refusal);
@@ -178,6 +183,9 @@ impl Path<'_> {
         loop {
             if stop(&here) {
                 return (trail, None);
+            }
+            if trail.len() > MOST_STATIONS {
+                return (trail, Some(End::Lost(here)));
             }
             if here.g.abs() >= FARTHEST {
                 let end = if saturated(&trail, &here) {

@@ -1,41 +1,20 @@
 //! Error against element size, both logarithmic: marks and lines per quantity, the band of the fitted line,
 //! the limit at the level it is judged at, and a fan of the expected slopes.
 
+use super::curves::{Curve, curves, height_at};
 use super::scale::{Log, spread};
-use super::svg::{Anchor, BLUE, BROWN, Canvas, GRID, HAIR, INK, INK2, INK3, Shape};
+use super::slope_fan;
+use super::svg::{Anchor, Canvas, GRID, HAIR, INK, INK2, INK3};
 use crate::report::numbers::{Number, THIN, grouped, with_uncertainty};
 use crate::report::text::{escape, shorten};
 use crate::report::wording::name;
 use crate::verdict::Verdict;
-use crate::verdict::outcome::{
-    Bound, CaseOutcome, CriterionOutcome, Judged, Kind, LevelOutcome, MeasureSeries, OrderFit,
-};
+use crate::verdict::outcome::{CaseOutcome, Judged, LevelOutcome, OrderFit};
 
-const LEFT: f64 = 44.0;
+pub const LEFT: f64 = 44.0;
 const RIGHT: f64 = 232.0;
 const TOP: f64 = 44.0;
-const BOTTOM: f64 = 264.0;
-/// Largest width and height of the slope fan.
-const FAN: (f64, f64) = (60.0, 46.0);
-
-/// Series drawn when they are there; judged ones are added up to four.
-const USUAL: [&str; 4] = [
-    "displacement-L2",
-    "stress-L2",
-    "strain-energy-error",
-    "pressure-L2",
-];
-
-/// One quantity: what is drawn of a series.
-struct Curve<'a> {
-    series: &'a MeasureSeries,
-    colour: &'static str,
-    shape: Shape,
-    /// (h, error), coarsest first; only what a logarithm can show.
-    points: Vec<(f64, f64)>,
-    /// (h, limit) of the error criterion on it.
-    limit: Option<(f64, f64)>,
-}
+pub const BOTTOM: f64 = 264.0;
 
 /// The panel, or nothing when no two levels of one quantity can be drawn.
 pub fn panel(case: &CaseOutcome, length_unit: &str) -> String {
@@ -88,83 +67,11 @@ fn title(case: &CaseOutcome) -> String {
     }
 }
 
-fn curves(case: &CaseOutcome) -> Vec<Curve<'_>> {
-    let looks = [
-        (BLUE, Shape::Circle),
-        (BROWN, Shape::Square),
-        (INK, Shape::Triangle),
-        (INK3, Shape::Lozenge),
-    ];
-    let judged = case
-        .criteria
-        .iter()
-        .filter(|c| c.judged != Judged::Value)
-        .map(|c| c.measure.as_str());
-    let mut out: Vec<Curve> = Vec::new();
-    for measure in USUAL.into_iter().chain(judged) {
-        let series = case
-            .measures
-            .iter()
-            .find(|s| s.kind == Kind::Relative && s.measure == measure);
-        let known = out.iter().any(|curve| curve.series.measure == measure);
-        if let Some(series) = series.filter(|_| !known)
-            && let Some(&(colour, shape)) = looks.get(out.len())
-        {
-            let points = points(case, series);
-            let limit = limit(case, series);
-            out.push(Curve {
-                series,
-                colour,
-                shape,
-                points,
-                limit,
-            });
-        }
-    }
-    // a curve without a single mark would be a label without a curve
-    out.retain(|curve| !curve.points.is_empty());
-    out
-}
-
-fn points(case: &CaseOutcome, series: &MeasureSeries) -> Vec<(f64, f64)> {
-    let pair = |value: &crate::verdict::outcome::LevelValue| {
-        let h = case
-            .levels
-            .iter()
-            .find(|level| level.level == value.level)?
-            .h?;
-        value.value.filter(|v| *v > 0.0 && h > 0.0).map(|v| (h, v))
-    };
-    series.values.iter().filter_map(pair).collect()
-}
-
-fn limit(case: &CaseOutcome, series: &MeasureSeries) -> Option<(f64, f64)> {
-    let judged = |c: &&CriterionOutcome| {
-        c.judged == Judged::Error
-            && c.bound == Bound::AtMost
-            && c.measure == series.measure
-            && c.limit > 0.0
-    };
-    let criterion = case.criteria.iter().find(judged)?;
-    let level = case
-        .levels
-        .iter()
-        .find(|level| Some(&level.level) == criterion.level.as_ref())?;
-    Some((level.h.filter(|h| *h > 0.0)?, criterion.limit))
-}
-
 /// The axes of one plot.
 struct Frame {
     x: Log,
     y: Log,
-    fan: Option<Fan>,
-}
-
-/// Where the slope fan goes: its corner, the length of its leg, and whether that leg is a whole halving.
-struct Fan {
-    corner: (f64, f64),
-    leg: f64,
-    whole: bool,
+    fan: Option<slope_fan::Fan>,
 }
 
 fn frame(curves: &[Curve]) -> Frame {
@@ -187,10 +94,10 @@ fn frame(curves: &[Curve]) -> Frame {
     let (mut low, high) = ((low - 0.1).floor().min(high - 0.9), high + 0.15);
     loop {
         let y = Log::new((low, high), (BOTTOM, TOP));
-        let fan = fan(curves, &x, &y);
+        let fan = slope_fan::place(curves, &x, &y);
         let free = fan
             .as_ref()
-            .is_none_or(|fan| corner_is_free(curves, fan, &x, &y));
+            .is_none_or(|fan| slope_fan::is_free(curves, fan, &x, &y));
         if free || high - low > 24.0 {
             return Frame { x, y, fan };
         }
@@ -198,55 +105,59 @@ fn frame(curves: &[Curve]) -> Frame {
     }
 }
 
-fn expected(curves: &[Curve]) -> Vec<(f64, &'static str)> {
-    let orders = curves
-        .iter()
-        .filter_map(|c| c.series.expected_order.map(|order| (order, c.colour)));
-    orders.filter(|(order, _)| *order > 0.0).collect()
+/// What the half width of the fitted line needs: scatter times t, mean and spread of ln h.
+struct Band {
+    fit: OrderFit,
+    scatter: f64,
+    mean: f64,
+    spread: f64,
+    count: f64,
 }
 
-fn fan(curves: &[Curve], x: &Log, y: &Log) -> Option<Fan> {
-    let steepest = expected(curves)
-        .iter()
-        .map(|(order, _)| *order)
-        .fold(0.0, f64::max);
-    if steepest == 0.0 {
+/// The confidence band of a least-squares line: t s sqrt(1/n + (x - mean)^2 / Sxx), with s and t recovered from
+/// the standard error of the slope (s / sqrt(Sxx)) and its half width (t times it).
+fn band_of(curve: &Curve) -> Option<Band> {
+    let fit = curve.series.fit?;
+    let half_width = fit.half_width?;
+    fit.standard_error?;
+    let logs: Vec<f64> = curve.points.iter().map(|p| p.0.ln()).collect();
+    if logs.len() != fit.levels as usize || logs.len() < 3 {
         return None;
     }
-    let halving = x.px(0.5) - x.px(1.0);
-    let drop = steepest * (y.px(0.5) - y.px(1.0));
-    let share = (FAN.0 / halving).min(FAN.1 / drop).min(1.0);
-    Some(Fan {
-        corner: (LEFT + 14.0, BOTTOM - 14.0 - share * drop),
-        leg: share * halving,
-        whole: share == 1.0,
+    let count = logs.len() as f64;
+    let mean = logs.iter().sum::<f64>() / count;
+    let spread = logs.iter().map(|x| (x - mean).powi(2)).sum::<f64>();
+    Some(Band {
+        fit,
+        scatter: half_width * spread.sqrt(),
+        mean,
+        spread,
+        count,
     })
 }
 
-fn corner_is_free(curves: &[Curve], fan: &Fan, x: &Log, y: &Log) -> bool {
-    let ends = (fan.corner.0 - 12.0, fan.corner.0 + fan.leg + 40.0);
-    let roof = fan.corner.1 - 18.0;
-    let below = |curve: &Curve| {
-        let pixels: Vec<_> = curve
-            .points
-            .iter()
-            .map(|p| (x.px(p.0), y.px(p.1)))
-            .collect();
-        let line = (0..=12).map(|k| ends.0 + (ends.1 - ends.0) * f64::from(k) / 12.0);
-        line.filter_map(|px| height_at(&pixels, px))
-            .any(|py| py > roof)
-            || pixels.iter().any(|p| p.0 < ends.1 && p.1 > roof)
+fn band_outline(frame: &Frame, curve: &Curve, band: Band) -> Vec<(f64, f64)> {
+    let (first, last) = match (curve.points.first(), curve.points.last()) {
+        (Some(first), Some(last)) => (first.0.ln(), last.0.ln()),
+        _ => return Vec::new(),
     };
-    !curves.iter().any(below)
-}
-
-/// Height of a polyline at `px`, if it goes that far.
-fn height_at(pixels: &[(f64, f64)], px: f64) -> Option<f64> {
-    let pair = pixels
-        .windows(2)
-        .find(|pair| (pair[0].0..=pair[1].0).contains(&px))?;
-    let share = (px - pair[0].0) / (pair[1].0 - pair[0].0);
-    Some(pair[0].1 + share * (pair[1].1 - pair[0].1))
+    let side = |sign: f64| {
+        let band = &band;
+        (0..=24).map(move |k| {
+            let x = first + (last - first) * f64::from(k) / 24.0;
+            let half =
+                band.scatter * (1.0 / band.count + (x - band.mean).powi(2) / band.spread).sqrt();
+            let y = band.fit.log_constant + band.fit.order * x + sign * half;
+            let pixel = frame
+                .y
+                .px_log(y / std::f64::consts::LN_10)
+                .clamp(TOP, BOTTOM);
+            (frame.x.px(x.exp()), pixel)
+        })
+    };
+    let mut lower: Vec<_> = side(-1.0).collect();
+    lower.reverse();
+    side(1.0).chain(lower).collect()
 }
 
 fn draw(case: &CaseOutcome, curves: &[Curve], length_unit: &str) -> String {
@@ -256,7 +167,8 @@ fn draw(case: &CaseOutcome, curves: &[Curve], length_unit: &str) -> String {
     size_axis(&mut canvas, &frame, &case.levels, curves, length_unit);
     for curve in curves {
         if let Some(band) = band_of(curve) {
-            canvas.band(&band_outline(&frame, curve, band), curve.colour);
+            let opacity = if curves.len() > 3 { 0.08 } else { 0.13 };
+            canvas.band(&band_outline(&frame, curve, band), curve.colour, opacity);
         }
         let pixels: Vec<_> = pixels(&frame, curve);
         canvas.polyline(&pixels, curve.colour, 1.4);
@@ -267,7 +179,9 @@ fn draw(case: &CaseOutcome, curves: &[Curve], length_unit: &str) -> String {
         }
     }
     limits(&mut canvas, &frame, curves);
-    draw_fan(&mut canvas, &frame, curves);
+    if let Some(fan) = &frame.fan {
+        slope_fan::draw(&mut canvas, fan, curves, &frame.x, &frame.y);
+    }
     labels(&mut canvas, &frame, curves);
     canvas.figure("plot", 336, 304, &spoken(curves))
 }
@@ -371,61 +285,6 @@ fn size_axis(
     );
 }
 
-/// What the half width of the fitted line needs: scatter times t, mean and spread of ln h.
-struct Band {
-    fit: OrderFit,
-    scatter: f64,
-    mean: f64,
-    spread: f64,
-    count: f64,
-}
-
-/// The confidence band of a least-squares line: t s sqrt(1/n + (x - mean)^2 / Sxx), with s and t recovered from
-/// the standard error of the slope (s / sqrt(Sxx)) and its half width (t times it).
-fn band_of(curve: &Curve) -> Option<Band> {
-    let fit = curve.series.fit?;
-    let half_width = fit.half_width?;
-    fit.standard_error?;
-    let logs: Vec<f64> = curve.points.iter().map(|p| p.0.ln()).collect();
-    if logs.len() != fit.levels as usize || logs.len() < 3 {
-        return None;
-    }
-    let count = logs.len() as f64;
-    let mean = logs.iter().sum::<f64>() / count;
-    let spread = logs.iter().map(|x| (x - mean).powi(2)).sum::<f64>();
-    Some(Band {
-        fit,
-        scatter: half_width * spread.sqrt(),
-        mean,
-        spread,
-        count,
-    })
-}
-
-fn band_outline(frame: &Frame, curve: &Curve, band: Band) -> Vec<(f64, f64)> {
-    let (first, last) = match (curve.points.first(), curve.points.last()) {
-        (Some(first), Some(last)) => (first.0.ln(), last.0.ln()),
-        _ => return Vec::new(),
-    };
-    let side = |sign: f64| {
-        let band = &band;
-        (0..=24).map(move |k| {
-            let x = first + (last - first) * f64::from(k) / 24.0;
-            let half =
-                band.scatter * (1.0 / band.count + (x - band.mean).powi(2) / band.spread).sqrt();
-            let y = band.fit.log_constant + band.fit.order * x + sign * half;
-            let pixel = frame
-                .y
-                .px_log(y / std::f64::consts::LN_10)
-                .clamp(TOP, BOTTOM);
-            (frame.x.px(x.exp()), pixel)
-        })
-    };
-    let mut lower: Vec<_> = side(-1.0).collect();
-    lower.reverse();
-    side(1.0).chain(lower).collect()
-}
-
 /// A bracket at each limit; the word where no curve crosses it.
 fn limits(canvas: &mut Canvas, frame: &Frame, curves: &[Curve]) {
     let lines: Vec<_> = curves.iter().map(|curve| pixels(frame, curve)).collect();
@@ -464,57 +323,6 @@ fn limits(canvas: &mut Canvas, frame: &Frame, curves: &[Curve]) {
     }
 }
 
-fn draw_fan(canvas: &mut Canvas, frame: &Frame, curves: &[Curve]) {
-    let Some(fan) = &frame.fan else { return };
-    let mut rays: Vec<(f64, &str)> = Vec::new();
-    for (order, colour) in expected(curves) {
-        match rays.iter_mut().find(|ray| ray.0 == order) {
-            // several quantities with the same slope: one ray in ink
-            Some(ray) => ray.1 = INK2,
-            None => rays.push((order, colour)),
-        }
-    }
-    let slope = (frame.y.px(0.5) - frame.y.px(1.0)) / (frame.x.px(0.5) - frame.x.px(1.0));
-    let (x0, y0) = fan.corner;
-    let x1 = x0 + fan.leg;
-    let ends: Vec<f64> = rays
-        .iter()
-        .map(|ray| y0 + ray.0 * slope * fan.leg)
-        .collect();
-    let heights = spread(&ends, 11.5, (y0, BOTTOM - 6.0));
-    for ((order, colour), (end, height)) in rays.iter().zip(ends.iter().zip(&heights)) {
-        canvas.line((x0, y0), (x1, *end), colour, 1.2);
-        canvas.line((x1, *end), (x1 + 5.0, *height), colour, 0.6);
-        let factor = 2f64.powf(*order);
-        let whole = (factor - factor.round()).abs() < 1e-9;
-        let factor = if whole {
-            Number::fixed(factor, 0)
-        } else {
-            Number::ratio(factor)
-        };
-        canvas.markup(
-            (x1 + 7.0, height + 4.0),
-            10.5,
-            colour,
-            Anchor::Start,
-            &format!("÷{THIN}{}", factor.svg()),
-        );
-    }
-    let lowest = ends.iter().copied().fold(y0, f64::max);
-    canvas.polyline(&[(x0, y0), (x1, y0), (x1, lowest)], INK2, 0.75);
-    let (word, anchor, x) = match fan.whole {
-        true => ("h ÷ 2", Anchor::Middle, (x0 + x1) / 2.0),
-        false => ("per h ÷ 2", Anchor::Start, x0),
-    };
-    canvas.text(
-        (x, y0 - 4.0),
-        10.5,
-        INK2,
-        anchor,
-        &word.replace(" ÷ ", &format!("{THIN}÷{THIN}")),
-    );
-}
-
 /// Names at the right ends of the curves instead of a legend, with the fitted order.
 fn labels(canvas: &mut Canvas, frame: &Frame, curves: &[Curve]) {
     let ends: Vec<(f64, f64)> = curves
@@ -522,7 +330,7 @@ fn labels(canvas: &mut Canvas, frame: &Frame, curves: &[Curve]) {
         .filter_map(|curve| pixels(frame, curve).last().copied())
         .collect();
     let wanted: Vec<f64> = ends.iter().map(|end| end.1).collect();
-    let heights = spread(&wanted, 31.0, (TOP + 6.0, BOTTOM - 14.0));
+    let heights = spread(&wanted, 31.0, (TOP + 10.0, BOTTOM - 14.0));
     for (curve, (end, height)) in curves.iter().zip(ends.iter().zip(&heights)) {
         let start = (end.0 + 6.0, end.1);
         if (height - end.1).abs() > 2.0 {

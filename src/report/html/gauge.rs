@@ -66,7 +66,7 @@ pub fn track(
     height: u32,
 ) -> String {
     let y = f64::from(height) / 2.0;
-    let mut out = open(height);
+    let mut out = open(height, "track");
     if let Some(first) = counted
         && let Some(ratio) = first.ratio
     {
@@ -109,14 +109,14 @@ pub fn empty(reason: &str, height: u32) -> String {
     format!(
         "{}<text x=\"6\" y=\"{y}\" font-size=\"12\" fill=\"#4A5260\" paint-order=\"stroke\" stroke=\"#fff\" \
          stroke-width=\"6\">{}</text></svg>",
-        open(height),
+        open(height, "track none"),
         escape(&shorten(&format!("no number: {reason}"), 50))
     )
 }
 
-fn open(height: u32) -> String {
+fn open(height: u32, class: &str) -> String {
     format!(
-        "<svg class=\"track\" width=\"100%\" height=\"{height}\" aria-hidden=\"true\">\
+        "<svg class=\"{class}\" width=\"100%\" height=\"{height}\" aria-hidden=\"true\">\
          <use href=\"#gauge\" width=\"100%\" height=\"{height}\"/>"
     )
 }

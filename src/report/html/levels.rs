@@ -6,29 +6,66 @@ use crate::verdict::outcome::{CaseOutcome, Kind, LevelOutcome, LevelValue, Measu
 
 /// All tables of a case; what does not exist is left out.
 pub fn tables(case: &CaseOutcome, length_unit: &str) -> String {
-    errors(case) + &values(case) + &reasons(case) + &meshes(&case.levels, length_unit)
+    let (first, more): (Vec<&MeasureSeries>, Vec<&MeasureSeries>) = case
+        .measures
+        .iter()
+        .partition(|series| comes_first(case, series));
+    let mut out = errors(
+        case,
+        &first,
+        "Errors by level; the small figure in front of a value is the order from the level before",
+    );
+    out += &meshes(&case.levels, length_unit);
+    out += &reasons(&first);
+    if more
+        .iter()
+        .any(|series| series.values.iter().any(|v| v.value.is_some()))
+    {
+        out += &format!(
+            "<details class=\"more-measures\"><summary>{} more series: absolute errors, values, stresses at places \
+             (all of them also stand in measures.csv)</summary>\n",
+            more.len()
+        );
+        out += &errors(case, &more, "More errors by level");
+        out += &values(case, &more);
+        out += &reasons(&more);
+        out += "</details>\n";
+    }
+    out
 }
 
-fn of_kind(case: &CaseOutcome, kind: Kind) -> impl Iterator<Item = &MeasureSeries> {
-    case.measures
+/// What a criterion judges, and the relative norms and totals, stand in view; the rest can be unfolded.
+fn comes_first(case: &CaseOutcome, series: &MeasureSeries) -> bool {
+    let judged = case.criteria.iter().any(|c| c.measure == series.measure);
+    let place = ["inner-wall-s", "mid-wall-", "outer-wall-"]
         .iter()
+        .any(|start| series.measure.starts_with(start));
+    series.kind == Kind::Relative && (judged || !place)
+}
+
+fn of_kind<'a>(
+    all: &'a [&'a MeasureSeries],
+    kind: Kind,
+) -> impl Iterator<Item = &'a MeasureSeries> {
+    all.iter()
+        .copied()
         .filter(move |series| series.kind == kind)
 }
 
-fn errors(case: &CaseOutcome) -> String {
+fn errors(case: &CaseOutcome, all: &[&MeasureSeries], caption: &str) -> String {
     let groups: Vec<_> = [
         (Kind::Relative, "Relative errors"),
         (Kind::Absolute, "Absolute errors"),
     ]
     .into_iter()
-    .filter(|(kind, _)| of_kind(case, *kind).next().is_some())
+    .filter(|(kind, _)| of_kind(all, *kind).next().is_some())
     .collect();
     if groups.is_empty() {
         return String::new();
     }
     let mut out = open(
         case,
-        "Errors by level; the small figure in front of a value is the order from the level before",
+        caption,
         "<th scope=\"col\" class=\"r\">fitted order</th><th scope=\"col\" class=\"r\">expected</th>",
     );
     for (kind, title) in groups {
@@ -36,7 +73,7 @@ fn errors(case: &CaseOutcome) -> String {
         out += &format!(
             "<tbody><tr class=\"grp\"><th scope=\"rowgroup\" colspan=\"{columns}\">{title}</th></tr>\n"
         );
-        for series in of_kind(case, kind) {
+        for series in of_kind(all, kind) {
             let order = series
                 .expected_order
                 .map_or("—".to_string(), |order| Number::exact(order).html());
@@ -52,8 +89,8 @@ fn errors(case: &CaseOutcome) -> String {
     out + "</table></div>\n"
 }
 
-fn values(case: &CaseOutcome) -> String {
-    if of_kind(case, Kind::Value).next().is_none() {
+fn values(case: &CaseOutcome, all: &[&MeasureSeries]) -> String {
+    if of_kind(all, Kind::Value).next().is_none() {
         return String::new();
     }
     let mut out = open(
@@ -62,7 +99,7 @@ fn values(case: &CaseOutcome) -> String {
         "<th scope=\"col\" class=\"r\">exact</th>",
     );
     out += "<tbody>\n";
-    for series in of_kind(case, Kind::Value) {
+    for series in of_kind(all, Kind::Value) {
         let exact = series.values.iter().rev().find_map(|value| value.exact);
         let exact = exact.map_or("—".to_string(), |exact| {
             Number::significant(exact, 8).html()
@@ -82,10 +119,13 @@ fn open(case: &CaseOutcome, caption: &str, last: &str) -> String {
         let h = level.h.map_or(String::new(), |h| {
             format!("h{NBSP}{} · ", Number::three(h).html())
         });
+        let mesh = match level.missing {
+            Some(_) => "not read".to_string(),
+            None => format!("{h}{}{NBSP}el.", grouped(level.elements)),
+        };
         format!(
-            "<th scope=\"col\" class=\"r\">level {}<br/><small>{h}{}{NBSP}el.</small></th>",
-            escape(&level.level),
-            grouped(level.elements)
+            "<th scope=\"col\" class=\"r\">level {}<br/><small>{mesh}</small></th>",
+            escape(&level.level)
         )
     };
     let columns: String = case.levels.iter().map(level).collect();
@@ -170,9 +210,9 @@ fn fitted(series: &MeasureSeries) -> String {
 }
 
 /// Why there is no number where there is none, and where the finest number was found.
-fn reasons(case: &CaseOutcome) -> String {
+fn reasons(all: &[&MeasureSeries]) -> String {
     let mut out = String::new();
-    for series in &case.measures {
+    for series in all {
         let title = escape(&series.title);
         for value in series.values.iter().filter(|value| value.value.is_none()) {
             let reason = sentence(value.reason.as_deref().unwrap_or("no reason given"));
@@ -182,12 +222,9 @@ fn reasons(case: &CaseOutcome) -> String {
                 escape(&reason)
             );
         }
-        if let Some((level, place)) = series
-            .values
-            .iter()
-            .rev()
-            .find_map(|value| value.place.as_ref().map(|place| (&value.level, place)))
-        {
+        let found = |value: &&LevelValue| value.value.is_some() && value.place.is_some();
+        let finest = series.values.iter().rev().find(found);
+        if let Some((level, place)) = finest.and_then(|v| Some((&v.level, v.place.as_ref()?))) {
             out += &format!(
                 "<li>{title}, level {}: at {}.</li>\n",
                 escape(level),

@@ -8,6 +8,7 @@ use crate::report::text::escape;
 use crate::report::wording::{self, HTML};
 use crate::verdict::Verdict;
 use crate::verdict::outcome::{CaseOutcome, CriterionOutcome, Outcome};
+use std::collections::BTreeMap;
 
 /// From this many cases on, the passing ones can be hidden on screen.
 const MANY: usize = 12;
@@ -34,29 +35,38 @@ pub fn section(number: usize, outcome: &Outcome) -> String {
     out += &gauge::head_cell();
     out += "<th scope=\"col\" class=\"t\">Tightest criterion</th><th scope=\"col\" class=\"r g\">Value is limit</th>\
             </tr></thead><tbody>\n";
+    let mut titles = BTreeMap::new();
+    for case in &outcome.cases {
+        *titles.entry(case.title.as_str()).or_insert(0) += 1;
+    }
     for (k, case) in outcome.cases.iter().enumerate() {
-        out += &row(k + 1, case);
+        let unique = titles.get(case.title.as_str()) == Some(&1);
+        out += &row(k + 1, case, unique);
     }
     out + "</tbody></table></section>\n"
 }
 
-fn row(number: usize, case: &CaseOutcome) -> String {
+/// A case is named by its title, or by its id where several cases share a title.
+fn row(number: usize, case: &CaseOutcome, unique: bool) -> String {
+    let name = match unique {
+        true => escape(&case.title),
+        false => format!("<code>{}</code>", escape(&case.id)),
+    };
     let tightest = tightest(case);
     let criteria: Vec<&CriterionOutcome> = case.criteria.iter().collect();
     let gauge = match tightest {
         Some(first) if case.criteria.iter().any(|c| c.ratio.is_some()) => {
-            gauge::track(&criteria, Some(first), 34)
+            gauge::track(&criteria, Some(first), 38)
         }
-        Some(first) => gauge::empty(case.reason.as_ref().unwrap_or(&first.reason), 34),
-        None => gauge::empty(case.reason.as_deref().unwrap_or("no criteria"), 34),
+        Some(first) => gauge::empty(case.reason.as_ref().unwrap_or(&first.reason), 38),
+        None => gauge::empty(case.reason.as_deref().unwrap_or("no criteria"), 38),
     };
     format!(
         "<tr class=\"w{}\"><td class=\"v\">{}</td><td class=\"c\">{number}</td>\
-         <th scope=\"row\"><a href=\"#c{number}\">{}</a></th><td class=\"tr\">{gauge}</td><td class=\"t\">{}</td>\
+         <th scope=\"row\"><a href=\"#c{number}\">{name}</a></th><td class=\"tr\">{gauge}</td><td class=\"t\">{}</td>\
          <td class=\"r g\">{}</td></tr>\n",
         letter(case.verdict),
         lane_and_word(case.verdict),
-        escape(&case.title),
         tightest.map_or("none judged".to_string(), |c| escape(&wording::name(c))),
         tightest.map_or("—".to_string(), |c| Margin::of(c).cell(Number::html))
     )

@@ -6,6 +6,7 @@
 mod answer;
 mod case;
 mod convergence_plot;
+mod curves;
 mod gauge;
 mod levels;
 mod margin;
@@ -13,6 +14,7 @@ mod marks;
 mod profile_plot;
 mod scale;
 mod sketch;
+mod slope_fan;
 mod sources;
 mod stave;
 mod svg;

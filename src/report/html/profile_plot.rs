@@ -26,7 +26,7 @@ pub fn panel(profile: &Profile) -> String {
             " Largest difference {}{NBSP}{unit}, {}, at R{NBSP}{}{NBSP}{}.",
             Number::three(difference.abs()).html(),
             escape(name),
-            Number::significant(radius, 4).html(),
+            radius_text(profile, radius),
             escape(&profile.length_unit)
         ),
         None => String::new(),
@@ -44,6 +44,13 @@ pub fn panel(profile: &Profile) -> String {
         draw(profile, every),
         escape(&profile.level)
     )
+}
+
+/// As many digits as the wall needs: three of its thickness at least.
+fn radius_text(profile: &Profile, radius: f64) -> String {
+    let slenderness = profile.outer_radius / (profile.outer_radius - profile.inner_radius);
+    let digits = 3.0 + slenderness.abs().log10().ceil();
+    Number::significant(radius, digits.clamp(4.0, 12.0) as usize).html()
 }
 
 fn title(profile: &Profile, largest: Option<(&str, f64, f64)>) -> String {
@@ -157,7 +164,7 @@ fn axis_unit(unit: &str, power: i32) -> String {
 }
 
 fn value_axis(canvas: &mut Canvas, y: &Linear, ticks: &Ticks, power: i32) {
-    let decimals = (ticks.decimals as i32 + power).max(0) as usize;
+    let decimals = ticks.decimals(power);
     for value in &ticks.major {
         let height = y.px(*value);
         let zero =
@@ -295,10 +302,11 @@ fn wall(canvas: &mut Canvas, profile: &Profile, x: &Linear) {
         "wall, elements",
     );
     let ticks = x.ticks(4);
+    let decimals = ticks.decimals(0);
     let widest = ticks
         .major
         .iter()
-        .map(|v| format!("{v:.*}", ticks.decimals).len())
+        .map(|v| format!("{v:.*}", decimals).len())
         .max()
         .unwrap_or(0);
     let values = match widest {
@@ -309,10 +317,9 @@ fn wall(canvas: &mut Canvas, profile: &Profile, x: &Linear) {
     for value in values {
         let place = x.px(value);
         canvas.line((place, WALL.1), (place, WALL.1 + 5.0), INK, 0.75);
-        let label = if widest > 6 {
-            Number::significant(value, 7)
-        } else {
-            Number::fixed(value, ticks.decimals)
+        let label = match widest > 6 {
+            true => end_label(value),
+            false => Number::fixed(value, decimals),
         };
         canvas.markup(
             (place, WALL.1 + 17.0),
@@ -332,6 +339,15 @@ fn wall(canvas: &mut Canvas, profile: &Profile, x: &Linear) {
         Anchor::Middle,
         &name,
     );
+}
+
+/// A radius as it was given, unless that is too long for its place.
+fn end_label(radius: f64) -> Number {
+    let exact = Number::exact(radius);
+    match exact.ascii().len() {
+        0..=8 => exact,
+        _ => Number::significant(radius, 7),
+    }
 }
 
 fn spoken(profile: &Profile) -> String {

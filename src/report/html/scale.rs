@@ -12,17 +12,20 @@ pub struct Linear {
 impl Linear {
     /// `low` is drawn at pixel `start`, `high` at `end`. Equal or unusable ends are moved apart.
     pub fn new((low, high): (f64, f64), (start, end): (f64, f64)) -> Self {
-        let usable = low.is_finite() && high.is_finite() && high > low;
-        let middle = if low.is_finite() { low } else { 0.0 };
-        let half = if middle == 0.0 {
-            1.0
-        } else {
-            0.5 * middle.abs()
+        // far from the ends of the doubles, so that no difference overflows or vanishes
+        let tame = |v: f64| {
+            if v.is_finite() {
+                v.clamp(-1e300, 1e300)
+            } else {
+                0.0
+            }
         };
-        let (low, high) = if usable {
-            (low, high)
-        } else {
-            (middle - half, middle + half)
+        let (low, high) = (tame(low), tame(high));
+        let least = (1e-12 * low.abs().max(high.abs())).max(1e-290);
+        let (low, high) = match high - low > least {
+            true => (low, high),
+            false if low.abs() < 1e-280 => (low - 1.0, low + 1.0),
+            false => (low - 0.5 * low.abs(), low + 0.5 * low.abs()),
         };
         Self {
             low,
@@ -36,7 +39,7 @@ impl Linear {
         self.start + (value - self.low) / (self.high - self.low) * (self.end - self.start)
     }
 
-    /// Round values, about `wanted` of them, with the decimals that tell them apart.
+    /// Round values, about `wanted` of them.
     pub fn ticks(&self, wanted: usize) -> Ticks {
         let raw = (self.high - self.low) / wanted.max(1) as f64;
         let power = 10f64.powf(raw.log10().floor());
@@ -45,11 +48,11 @@ impl Linear {
             .find(|m| m * power >= raw * 0.999)
             .unwrap_or(10.0)
             * power;
-        let decimals = (-(step * 1.0001).log10().floor()).clamp(0.0, 12.0) as usize;
+        let power = (step * 1.0001).log10().floor() as i32;
         Ticks {
             major: multiples(self.low, self.high, step),
             minor: multiples(self.low, self.high, step / 5.0),
-            decimals,
+            power,
         }
     }
 }
@@ -60,7 +63,15 @@ pub struct Ticks {
     pub major: Vec<f64>,
     /// Fifths, the major ones included.
     pub minor: Vec<f64>,
-    pub decimals: usize,
+    /// Power of ten of the step.
+    power: i32,
+}
+
+impl Ticks {
+    /// Decimals that tell the major ticks apart when they are written in units of `10^unit`.
+    pub fn decimals(&self, unit: i32) -> usize {
+        (unit - self.power).clamp(0, 12) as usize
+    }
 }
 
 fn multiples(low: f64, high: f64, step: f64) -> Vec<f64> {
@@ -140,7 +151,7 @@ pub fn spread(wanted: &[f64], gap: f64, (top, bottom): (f64, f64)) -> Vec<f64> {
         .flat_map(|&(sum, n)| std::iter::repeat_n(sum / n as f64, n));
     let mut heights = vec![0.0; wanted.len()];
     for (k, (index, mean)) in order.into_iter().zip(means).enumerate() {
-        heights[index] = mean.clamp(top, (bottom - last).max(top)) + k as f64 * gap;
+        heights[index] = mean.min(bottom - last).max(top) + k as f64 * gap;
     }
     heights
 }
@@ -155,7 +166,7 @@ mod tests {
         let texts: Vec<_> = ticks
             .major
             .iter()
-            .map(|t| format!("{t:.*}", ticks.decimals))
+            .map(|t| format!("{t:.*}", ticks.decimals(0)))
             .collect();
         assert_eq!(texts, ["-0.05", "0.00", "0.05", "0.10", "0.15"]);
     }

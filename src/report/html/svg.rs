@@ -33,8 +33,13 @@ pub struct Canvas {
     body: String,
 }
 
-/// A coordinate: one decimal, never "-0.0".
+/// A coordinate: one decimal, never "-0.0", never so far off that a viewer chokes on it.
 pub fn at(value: f64) -> String {
+    let value = if value.is_nan() {
+        0.0
+    } else {
+        value.clamp(-9999.0, 9999.0)
+    };
     let text = format!("{value:.1}");
     if text == "-0.0" {
         "0.0".to_string()
@@ -75,12 +80,11 @@ impl Canvas {
         }
     }
 
-    /// A tinted area: the quantity's colour at 13 %.
-    pub fn band(&mut self, points: &[(f64, f64)], fill: &str) {
-        self.body += &format!(
-            "<polygon points=\"{}\" fill=\"{fill}\" fill-opacity=\".13\"/>",
-            join(points)
-        );
+    /// A tinted area.
+    pub fn band(&mut self, points: &[(f64, f64)], fill: &str, opacity: f64) {
+        let points = join(points);
+        self.body +=
+            &format!("<polygon points=\"{points}\" fill=\"{fill}\" fill-opacity=\"{opacity}\"/>");
     }
 
     /// Text is foreign unless it comes from `numbers`: it is escaped here.
