@@ -720,19 +720,74 @@ fn arguments_of_check_that_cannot_be_meant() {
     assert_eq!(fs::read(dir.path().join("a-file")).unwrap(), b"kept");
 }
 
+/// What would run out of memory, or lose what it prints, says so.
+#[cfg(target_os = "linux")]
+#[test]
+fn devices_that_never_end_or_are_full() {
+    let dir = good();
+    let ended = truebore(dir.path(), &["check", "/dev/zero"]);
+    assert_eq!(ended.status, 2);
+    assert!(
+        ended.stderr.contains("larger than 64 MiB"),
+        "{}",
+        ended.stderr
+    );
+    let program = assert_cmd::cargo::cargo_bin("truebore");
+    for arguments in [
+        "exact suite.yaml --case c --totals",
+        "brief suite.yaml",
+        "catalogue",
+    ] {
+        let output = std::process::Command::new("sh")
+            .args([
+                "-c",
+                &format!("{} {arguments} > /dev/full", program.display()),
+            ])
+            .current_dir(dir.path())
+            .output()
+            .unwrap();
+        let said = String::from_utf8_lossy(&output.stderr);
+        assert_eq!(output.status.code(), Some(2), "{arguments}: {said}");
+        assert!(said.contains("the output cannot be written"), "{said}");
+    }
+}
+
+/// An empty table never replaces one that may hold results.
+#[test]
+fn headers_replace_no_results() {
+    let dir = good();
+    let headers = ["brief", "suite.yaml", "--headers", "h"];
+    assert_eq!(truebore(dir.path(), &headers).status, 0);
+    let nodes = dir.path().join("h/c/nodes.csv");
+    assert!(fs::read_to_string(&nodes).unwrap().starts_with("node,X,Y"));
+    fs::write(&nodes, "node,X,Y\n1,2,3\n").unwrap();
+    fs::remove_file(dir.path().join("h/c/points.csv")).unwrap();
+    let again = truebore(dir.path(), &headers);
+    assert_eq!(again.status, 2);
+    assert!(
+        again.stderr.contains("nodes.csv: there is such a file"),
+        "{}",
+        again.stderr
+    );
+    assert_eq!(fs::read_to_string(&nodes).unwrap(), "node,X,Y\n1,2,3\n");
+    assert!(!dir.path().join("h/c/points.csv").exists());
+}
+
 /// A report file that cannot be replaced: nothing of the folder changes, nothing is left beside it.
 #[test]
 fn a_report_is_written_whole_or_not_at_all() {
-    let dir = good();
-    let out = dir.path().join("out");
-    fs::create_dir_all(out.join("report.html/in-the-way")).unwrap();
-    fs::write(out.join("outcome.json"), EARLIER).unwrap();
-    let ended = truebore(dir.path(), &["check", "suite.yaml", "--out", "out"]);
-    assert_eq!(ended.status, 2, "{}", ended.stderr);
-    assert!(ended.stderr.contains("report.html"), "{}", ended.stderr);
-    let kept = fs::read_to_string(out.join("outcome.json")).unwrap();
-    assert_eq!(kept, EARLIER);
-    assert_eq!(fs::read_dir(&out).unwrap().count(), 2);
+    for name in ["report.html", "junit.xml", "measures.csv"] {
+        let dir = good();
+        let out = dir.path().join("out");
+        fs::create_dir_all(out.join(name).join("in-the-way")).unwrap();
+        fs::write(out.join("outcome.json"), EARLIER).unwrap();
+        let ended = truebore(dir.path(), &["check", "suite.yaml", "--out", "out"]);
+        assert_eq!((ended.status, ended.stdout.as_str()), (2, ""), "{name}");
+        assert!(ended.stderr.contains(name), "{}", ended.stderr);
+        let kept = fs::read_to_string(out.join("outcome.json")).unwrap();
+        assert_eq!(kept, EARLIER, "{name}");
+        assert_eq!(fs::read_dir(&out).unwrap().count(), 2, "{name}");
+    }
 }
 
 #[test]

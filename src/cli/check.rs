@@ -19,8 +19,14 @@ use std::path::{Path, PathBuf};
 /// # Errors
 /// Every problem found.
 pub fn plan_of(path: &Path) -> Result<Plan, Vec<Finding>> {
-    let text = files::read_text(path).map_err(|finding| vec![finding])?;
-    plan::read(&text, &path.display().to_string())
+    read(path).map(|(plan, _)| plan)
+}
+
+/// The plan, and the text it was made from.
+fn read(path: &Path) -> Result<(Plan, String), Vec<Finding>> {
+    let text = files::read_suite(path).map_err(|finding| vec![finding])?;
+    let plan = plan::read(&text, &path.display().to_string())?;
+    Ok((plan, text))
 }
 
 /// Findings that are printed; the rest are counted.
@@ -80,8 +86,8 @@ fn run_one(
     look: Look,
     written: &mut Vec<(PathBuf, String)>,
 ) -> Exit {
-    let plan = match plan_of(path) {
-        Ok(plan) => plan,
+    let (plan, text) = match read(path) {
+        Ok(read) => read,
         Err(findings) => return refuse(&findings),
     };
     if plan.cases.iter().all(|case| case.levels.is_empty()) {
@@ -102,13 +108,9 @@ fn run_one(
         ));
     }
     written.push((out.clone(), plan.file.clone()));
-    let bytes = match files::read_bytes(path) {
-        Ok(bytes) => bytes,
-        Err(finding) => return refuse(&[finding]),
-    };
     let folder = path.parent().map_or_else(PathBuf::new, Path::to_path_buf);
     let progress = Line { live: look.live };
-    let outcome = match check(&plan, &bytes, &folder, &progress) {
+    let outcome = match check(&plan, text.as_bytes(), &folder, &progress) {
         Ok(outcome) => outcome,
         Err(findings) => {
             progress.clear();
@@ -119,19 +121,17 @@ fn run_one(
     if let Err(finding) = files::write_together(&out, &reports(&outcome)) {
         return refuse(&[finding]);
     }
-    if options.json {
-        print(&report::json::json(&outcome));
+    let said = if options.json {
+        report::json::json(&outcome)
     } else {
-        print(&terminal::terminal(
-            &outcome,
-            terminal::Look {
-                colour: look.colour,
-                width: 80,
-            },
-        ));
-        print(&format!("reports in {}\n", out.display()));
-    }
-    exit_of(&outcome)
+        let look = terminal::Look {
+            colour: look.colour,
+            width: 80,
+        };
+        let table = terminal::terminal(&outcome, look);
+        format!("{table}reports in {}\n", out.display())
+    };
+    print(&said, exit_of(&outcome))
 }
 
 /// Every report that is a file, with its name.
