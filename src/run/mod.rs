@@ -11,6 +11,7 @@ pub mod plan;
 pub mod tables;
 
 mod criteria;
+mod folders;
 mod pairing;
 mod parameters;
 mod refusals;
