@@ -8,10 +8,7 @@ use crate::run::catalogue;
 /// `truebore catalogue [NAME]`.
 pub fn run(options: &args::Catalogue) -> Exit {
     match catalogue::text(options.name.as_deref()) {
-        Ok(text) => {
-            print(&text);
-            Exit::AllPass
-        }
+        Ok(text) => print(&text, Exit::AllPass),
         Err(message) => check::complain(&message),
     }
 }

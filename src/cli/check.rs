@@ -8,7 +8,7 @@ use super::look::Look;
 use crate::input::Finding;
 use crate::report::{self, Format, terminal};
 use crate::run::check::{Progress, check};
-use crate::run::plan::{Plan, plan};
+use crate::run::plan::{self, Plan};
 use crate::verdict::Verdict;
 use crate::verdict::outcome::Outcome;
 use std::io::Write;
@@ -19,16 +19,27 @@ use std::path::{Path, PathBuf};
 /// # Errors
 /// Every problem found.
 pub fn plan_of(path: &Path) -> Result<Plan, Vec<Finding>> {
-    let text = files::read_text(path).map_err(|finding| vec![finding])?;
-    let shown = path.display().to_string();
-    plan(crate::suite::read(&text, &shown)?, &shown)
+    read(path).map(|(plan, _)| plan)
 }
+
+/// The plan, and the text it was made from.
+fn read(path: &Path) -> Result<(Plan, String), Vec<Finding>> {
+    let text = files::read_suite(path).map_err(|finding| vec![finding])?;
+    let plan = plan::read(&text, &path.display().to_string())?;
+    Ok((plan, text))
+}
+
+/// Findings that are printed; the rest are counted.
+const SHOWN: usize = 50;
 
 /// Prints findings to stderr.
 pub fn refuse(findings: &[Finding]) -> Exit {
     let mut text = String::new();
-    for finding in findings {
+    for finding in findings.iter().take(SHOWN) {
         text.push_str(&format!("error: {finding}\n"));
+    }
+    if findings.len() > SHOWN {
+        text.push_str(&format!("and {} more\n", findings.len() - SHOWN));
     }
     if findings.len() > 1 {
         text.push_str(&format!(
@@ -60,16 +71,23 @@ pub fn run(options: &args::Check, look: Look) -> Exit {
             "--out names the folder of one suite, and there are several\n  hint: check them one by one",
         );
     }
+    let mut written = Vec::new();
     let exits = options
         .suites
         .iter()
-        .map(|suite| run_one(suite, options, look));
+        .map(|suite| run_one(suite, options, look, &mut written));
     exits.max().unwrap_or(Exit::CouldNotJudge)
 }
 
-fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
-    let plan = match plan_of(path) {
-        Ok(plan) => plan,
+/// `written` are the report folders of the suites before, with their suites.
+fn run_one(
+    path: &Path,
+    options: &args::Check,
+    look: Look,
+    written: &mut Vec<(PathBuf, String)>,
+) -> Exit {
+    let (plan, text) = match read(path) {
+        Ok(read) => read,
         Err(findings) => return refuse(&findings),
     };
     if plan.cases.iter().all(|case| case.levels.is_empty()) {
@@ -78,13 +96,21 @@ fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
             plan.file
         ));
     }
-    let bytes = match files::read_bytes(path) {
-        Ok(bytes) => bytes,
-        Err(finding) => return refuse(&[finding]),
-    };
+    let out = options
+        .out
+        .clone()
+        .unwrap_or_else(|| Path::new("reports").join(&plan.suite.id));
+    if let Some((_, first)) = written.iter().find(|(folder, _)| *folder == out) {
+        return complain(&format!(
+            "{}: its reports would replace those of {first} in {}\n  hint: name each suite once, and give each its own `suite:`",
+            plan.file,
+            out.display()
+        ));
+    }
+    written.push((out.clone(), plan.file.clone()));
     let folder = path.parent().map_or_else(PathBuf::new, Path::to_path_buf);
     let progress = Line { live: look.live };
-    let outcome = match check(&plan, &bytes, &folder, &progress) {
+    let outcome = match check(&plan, text.as_bytes(), &folder, &progress) {
         Ok(outcome) => outcome,
         Err(findings) => {
             progress.clear();
@@ -92,26 +118,20 @@ fn run_one(path: &Path, options: &args::Check, look: Look) -> Exit {
         }
     };
     progress.clear();
-    let out = options
-        .out
-        .clone()
-        .unwrap_or_else(|| Path::new("reports").join(&plan.suite.id));
     if let Err(finding) = files::write_together(&out, &reports(&outcome)) {
         return refuse(&[finding]);
     }
-    if options.json {
-        print(&report::json::json(&outcome));
+    let said = if options.json {
+        report::json::json(&outcome)
     } else {
-        print(&terminal::terminal(
-            &outcome,
-            terminal::Look {
-                colour: look.colour,
-                width: 80,
-            },
-        ));
-        print(&format!("reports in {}\n", out.display()));
-    }
-    exit_of(&outcome)
+        let look = terminal::Look {
+            colour: look.colour,
+            width: 80,
+        };
+        let table = terminal::terminal(&outcome, look);
+        format!("{table}reports in {}\n", out.display())
+    };
+    print(&said, exit_of(&outcome))
 }
 
 /// Every report that is a file, with its name.

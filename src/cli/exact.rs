@@ -8,11 +8,15 @@ use crate::run::{brief as briefs, tables};
 use crate::suite::nearest;
 use std::io::Write;
 
-/// Prints text to stdout; a closed pipe is no fault.
-pub fn print(text: &str) {
+/// Prints text to stdout and ends with `exit`. A closed pipe is no fault, a full disk is.
+pub fn print(text: &str, exit: Exit) -> Exit {
     let mut out = std::io::stdout().lock();
-    let _ = out.write_all(text.as_bytes());
-    let _ = out.flush();
+    match out.write_all(text.as_bytes()).and_then(|()| out.flush()) {
+        Err(e) if e.kind() != std::io::ErrorKind::BrokenPipe => {
+            check::complain(&format!("the output cannot be written: {e}"))
+        }
+        _ => exit,
+    }
 }
 
 /// `truebore exact`.
@@ -45,10 +49,10 @@ fn points(case: &CasePlan, path: &std::path::Path) -> Exit {
     match tables::at_points(case.exact.as_ref(), &bytes, &path.display().to_string()) {
         Ok(table) => {
             if table.outside > 0 {
-                eprintln!(
-                    "note: {} points lie outside the body, by {:.3e} {} at most; the formula is continued there",
+                check::eprint(&format!(
+                    "note: {} points lie outside the body, by {:.3e} {} at most; the formula is continued there\n",
                     table.outside, table.outside_distance, case.units.length.name
-                );
+                ));
             }
             done(&table.csv)
         }
@@ -57,8 +61,7 @@ fn points(case: &CasePlan, path: &std::path::Path) -> Exit {
 }
 
 fn done(text: &str) -> Exit {
-    print(text);
-    Exit::AllPass
+    print(text, Exit::AllPass)
 }
 
 /// The case of that id.
@@ -86,6 +89,16 @@ fn unknown_case(plan: &Plan, id: &str) -> String {
     message
 }
 
+/// Empty tables with the headers of a case.
+fn headers(case: &CasePlan) -> [(&'static str, String); 4] {
+    [
+        ("nodes.csv", briefs::nodes_header(case) + "\n"),
+        ("elements.csv", briefs::elements_header(case) + "\n"),
+        ("points.csv", briefs::points_header(case) + "\n"),
+        ("totals.csv", "quantity,value\n".to_string()),
+    ]
+}
+
 /// `truebore brief`.
 pub fn brief(options: &args::Brief) -> Exit {
     let plan = match check::plan_of(&options.suite) {
@@ -98,18 +111,23 @@ pub fn brief(options: &args::Brief) -> Exit {
         return check::complain(&message);
     }
     if let Some(folder) = &options.headers {
-        let cases = plan
-            .cases
-            .iter()
-            .filter(|case| options.case.as_ref().is_none_or(|id| case.id == *id));
-        for case in cases {
-            let texts = [
-                ("nodes.csv", briefs::nodes_header(case) + "\n"),
-                ("elements.csv", briefs::elements_header(case) + "\n"),
-                ("points.csv", briefs::points_header(case) + "\n"),
-                ("totals.csv", "quantity,value\n".to_string()),
-            ];
-            if let Err(finding) = files::write_together(&folder.join(&case.id), &texts) {
+        let cases = || {
+            let asked = |id: &str| options.case.as_ref().is_none_or(|only| id == only);
+            plan.cases.iter().filter(move |case| asked(&case.id))
+        };
+        // an empty table never replaces one that may hold results
+        for case in cases() {
+            let taken = |(name, _): &(&str, String)| folder.join(&case.id).join(name).exists();
+            if let Some((name, _)) = headers(case).iter().find(|file| taken(file)) {
+                let path = folder.join(&case.id).join(name);
+                return check::complain(&format!(
+                    "{}: there is such a file already, and nothing was written\n  hint: choose another folder with --headers",
+                    path.display()
+                ));
+            }
+        }
+        for case in cases() {
+            if let Err(finding) = files::write_together(&folder.join(&case.id), &headers(case)) {
                 return check::refuse(&[finding]);
             }
         }

@@ -2,15 +2,31 @@
 
 use crate::input::{Finding, Place};
 use std::fs;
-use std::io::Write;
+use std::io::{Read, Write};
 use std::path::{Path, PathBuf};
 
-/// Reads a text file.
+/// No suite is larger: 64 MiB.
+const LARGEST_SUITE: u64 = 64 << 20;
+
+/// Reads a suite.
 ///
 /// # Errors
 /// A finding naming the path.
-pub fn read_text(path: &Path) -> Result<String, Finding> {
-    let bytes = read_bytes(path)?;
+pub fn read_suite(path: &Path) -> Result<String, Finding> {
+    let place = || Place::file(path.display().to_string());
+    let mut bytes = Vec::new();
+    fs::File::open(path)
+        .and_then(|file| file.take(LARGEST_SUITE + 1).read_to_end(&mut bytes))
+        .map_err(|e| {
+            Finding::refused("cannot-read", place(), format!("cannot be read: {e}"))
+                .expected("a suite file, e.g. suite.yaml")
+        })?;
+    if bytes.len() as u64 > LARGEST_SUITE {
+        return Err(
+            Finding::refused("cannot-read", place(), "the file is larger than 64 MiB")
+                .expected("a suite file, e.g. suite.yaml"),
+        );
+    }
     String::from_utf8(bytes).map_err(|e| {
         let before = &e.as_bytes()[..e.utf8_error().valid_up_to()];
         let line = 1 + before.iter().filter(|b| **b == b'\n').count() as u64;
@@ -41,6 +57,13 @@ pub fn write_together(folder: &Path, files: &[(&str, String)]) -> Result<(), Fin
             .hint("choose another folder with --out")
     };
     fs::create_dir_all(folder).map_err(|e| failed(folder, "the folder cannot be made", e))?;
+    for (name, _) in files {
+        let place = folder.join(name);
+        if place.is_dir() {
+            let error = std::io::Error::from(std::io::ErrorKind::IsADirectory);
+            return Err(failed(&place, "cannot be replaced", error));
+        }
+    }
     let mut written: Vec<(PathBuf, PathBuf)> = Vec::new();
     let remove = |written: &[(PathBuf, PathBuf)]| {
         for (beside, _) in written {

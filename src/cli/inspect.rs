@@ -22,10 +22,10 @@ pub fn run(options: &args::Inspect) -> Exit {
         .parent()
         .map_or_else(PathBuf::new, Path::to_path_buf);
     let seen = inspect::inspect(&plan, options.case.as_deref(), &folder);
-    print(&seen.text);
-    if seen.refused {
+    let exit = if seen.refused {
         Exit::CouldNotJudge
     } else {
         Exit::AllPass
-    }
+    };
+    print(&seen.text, exit)
 }

@@ -103,6 +103,10 @@ fn resolve_one(
         return None;
     }
     let (kind, dimension) = what_is_compared(entry, measure);
+    if let Some((found, expected)) = cannot_be_compared(entry, measure, kind, element) {
+        refuse(&entry.limit, found, expected, reader);
+        return None;
+    }
     let limit = match entry.limit.value.within(dimension, units) {
         Ok(limit) => limit,
         Err(found) => {
@@ -124,6 +128,10 @@ fn resolve_one(
         .then(|| expected_order(measure, element, stated))
         .flatten();
     if entry.kind == LimitKind::Within && theory.is_none() {
+        if case.element.is_some() && element.is_none() {
+            // the element could not be read, which is said at its own place
+            return None;
+        }
         let found = format!("no order is known to expect of {}", measure.name);
         refuse(
             &entry.limit,
@@ -131,6 +139,17 @@ fn resolve_one(
             "`element:` or `expected-orders:` in the case, or `at-least:` here",
             reader,
         );
+        return None;
+    }
+    if let (LimitKind::Within, Some(theory)) = (entry.kind, theory)
+        && limit >= theory
+    {
+        let found = format!(
+            "within {} of the order {theory} is any order at all",
+            entry.limit.value.text
+        );
+        let expected = format!("less than {theory}, e.g. 0.2");
+        refuse(&entry.limit, found, &expected, reader);
         return None;
     }
     let unit = if kind == Kind::Relative {
@@ -156,6 +175,47 @@ fn resolve_one(
         by_fit: entry.by_fit,
         level: entry.level.as_ref().map(|l| l.value.clone()),
     })
+}
+
+/// An integral over the mesh, whose absolute value grows with the mesh.
+fn is_norm(measure: &Measure) -> bool {
+    measure.name.ends_with("-L2") || measure.name.ends_with("-H1")
+}
+
+/// Why a limit cannot be held against this measure, and what to write instead.
+fn cannot_be_compared(
+    entry: &CriterionEntry,
+    measure: &Measure,
+    kind: Kind,
+    element: Option<&Element>,
+) -> Option<(String, &'static str)> {
+    let text = &entry.limit.value.text;
+    if kind == Kind::Value && (is_norm(measure) || measure.name == "displacement-largest") {
+        let found = format!("{} is an error and has no value of its own", measure.name);
+        return Some((found, "`error:` instead of `value:`"));
+    }
+    if kind == Kind::Absolute && is_norm(measure) {
+        let found = format!(
+            "\"{text}\" has a unit, but {} is an integral over the mesh",
+            measure.name
+        );
+        return Some((
+            found,
+            "a pure number or a percentage, of the norm of the exact field",
+        ));
+    }
+    let solid = element.is_some_and(|e| e.displacement.dimension() == 3);
+    if measure.dimension == Dimension::Energy
+        && entry.limit.value.dimension() == Dimension::Energy
+        && !solid
+    {
+        let found = format!("\"{text}\": the energy of a slice is one per unit length");
+        return Some((
+            found,
+            "a pure number or a percentage; a unit of energy only with a solid `element:`",
+        ));
+    }
+    None
 }
 
 /// A bare number or a percentage limits a relative error; a limit with a unit the absolute one.

@@ -55,8 +55,11 @@ fn choices_of(item: &Node) -> Vec<Combination> {
         .collect()
 }
 
+/// The entries chosen so far, and their labels.
+type Partial = (Vec<(Key, Node)>, Vec<String>);
+
 fn product(node: &Node, entries: &[(Key, Node)]) -> Vec<Combination> {
-    let mut partial: Vec<(Vec<(Key, Node)>, Vec<String>)> = vec![(Vec::new(), Vec::new())];
+    let mut partial: Vec<Partial> = vec![(Vec::new(), Vec::new())];
     for (key, value) in entries {
         let choices = expand(value);
         let mut next = Vec::with_capacity(partial.len() * choices.len());

@@ -11,7 +11,9 @@ pub mod plan;
 pub mod tables;
 
 mod criteria;
+mod folders;
 mod pairing;
 mod parameters;
+mod refusals;
 mod series;
 mod template;

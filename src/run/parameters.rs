@@ -153,8 +153,21 @@ fn length(
 ) -> Option<f64> {
     let path = block.path_of(key);
     let node = block.required(key, reader, "a length")?;
-    number(node, &path, Dimension::Length, units, reader)
+    let length = number(node, &path, Dimension::Length, units, reader)?;
+    // zero and negative lengths are refused by the solution, in its own words
+    if length > 0.0 && !(SMALLEST..=LARGEST).contains(&length) {
+        let found = format!("{length:e} {} is the length of no part", units.length.name);
+        reader
+            .refuse("implausible-length", node, &path, found)
+            .expected = format!("from {SMALLEST:e} to {LARGEST:e}");
+        return None;
+    }
+    Some(length)
 }
+
+/// Lengths beyond these are slips of the pen, and their ratios leave the range of doubles.
+const SMALLEST: f64 = 1e-12;
+const LARGEST: f64 = 1e12;
 
 fn pressure(
     block: &mut Block,

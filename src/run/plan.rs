@@ -2,16 +2,17 @@
 
 use super::criteria;
 use super::expand::{self, Combination};
+use super::folders::{levels, own_folder};
 use super::pairing::{self, Element};
 use super::parameters::{self, Materials};
-use super::template;
+use super::refusals::{self, Refusals};
 use crate::exact::{ExactSolution, Parameters, catalogue};
 use crate::input::Finding;
 use crate::mechanics::{Dimension, UnitSystem};
 use crate::suite::model::{CaseEntry, ExportEntry, Suite};
-use crate::suite::tree::{Node, Value};
 use crate::suite::{Placed, Quantity, Reader};
 use crate::verdict::judge::Criterion;
+use std::collections::{BTreeMap, BTreeSet};
 use std::sync::Arc;
 
 /// A case may expand to this many.
@@ -81,8 +82,33 @@ pub fn plan(suite: Suite, file: &str) -> Result<Plan, Vec<Finding>> {
         .findings
         .sort_by_key(|f| (f.place.line, f.place.column));
     // the same fault found in several combinations is said once
-    reader.findings.dedup();
+    let mut said = BTreeSet::new();
+    reader.findings.retain(|f| said.insert(f.to_string()));
     Err(reader.findings)
+}
+
+/// From the text of a suite to its plan.
+///
+/// # Errors
+/// Every problem at once, of form and of meaning, in file order; what only follows from another problem is left out.
+pub fn read(text: &str, file: &str) -> Result<Plan, Vec<Finding>> {
+    let (suite, mut findings) = crate::suite::read_all(text, file);
+    let Some(suite) = suite else {
+        return Err(findings);
+    };
+    match plan(suite, file) {
+        Ok(plan) if findings.is_empty() => Ok(plan),
+        Ok(_) => Err(findings),
+        Err(more) => {
+            let own: Vec<Finding> = more
+                .into_iter()
+                .filter(|f| !findings.iter().any(|earlier| refusals::follows(f, earlier)))
+                .collect();
+            findings.extend(own);
+            findings.sort_by_key(|f| (f.place.line, f.place.column));
+            Err(findings)
+        }
+    }
 }
 
 fn plan_case(
@@ -92,10 +118,16 @@ fn plan_case(
     cases: &mut Vec<CasePlan>,
     reader: &mut Reader,
 ) {
-    let Some(solution) = parameters::solution_entry(&entry.problem, reader) else {
+    let Some((problems, elements)) = combinations(entry, reader) else {
         return;
     };
-    let Some((problems, elements)) = combinations(entry, reader) else {
+    let stated = criteria::stated_orders(entry, reader);
+    let element_path = entry.element.as_ref().map_or("", |e| e.path.as_str());
+    // once without regard to the problem, so that its faults hide none of the criteria's
+    let first = elements.first().and_then(Option::as_ref);
+    let element = first.and_then(|c| pairing::read(&c.node, element_path, reader));
+    criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
+    let Some(solution) = parameters::solution_entry(&entry.problem, reader) else {
         return;
     };
     let share = share(entry, reader);
@@ -104,8 +136,9 @@ fn plan_case(
         .as_ref()
         .and_then(|q| length(q, suite, reader));
     let h = sizes(entry, suite, reader);
-    let stated = criteria::stated_orders(entry, reader);
-    for problem in &problems {
+    let mut folders = BTreeMap::new();
+    let mut refused = Refusals::default();
+    'all: for problem in &problems {
         let path = &entry.parameters.path;
         let Some(parameters) =
             parameters::read(&problem.node, path, materials, &suite.units, reader)
@@ -115,12 +148,11 @@ fn plan_case(
         let exact = match catalogue::build(solution.name, &parameters) {
             Ok(exact) => Arc::from(exact),
             Err(refusal) => {
-                refuse_solution(&refusal, &problem.node, path, problem, reader);
+                refused.note(refusal, problem, path);
                 continue;
             }
         };
         for element_choice in &elements {
-            let element_path = entry.element.as_ref().map_or("", |e| e.path.as_str());
             let element = element_choice
                 .as_ref()
                 .and_then(|c| pairing::read(&c.node, element_path, reader));
@@ -141,11 +173,19 @@ fn plan_case(
                 &h,
                 reader,
             ) else {
-                return;
+                break 'all;
             };
             let criteria =
                 criteria::resolve(entry, element.as_ref(), &stated, &suite.units, reader);
-            unique_id(&id, entry, cases, reader);
+            if !unique_id(&id, entry, cases, reader) {
+                break 'all;
+            }
+            for level in &levels {
+                if let Some(other) = folders.insert(level.folder.clone(), id.clone()) {
+                    own_folder(entry, &other, &id, &level.folder, reader);
+                    break 'all;
+                }
+            }
             cases.push(CasePlan {
                 title: title(entry, &id, problem, labels),
                 id,
@@ -164,6 +204,7 @@ fn plan_case(
             });
         }
     }
+    refused.report(&entry.id.value, problems.len(), reader);
 }
 
 type Choices = (Vec<Combination>, Vec<Option<Combination>>);
@@ -198,35 +239,6 @@ fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
         Some(e) => expand::expand(&e.value).into_iter().map(Some).collect(),
     };
     Some((expand::expand(&entry.parameters.value), elements))
-}
-
-fn refuse_solution(
-    refusal: &crate::exact::Refusal,
-    node: &Node,
-    path: &str,
-    problem: &Combination,
-    reader: &mut Reader,
-) {
-    let at = match &node.value {
-        Value::Map(entries) => entries
-            .iter()
-            .find(|(key, _)| key.name == refusal.parameter)
-            .map(|(_, n)| n),
-        _ => None,
-    };
-    let path = match at {
-        Some(_) => format!("{path}.{}", refusal.parameter),
-        None => path.to_string(),
-    };
-    let which = if problem.labels.is_empty() {
-        String::new()
-    } else {
-        format!(" (in {})", problem.labels.join("-"))
-    };
-    let found = format!("{}{which}", refusal.message);
-    reader
-        .refuse("no-exact-solution", at.unwrap_or(node), &path, found)
-        .hint = refusal.hint.clone();
 }
 
 /// The declared share of the section, above 0 and at most 1.
@@ -302,93 +314,21 @@ fn sizes(entry: &CaseEntry, suite: &Suite, reader: &mut Reader) -> Vec<f64> {
     sizes
 }
 
-fn refuse<T>(at: &Placed<T>, rule: &str, found: String, expected: &str, reader: &mut Reader) {
+/// A problem at a value of the suite.
+pub(super) fn refuse<T>(
+    at: &Placed<T>,
+    rule: &str,
+    found: String,
+    expected: &str,
+    reader: &mut Reader,
+) {
     let place = reader.place(at.line, at.column, &at.path);
     reader.push(Finding::refused(rule, place, found).expected(expected));
 }
 
-/// The folders of all levels, filled in.
-fn levels(
-    entry: &CaseEntry,
-    id: &str,
-    problem: &Node,
-    element: Option<&Combination>,
-    h: &[f64],
-    reader: &mut Reader,
-) -> Option<Vec<LevelPlan>> {
-    let Some(results) = &entry.results else {
-        if let Some(level) = entry.levels.first() {
-            refuse(
-                level,
-                "levels",
-                "levels without result sets".into(),
-                "`results:` with the folder of a level",
-                reader,
-            );
-        }
-        return Some(Vec::new());
-    };
-    let mut values = vec![("id".to_string(), id.to_string())];
-    values.extend(chosen(problem));
-    values.extend(element.map(|c| chosen(&c.node)).unwrap_or_default());
-    let names: Vec<String> = match entry.levels.as_slice() {
-        [] => vec!["1".to_string()],
-        levels => levels.iter().map(|l| l.value.clone()).collect(),
-    };
-    let mut planned: Vec<LevelPlan> = Vec::new();
-    for (i, name) in names.iter().enumerate() {
-        let mut values = values.clone();
-        values.push(("level".to_string(), name.clone()));
-        let folder = template::fill(&results.value, &values);
-        let folder = folder.and_then(|f| template::below_the_suite(&f).map(|()| f));
-        match folder {
-            Ok(folder) if planned.iter().any(|p| p.folder == folder) => {
-                let found = format!(
-                    "levels {} and {name} have the same folder \"{folder}\"",
-                    planned[0].name
-                );
-                refuse(
-                    results,
-                    "results-folder",
-                    found,
-                    "a folder for each level, e.g. with {level}",
-                    reader,
-                );
-                return None;
-            }
-            Ok(folder) => planned.push(LevelPlan {
-                name: name.clone(),
-                folder,
-                h: h.get(i).copied(),
-            }),
-            Err(found) => {
-                refuse(
-                    results,
-                    "results-folder",
-                    found,
-                    "a folder below the suite's own",
-                    reader,
-                );
-                return None;
-            }
-        }
-    }
-    Some(planned)
-}
-
-/// The values a folder name may use: every parameter of the block.
-fn chosen(node: &Node) -> Vec<(String, String)> {
-    match &node.value {
-        Value::Map(entries) => entries
-            .iter()
-            .map(|(key, value)| (key.name.clone(), expand::label(value)))
-            .collect(),
-        _ => Vec::new(),
-    }
-}
-
-fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reader) {
-    if cases.iter().any(|case| case.id == id) {
+fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reader) -> bool {
+    let taken = cases.iter().any(|case| case.id == id);
+    if taken {
         let found = format!("two cases would be called \"{id}\"");
         refuse(
             &entry.id,
@@ -398,6 +338,7 @@ fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reade
             reader,
         );
     }
+    !taken
 }
 
 /// What was chosen comes first: it tells the cases of a family apart.

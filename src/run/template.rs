@@ -1,5 +1,7 @@
 //! Filling in the folder of a result set: `results/{ends}-{outer-radius}/level-{level}`.
 
+use crate::suite::nearest;
+
 /// Fills every `{name}`.
 ///
 /// # Errors
@@ -12,17 +14,20 @@ pub fn fill(template: &str, values: &[(String, String)]) -> Result<String, Strin
         if rest[at..].starts_with('}') {
             return Err(format!("\"{template}\" has a '}}' without its '{{'"));
         }
-        let Some(end) = rest[at..].find('}') else {
+        let name = rest[at + 1..].split('}').next().unwrap_or_default();
+        let end = 1 + name.len();
+        if at + end == rest.len() || name.contains('{') {
             return Err(format!("\"{template}\" has a '{{' without its '}}'"));
-        };
-        let name = &rest[at + 1..at + end];
+        }
         let Some((_, value)) = values.iter().find(|(known, _)| known == name) else {
             let known: Vec<_> = values
                 .iter()
                 .map(|(known, _)| format!("{{{known}}}"))
                 .collect();
+            let near = nearest(name, values.iter().map(|(known, _)| known.as_str()));
+            let near = near.map_or(String::new(), |n| format!(", did you mean {{{n}}}?"));
             return Err(format!(
-                "\"{{{name}}}\" is unknown here; known: {}",
+                "\"{{{name}}}\" is unknown here{near} (known: {})",
                 known.join(", ")
             ));
         };
@@ -69,6 +74,12 @@ mod tests {
         );
         assert!(fill("r/{end}", &values).unwrap_err().contains("{ends}"));
         assert!(fill("r/{ends", &values).is_err());
+        assert!(
+            fill("r/{ends/{level}", &values)
+                .unwrap_err()
+                .contains("without")
+        );
+        assert!(fill("r/{", &values).is_err());
         assert!(fill("r/ends}", &values).is_err());
     }
 

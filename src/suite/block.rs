@@ -82,7 +82,7 @@ impl Reader {
             Some("true") => Some(true),
             Some("false") => Some(false),
             _ => {
-                let found = format!("found {}", node.scalar().unwrap_or(node.kind()));
+                let found = format!("found {}", shown(node));
                 self.refuse("wrong-type", node, path, found).expected = "true or false".into();
                 None
             }
@@ -103,7 +103,7 @@ impl Reader {
         match &node.value {
             Value::Map(entries) => Some(Block::new(entries, path, node.line, node.column)),
             _ => {
-                let found = format!("found {}", node.scalar().map_or(node.kind(), |s| s));
+                let found = format!("found {}", shown(node));
                 self.refuse("wrong-type", node, path, found).expected = "a block of keys".into();
                 None
             }
@@ -125,7 +125,7 @@ impl Reader {
                 let names: Vec<_> = entries.iter().map(|(key, _)| key.name.as_str()).collect();
                 let found = format!("found {} keys ({})", entries.len(), names.join(", "));
                 self.refuse("wrong-type", node, path, found).expected =
-                    "exactly one name with its block, e.g. { neo-Hookean: { mu: 0.4 } }".into();
+                    "exactly one name, alone or with a block of its own".into();
                 None
             }
             _ => {
@@ -135,6 +135,14 @@ impl Reader {
                 None
             }
         }
+    }
+}
+
+/// A node as messages show it: a single value in quotes, anything else by its kind.
+pub(super) fn shown(node: &Node) -> String {
+    match node.scalar() {
+        Some(text) => format!("\"{text}\""),
+        None => node.kind().to_string(),
     }
 }
 
@@ -210,7 +218,10 @@ impl<'a> Block<'a> {
                 place,
                 format!("unknown key `{}`", key.name),
             ));
-            finding.expected = format!("one of: {}", self.known.join(", "));
+            finding.expected = match self.known.as_slice() {
+                [] => "no key at all here".to_string(),
+                known => format!("one of: {}", known.join(", ")),
+            };
             if let Some(near) = nearest(&key.name, self.known.iter().copied()) {
                 finding.hint = format!("did you mean `{near}`?");
             }

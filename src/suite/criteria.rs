@@ -1,10 +1,12 @@
 //! The `accept` list: limits set in advance.
 
-use super::block::{Block, Reader};
+use super::block::{Block, Reader, shown};
 use super::model::{CriterionEntry, LimitKind, Placed, Subject};
+use super::quantity::Quantity;
 use super::read::placed;
 use super::tree::{Node, Value};
 use crate::input::Finding;
+use crate::mechanics::{Dimension, UnitSystem};
 
 /// Reads an `accept` list; a missing one is empty.
 pub(super) fn read_list(
@@ -70,7 +72,7 @@ fn by_fit(block: &mut Block, reader: &mut Reader) -> bool {
         Some("fit") => true,
         Some("pair") => false,
         _ => {
-            let found = format!("found {}", node.scalar().unwrap_or(node.kind()));
+            let found = format!("found {}", shown(node));
             reader.refuse("unknown-word", node, &path, found).expected = "fit or pair".into();
             false
         }
@@ -111,6 +113,12 @@ fn one_of<'a, T: Copy>(
     None
 }
 
+/// A relative limit of one or more: zero everywhere has exactly this error.
+fn accepts_zeros(limit: &Quantity) -> bool {
+    let pure = limit.within(Dimension::None, &UnitSystem::si());
+    limit.dimension() == Dimension::None && pure.is_ok_and(|number| number >= 1.0)
+}
+
 /// Refuses limits that cannot be meant.
 fn sensible(entry: &CriterionEntry, node: &Node, reader: &mut Reader) -> bool {
     let Placed {
@@ -136,6 +144,25 @@ fn sensible(entry: &CriterionEntry, node: &Node, reader: &mut Reader) -> bool {
         (Subject::Order, _) if limit.unit.is_some() => (
             format!("an order has no unit, found {}", limit.text),
             "a bare number such as 0.2",
+        ),
+        (Subject::Order, _) if limit.number <= 0.0 => (
+            format!("an order of {} is met by an error that grows", limit.text),
+            "a number above zero, e.g. `at-least: 1.8`",
+        ),
+        (Subject::Order, _) if entry.by_fit && entry.level.is_some() => (
+            "`by: fit` takes all levels, so that `level:` says nothing".to_string(),
+            "one of the two",
+        ),
+        (Subject::Error | Subject::Value, _) if entry.by_fit => (
+            "`by: fit` is for orders".to_string(),
+            "no `by:` here, or `order:`",
+        ),
+        (Subject::Error, _) if accepts_zeros(limit) => (
+            format!(
+                "a relative error of {} is met by a result of zeros",
+                limit.text
+            ),
+            "less than 100 %; write the unit behind a limit on the absolute error",
         ),
         _ => return true,
     };

@@ -1,6 +1,6 @@
 //! How result sets are written: units, column names, conventions; at suite level a default for every case.
 
-use super::block::{Block, Reader};
+use super::block::{Block, Reader, nearest, shown};
 use super::model::{ConventionsEntry, ExportEntry, Placed};
 use super::read::placed;
 use super::tree::{Node, Value};
@@ -92,14 +92,12 @@ fn one_unit(
     let name = reader.text(node, &path)?;
     let unit = Unit::find(&name).filter(|u| u.dimension == dimension);
     if unit.is_none() {
-        reader
-            .refuse(
-                "unknown-unit",
-                node,
-                &path,
-                format!("\"{name}\" is not a unit of {key}"),
-            )
-            .expected = expected;
+        let found = format!("\"{name}\" is not a unit of {key}");
+        let finding = reader.refuse("unknown-unit", node, &path, found);
+        finding.expected = expected;
+        if let Some(near) = nearest(&name, Unit::names_of(dimension)) {
+            finding.hint = format!("did you mean `{near}`?");
+        }
     }
     unit
 }
@@ -108,7 +106,7 @@ fn whole_number(node: &Node, path: &str, reader: &mut Reader) -> Option<Placed<i
     match node.scalar().and_then(|text| text.parse().ok()) {
         Some(number) => Some(placed(number, node, path)),
         None => {
-            let found = format!("found {}", node.scalar().unwrap_or(node.kind()));
+            let found = format!("found {}", shown(node));
             reader.refuse("wrong-type", node, path, found).expected = "a whole number".into();
             None
         }
@@ -201,9 +199,11 @@ fn choice<T: Copy>(
         .map(|(_, meaning)| *meaning);
     if found.is_none() {
         let names: Vec<_> = choices.iter().map(|(name, _)| *name).collect();
-        reader
-            .refuse("unknown-word", node, &path, format!("found \"{word}\""))
-            .expected = format!("one of: {}", names.join(", "));
+        let finding = reader.refuse("unknown-word", node, &path, format!("found \"{word}\""));
+        finding.expected = format!("one of: {}", names.join(", "));
+        if let Some(near) = nearest(&word, names) {
+            finding.hint = format!("did you mean `{near}`?");
+        }
     }
     found
 }

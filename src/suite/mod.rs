@@ -11,4 +11,4 @@ pub mod tree;
 pub use block::{Block, Reader, nearest};
 pub use model::{CaseEntry, Placed, Suite};
 pub use quantity::Quantity;
-pub use read::read;
+pub use read::{read, read_all};

@@ -1,6 +1,7 @@
 //! A number as a suite writes it: `0.03`, `30 kPa`, `0.1 %`, `1/4`.
 
-use crate::mechanics::units::Unit;
+use super::block::nearest;
+use crate::mechanics::units::{UNITS, Unit};
 use crate::mechanics::{Dimension, UnitSystem};
 
 /// A finite number with the unit written behind it, if any.
@@ -20,14 +21,19 @@ impl Quantity {
     pub fn parse(text: &str) -> Result<Self, String> {
         let text = text.trim();
         let (number_text, unit_text) = split(text);
-        let number = parse_number(number_text)
-            .ok_or_else(|| format!("\"{text}\" is not a number with an optional unit"))?;
+        let number =
+            parse_number(number_text).ok_or_else(|| match number_text.replace(',', ".") {
+                pointed if pointed != number_text && parse_number(&pointed).is_some() => {
+                    format!("\"{text}\" has a comma in the number, the decimal mark is a point")
+                }
+                _ => format!("\"{text}\" is not a number with an optional unit"),
+            })?;
         if !number.is_finite() {
             return Err(format!("\"{text}\" is not a finite number"));
         }
         let unit = match unit_text {
             "" => None,
-            name => Some(Unit::find(name).ok_or_else(|| format!("unknown unit \"{name}\""))?),
+            name => Some(Unit::find(name).ok_or_else(|| unknown_unit(name))?),
         };
         Ok(Self {
             number,
@@ -80,6 +86,13 @@ impl Quantity {
     /// What the written unit measures; a bare number and a percentage are pure numbers.
     pub fn dimension(&self) -> Dimension {
         self.unit.map_or(Dimension::None, |unit| unit.dimension)
+    }
+}
+
+fn unknown_unit(name: &str) -> String {
+    match nearest(name, UNITS.iter().map(|unit| unit.name)) {
+        Some(near) => format!("unknown unit \"{name}\", did you mean {near}?"),
+        None => format!("unknown unit \"{name}\""),
     }
 }
 

@@ -14,18 +14,23 @@ use std::collections::BTreeMap;
 /// Every problem of the file's form, in file order. What words mean (does the material exist, is the load
 /// possible) is checked by `run::plan`.
 pub fn read(text: &str, file: &str) -> Result<Suite, Vec<Finding>> {
-    let root = tree::parse(text, file).map_err(|finding| vec![finding])?;
+    match read_all(text, file) {
+        (Some(suite), findings) if findings.is_empty() => Ok(suite),
+        (_, findings) => Err(findings),
+    }
+}
+
+/// As much of a suite as can be read, and every problem of its form.
+pub fn read_all(text: &str, file: &str) -> (Option<Suite>, Vec<Finding>) {
+    let root = match tree::parse(text, file) {
+        Ok(root) => root,
+        Err(finding) => return (None, vec![finding]),
+    };
     let mut reader = Reader::new(file);
     let suite = read_suite(&root, &mut reader);
-    match suite {
-        Some(suite) if reader.findings.is_empty() => Ok(suite),
-        _ => {
-            reader
-                .findings
-                .sort_by_key(|f| (f.place.line, f.place.column));
-            Err(reader.findings)
-        }
-    }
+    let mut findings = reader.findings;
+    findings.sort_by_key(|f| (f.place.line, f.place.column));
+    (suite, findings)
 }
 
 fn read_suite(root: &Node, reader: &mut Reader) -> Option<Suite> {
@@ -294,12 +299,8 @@ fn words(block: &mut Block, key: &'static str, reader: &mut Reader) -> Vec<Place
             continue;
         };
         if list.iter().any(|earlier| earlier.value == word.value) {
-            reader.refuse(
-                "duplicate-level",
-                item,
-                &at,
-                format!("\"{}\" is listed twice", word.value),
-            );
+            let found = format!("\"{}\" is listed twice", word.value);
+            reader.refuse("duplicate-level", item, &at, found).expected = "each level once".into();
         }
         list.push(word);
     }

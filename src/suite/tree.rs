@@ -90,19 +90,47 @@ fn syntax_finding(error: &serde_yaml::Error, file: &str) -> Finding {
         place = place.line(location.line()).column(location.column());
     }
     let said = error.without_snippet().to_string();
-    let first_line = said.lines().next().unwrap_or("unreadable").to_string();
-    let duplicate = first_line.contains("duplicate");
-    let rule = if duplicate {
-        "yaml-duplicate-key"
-    } else {
-        "yaml-syntax"
-    };
-    let hint = if duplicate {
-        "keep one of the two entries"
+    let (rule, found, hint) = in_plain_words(&said);
+    Finding::refused(rule, place, found).hint(hint)
+}
+
+/// Rule, message and hint for what the parser says; the place is told elsewhere.
+fn in_plain_words(said: &str) -> (&'static str, String, &'static str) {
+    let first_line = said.lines().next().unwrap_or("unreadable");
+    let what = first_line.split(" at line ").next().unwrap_or(first_line);
+    if let Some(key) = what.strip_prefix("duplicate mapping key: ") {
+        let key = key.split(", set ").next().unwrap_or(key);
+        let found = format!("the key `{key}` stands twice in this block");
+        return ("yaml-duplicate-key", found, "keep one of the two entries");
+    }
+    if what.contains("multiple YAML documents") {
+        let found = "a second document begins here".to_string();
+        return (
+            "yaml-syntax",
+            found,
+            "a suite is one document: leave out the `---`",
+        );
+    }
+    if what.contains("budget breached") {
+        let found =
+            "the file is too large, nested too deeply, or repeats itself through aliases too often"
+                .to_string();
+        return (
+            "yaml-limits",
+            found,
+            "write the suite without deep nesting and with few aliases",
+        );
+    }
+    if what.contains("unknown anchor") {
+        let found = "there is no anchor of this name before this line".to_string();
+        return ("yaml-syntax", found, "quote a text that begins with `*`");
+    }
+    let hint = if what.contains("tabs") {
+        "indent with blanks, not with tabs"
     } else {
         "check indentation, quotes and brackets at and before this line"
     };
-    Finding::refused(rule, place, first_line).hint(hint)
+    ("yaml-syntax", what.to_string(), hint)
 }
 
 /// The tree as the parser hands it over, before the characters of scalars are looked up.
