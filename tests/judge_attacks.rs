@@ -66,6 +66,7 @@ fn judged(criterion: &Criterion, series: &MeasureSeries, reference_bound: f64) -
         Evidence {
             series: Some(series),
             reference_bound,
+            reference_size: 0.0,
             suspicion: None,
         },
     );
@@ -125,6 +126,7 @@ fn numbers_that_are_none() {
         Evidence {
             series: None,
             reference_bound: 0.0,
+            reference_size: 0.0,
             suspicion: None,
         },
     );
@@ -203,4 +205,7 @@ fn fitted_orders() {
     assert_eq!(at(&[16e-3, 4e-3, 0.0]), Inconclusive);
     assert_eq!(at(&[1e-3, 4e-3, 16e-3]), Fail);
     assert_ne!(at(&[16e-3, 1e-3, 4e-3, 1e-3]), Pass, "scatter");
+    let errors = [Some(16e-3), Some(4e-3), Some(1e-3), None];
+    let gap = series(Kind::Relative, 1.0, &errors);
+    assert_eq!(judged(&c, &gap, 0.0), NotRun, "a level without a number");
 }

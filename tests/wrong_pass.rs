@@ -912,3 +912,64 @@ fn declarations_that_do_not_fit_the_files() {
         ),
     ]);
 }
+
+/// Attacks on what is declared, or left out, beside sound numbers.
+#[test]
+fn what_is_declared_or_left_out_lets_nothing_through() {
+    run(&[
+        (
+            "a coarse level that is nonsense",
+            |d| {
+                d.change(1, "nodes", |t| {
+                    for c in ["ux", "uy"] {
+                        t.map(c, |v| 3.0 * v);
+                    }
+                });
+                d.change(1, "points", |t| t.map("sxx", |v| v + 0.2));
+            },
+            "inconclusive",
+        ),
+        (
+            "mesh sizes that are not the mesh's",
+            |d| {
+                d.accept(&["{ order: stress-L2, at-least: 4 }"]);
+                d.edit_suite("    accept:", "    h: [2, 1.9]\n    accept:");
+            },
+            "refused mesh-sizes",
+        ),
+        (
+            "errors small, but the load is not quite there",
+            |d| {
+                d.change_all("totals", |t| {
+                    let (name, value) = (t.at("quantity"), t.at("value"));
+                    for row in t.rows.iter_mut().filter(|r| r[name] == "load_factor") {
+                        if row[value] == "1" {
+                            row[value] = "0.999".into();
+                        }
+                    }
+                })
+            },
+            "not-run",
+        ),
+        (
+            "half of a result set of points alone",
+            |d| {
+                for level in [1, 2] {
+                    fs::remove_file(d.file(level, "nodes")).unwrap();
+                    fs::remove_file(d.file(level, "elements")).unwrap();
+                }
+                d.change_all("points", |t| {
+                    let at = t.at("Y");
+                    t.rows.retain(|row| row[at].parse::<f64>().unwrap() < 4.0);
+                });
+                d.accept(&["{ error: stress-L2, at-most: 0.5 % }"]);
+            },
+            "refused share-of-body",
+        ),
+        (
+            "a declared load factor that the results are not at",
+            |d| d.edit_suite("    levels:", "    load-factor: 0.5\n    levels:"),
+            "fail",
+        ),
+    ]);
+}

@@ -28,6 +28,9 @@ pub(super) fn refuse(parameter: &'static str, message: String, hint: impl Into<S
     }
 }
 
+/// Beyond this ratio of the radii the wall is no tube any more, and its integrals no numbers.
+const MOST_RATIO: f64 = 1e6;
+
 impl Parameters {
     /// Refuses what is no tube: radii out of order, values that are not finite.
     pub(super) fn check(&self) -> Result<(), Refusal> {
@@ -63,6 +66,15 @@ impl Parameters {
                     "",
                 ));
             }
+        }
+        let ratio = self.outer_radius / self.inner_radius;
+        if !ratio.is_finite() || ratio > MOST_RATIO {
+            let message = format!("outer-radius is {ratio:.3e} times inner-radius");
+            return Err(refuse(
+                "outer-radius",
+                message,
+                format!("at most {MOST_RATIO:e} times; checked up to 100 times"),
+            ));
         }
         if self.outer_radius <= self.inner_radius {
             let (inner, outer) = (self.inner_radius, self.outer_radius);

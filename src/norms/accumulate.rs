@@ -30,9 +30,17 @@ pub struct Norm {
     pub absolute: f64,
     /// The same of the exact field.
     pub exact: f64,
+    /// Sum of the weights.
+    pub weight: f64,
 }
 
 impl Norm {
+    /// Roots of the weighted means: of the error, and of the exact field.
+    pub fn root_mean_squares(&self) -> (f64, f64) {
+        let root = self.weight.sqrt();
+        (self.absolute / root, self.exact / root)
+    }
+
     /// A pure number.
     ///
     /// # Errors
@@ -51,6 +59,7 @@ impl Norm {
 pub struct SquaredError {
     error: CompensatedSum,
     exact: CompensatedSum,
+    weight: CompensatedSum,
     points: u64,
     fault: Option<NoNorm>,
 }
@@ -66,6 +75,7 @@ impl SquaredError {
         }
         self.error.add(e);
         self.exact.add(s);
+        self.weight.add(weight);
         self.points += 1;
     }
 
@@ -73,6 +83,7 @@ impl SquaredError {
     pub fn merge(&mut self, later: &Self) {
         self.error.merge(&later.error);
         self.exact.merge(&later.exact);
+        self.weight.merge(&later.weight);
         self.points += later.points;
         if self.fault.is_none() {
             self.fault = later.fault;
@@ -100,6 +111,7 @@ impl SquaredError {
         Ok(Norm {
             absolute: error.max(0.0).sqrt(),
             exact: exact.max(0.0).sqrt(),
+            weight: self.weight.value(),
         })
     }
 }
@@ -150,7 +162,11 @@ mod tests {
         norm.add(0.5, 4.0, 8.0);
         norm.add(2.0, 1.0, 6.0);
         let done = norm.finish().unwrap();
-        assert_eq!((done.absolute, done.exact), (2.0, 4.0));
+        assert_eq!((done.absolute, done.exact, done.weight), (2.0, 4.0, 2.5));
+        assert_eq!(
+            done.root_mean_squares(),
+            (2.0 / 2.5_f64.sqrt(), 4.0 / 2.5_f64.sqrt())
+        );
         assert_eq!(done.relative(), Ok(0.5));
     }
 

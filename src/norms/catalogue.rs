@@ -64,6 +64,18 @@ pub const MEASURES: &[Measure] = measures! {
     "energy-density-L2" "Energy density, L2" "energy density" Stress EnergyDensity
         "the same of the strain energy per reference volume"
         "points: weight, X Y [Z], W";
+    "displacement-rms" "Displacement, root mean square" "displacement" Displacement Length
+        "root of the mean over the mesh of the squared error: what a limit with a unit on displacement-L2 is held against"
+        "nodes: ux uy [uz]; elements";
+    "stress-rms" "Stress, root mean square" "stress" Stress Stress
+        "root of the mean over the mesh of the squared error: what a limit with a unit on stress-L2 is held against"
+        "points: weight, X Y [Z], sxx syy sxy [szz; in 3D all six]";
+    "pressure-rms" "Pressure, root mean square" "pressure" Pressure Stress
+        "root of the mean over the mesh of the squared error: what a limit with a unit on pressure-L2 is held against"
+        "points: weight, X Y [Z], p or sxx syy szz";
+    "energy-density-rms" "Energy density, root mean square" "energy density" Stress EnergyDensity
+        "root of the mean over the mesh of the squared error: what a limit with a unit on energy-density-L2 is held against"
+        "points: weight, X Y [Z], W";
     "displacement-largest" "Displacement, largest nodal" "largest u" Displacement Length
         "largest |u - u_exact| of any node, and where; relative to the largest nodal |u_exact|"
         "nodes: ux uy [uz]";
@@ -146,7 +158,7 @@ pub const MEASURES: &[Measure] = measures! {
         "of the model"
         "totals: axial_stretch";
     "axial-force" "Axial force" "axial force" Functional Force
-        "net axial force on the modelled share of the wall; relative to the pressure times the exact bore section where it is zero"
+        "net axial force on the modelled share of the wall; where the exact one is zero, give the limit as a force"
         "totals: axial_force";
 };
 

@@ -1,6 +1,6 @@
 //! Everything that is measured on one mesh: the result set against the exact solution.
 
-use super::accumulate::NoNorm;
+use super::accumulate::{NoNorm, SquaredError};
 use super::body::BodyReport;
 use super::displacement::{DisplacementNorms, displacement_norms, largest_nodal};
 use super::measured::Measured;
@@ -159,29 +159,63 @@ impl<'a> Level<'a> {
     }
 
     fn displacement_norms(&self, norms: &DisplacementNorms, level: &mut LevelMeasures) {
-        let l2_unit = self.norm_unit(Dimension::Length);
-        let h1_unit = self.norm_unit(Dimension::None);
-        let pairs = [
-            ("displacement-L2", &l2_unit, &norms.l2),
-            ("displacement-H1", &h1_unit, &norms.h1),
-        ];
-        let note =
-            (self.set.kind() == ModelKind::Planar).then(|| "in-plane components".to_string());
-        for (name, unit, norm) in pairs {
-            level.measured.push(match &norms.no_value {
-                Some(why) => Measured::missing(name, unit, why),
-                None => Measured::norm(name, unit, norm).noted(note.clone()),
-            });
-        }
+        let planar = self.set.kind() == ModelKind::Planar;
+        let note = planar.then(|| "in-plane components".to_string());
+        let found = |norm| match &norms.no_value {
+            Some(why) => Err(why.clone()),
+            None => Ok(norm),
+        };
+        self.norm(
+            "displacement-L2",
+            Dimension::Length,
+            found(&norms.l2),
+            note.clone(),
+            level,
+        );
+        self.norm(
+            "displacement-H1",
+            Dimension::None,
+            found(&norms.h1),
+            note,
+            level,
+        );
+    }
+
+    /// An integral over the mesh, and beside an L2 norm with a unit its root mean square.
+    fn norm(
+        &self,
+        name: &str,
+        dimension: Dimension,
+        norm: Result<&SquaredError, String>,
+        note: Option<String>,
+        level: &mut LevelMeasures,
+    ) {
+        let unit = self.norm_unit(dimension);
+        level.measured.push(match &norm {
+            Ok(norm) => Measured::norm(name, &unit, norm).noted(note.clone()),
+            Err(why) => Measured::missing(name, &unit, why),
+        });
+        let rms = name.strip_suffix("-L2").map(|field| format!("{field}-rms"));
+        let Some(rms) = rms.filter(|_| dimension != Dimension::None) else {
+            return;
+        };
+        let unit = self.unit(dimension);
+        level.measured.push(match &norm {
+            Ok(norm) => Measured::root_mean_square(&rms, &unit, norm).noted(note),
+            Err(why) => Measured::missing(&rms, &unit, why),
+        });
     }
 
     fn fields(&self, level: &mut LevelMeasures) {
         let Some((source, points)) = self.set.points().zip(self.points) else {
-            let why = "there is no points.csv";
             for (name, dimension) in FIELDS {
-                level
-                    .measured
-                    .push(Measured::missing(name, &self.norm_unit(dimension), why));
+                self.norm(
+                    name,
+                    dimension,
+                    Err("there is no points.csv".to_string()),
+                    None,
+                    level,
+                );
             }
             return;
         };
@@ -199,20 +233,18 @@ impl<'a> Level<'a> {
             (&channels.w, &points.energy_density, None),
         ];
         for ((name, dimension), (channel, norm, note)) in FIELDS.into_iter().zip(all) {
-            let unit = self.norm_unit(dimension);
             let how = match channel {
                 Channel::Computed(how) => Some(how.clone()),
                 Channel::Given | Channel::Missing(_) => None,
             };
-            level.measured.push(if !channel.is_available() {
-                Measured::missing(name, &unit, channel.reason())
+            let found = if !channel.is_available() {
+                Err(channel.reason().to_string())
             } else if !channels.weight.is_available() {
-                Measured::missing(name, &unit, channels.weight.reason())
-            } else if let Some(why) = &points.no_value {
-                Measured::missing(name, &unit, why)
+                Err(channels.weight.reason().to_string())
             } else {
-                Measured::norm(name, &unit, norm).noted(note.or(how))
-            });
+                points.no_value.clone().map_or(Ok(norm), Err)
+            };
+            self.norm(name, dimension, found, note.or(how), level);
         }
     }
 

@@ -73,6 +73,22 @@ impl Measured {
         }
     }
 
+    /// The root mean square of the same field.
+    pub(super) fn root_mean_square(measure: &str, unit: &str, norm: &SquaredError) -> Self {
+        match norm.finish() {
+            Err(why) => Self::missing(measure, unit, &why.to_string()),
+            Ok(norm) => {
+                let (error, exact) = norm.root_mean_squares();
+                Self {
+                    relative: norm.relative().map_err(|why| why.to_string()),
+                    absolute: Ok(error),
+                    exact: Some(exact),
+                    ..Self::missing(measure, unit, "")
+                }
+            }
+        }
+    }
+
     pub(super) fn noted(mut self, note: Option<String>) -> Self {
         self.note = note;
         self

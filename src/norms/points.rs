@@ -4,6 +4,7 @@ use super::accumulate::SquaredError;
 use super::model;
 use crate::exact::{ExactSolution, State};
 use crate::input::Finding;
+use crate::numerics::sum::CompensatedSum;
 use crate::results::{Components, ModelKind, Pass, PointBlock, PointSource};
 use rayon::prelude::*;
 
@@ -19,6 +20,8 @@ pub struct PointNorms {
     pub volume_ratio: SquaredError,
     pub energy_density: SquaredError,
     pub points: u64,
+    /// Sum of the weights.
+    pub weight: CompensatedSum,
     /// Points outside the exact body, and the largest distance.
     pub outside: u64,
     pub outside_distance: f64,
@@ -47,6 +50,7 @@ impl PointNorms {
         self.volume_ratio.merge(&later.volume_ratio);
         self.energy_density.merge(&later.energy_density);
         self.points += later.points;
+        self.weight.merge(&later.weight);
         self.outside += later.outside;
         self.outside_distance = self.outside_distance.max(later.outside_distance);
         if self.no_value.is_none() {
@@ -110,6 +114,9 @@ fn judge_rows(
     for &row in rows {
         let point = model::point(block.position[row]);
         norms.points += 1;
+        norms
+            .weight
+            .add(block.weight.as_ref().map_or(0.0, |weights| weights[row]));
         let outside = exact.body().outside(&point);
         if outside > 0.0 {
             norms.outside += 1;

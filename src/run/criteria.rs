@@ -102,6 +102,7 @@ fn resolve_one(
         );
         return None;
     }
+    let measure = root_mean_square(entry, measure);
     let (kind, dimension) = what_is_compared(entry, measure);
     if let Some((found, expected)) = cannot_be_compared(entry, measure, kind, element) {
         refuse(&entry.limit, found, expected, reader);
@@ -179,7 +180,24 @@ fn resolve_one(
 
 /// An integral over the mesh, whose absolute value grows with the mesh.
 fn is_norm(measure: &Measure) -> bool {
-    measure.name.ends_with("-L2") || measure.name.ends_with("-H1")
+    ["-L2", "-H1", "-rms"]
+        .iter()
+        .any(|end| measure.name.ends_with(end))
+}
+
+/// A limit with a unit cannot be held against an integral over the mesh (mm x mm in a slice): it is held against the
+/// root mean square over the mesh, which has the unit of the field.
+fn root_mean_square(entry: &CriterionEntry, measure: &'static Measure) -> &'static Measure {
+    let with_unit =
+        entry.subject == Subject::Error && entry.limit.value.dimension() != Dimension::None;
+    let sibling = measure
+        .name
+        .strip_suffix("-L2")
+        .map(|field| format!("{field}-rms"));
+    match sibling.and_then(|name| catalogue::find(&name)) {
+        Some(rms) if with_unit => rms,
+        _ => measure,
+    }
 }
 
 /// Why a limit cannot be held against this measure, and what to write instead.
@@ -193,16 +211,6 @@ fn cannot_be_compared(
     if kind == Kind::Value && (is_norm(measure) || measure.name == "displacement-largest") {
         let found = format!("{} is an error and has no value of its own", measure.name);
         return Some((found, "`error:` instead of `value:`"));
-    }
-    if kind == Kind::Absolute && is_norm(measure) {
-        let found = format!(
-            "\"{text}\" has a unit, but {} is an integral over the mesh",
-            measure.name
-        );
-        return Some((
-            found,
-            "a pure number or a percentage, of the norm of the exact field",
-        ));
     }
     let solid = element.is_some_and(|e| e.displacement.dimension() == 3);
     if measure.dimension == Dimension::Energy

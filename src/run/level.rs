@@ -1,7 +1,7 @@
 //! One result set: read, checked, compared with the body, measured.
 
+use super::checks;
 use super::plan::{CasePlan, LevelPlan};
-use crate::exact::Kinematics;
 use crate::input::{Finding, Place, Weight};
 use crate::norms::body::{self, BodyReport, Declared, WallSides};
 use crate::norms::model::Mesh;
@@ -21,6 +21,10 @@ use std::path::Path;
 #[derive(Debug)]
 pub struct LevelResult {
     pub outcome: LevelOutcome,
+    /// Why the results are not those of the case's load.
+    pub other_load: Option<String>,
+    /// Element size of the mesh itself, whatever is declared.
+    pub mesh_size: Option<f64>,
     pub measures: LevelMeasures,
     pub sides: WallSides,
     pub findings: Vec<Finding>,
@@ -101,6 +105,8 @@ fn absent(plan: &LevelPlan, why: String) -> LevelResult {
             outside_distance: 0.0,
             walls: "none".to_string(),
         },
+        other_load: None,
+        mesh_size: None,
         measures: LevelMeasures::default(),
         sides: WallSides::default(),
         findings: Vec::new(),
@@ -144,8 +150,8 @@ pub fn measure(
     findings.extend(sanity::check_mesh(&set)?);
     let (report, volume) = compare_with_body(case, plan, &set, &mut findings)?;
     let points = judge_points(case, &set, report.as_ref(), &mut findings)?;
-    check_shape(case, plan, &set)?;
-    check_load(plan, &set, &mut findings);
+    checks::check_shape(case, plan, &set)?;
+    let other_load = checks::check_load(case, plan, &set, &mut findings);
     let measures = Level {
         set: &set,
         exact: case.exact.as_ref(),
@@ -155,8 +161,10 @@ pub fn measure(
         units: &case.units,
     }
     .measure();
-    note_outside(case, plan, &measures, &mut findings);
+    checks::note_outside(case, plan, &measures, &mut findings);
+    checks::note_axial_stress(case, &set, &mut findings);
     let sides = report.as_ref().map_or(WallSides::default(), |r| r.sides);
+    let mesh_size = mesh_size(&set);
     let outcome = outcome(
         plan,
         &set,
@@ -164,10 +172,13 @@ pub fn measure(
         volume,
         points.as_ref(),
         &measures,
+        mesh_size,
     );
     let inputs = set.inputs();
     Ok(LevelResult {
         outcome,
+        other_load,
+        mesh_size,
         measures,
         sides,
         findings,
@@ -236,86 +247,20 @@ fn judge_points(
     })?;
     match cover {
         Some(cover) => findings.extend(cover.finish(pass)?.remarks),
-        None => findings.extend(pass.remarks),
+        None => {
+            findings.extend(pass.remarks);
+            checks::covers_without_mesh(case, set, &norms)?;
+        }
     }
     Ok(Some(norms))
 }
 
-/// The mesh is of the declared element, or the orders expected of it mean nothing.
-fn check_shape(case: &CasePlan, plan: &LevelPlan, set: &ResultSet) -> Result<(), Vec<Finding>> {
-    let (Some(element), Some(elements)) = (&case.element, set.elements()) else {
-        return Ok(());
-    };
-    let other = elements
-        .shapes_used()
-        .into_iter()
-        .find(|shape| *shape != element.displacement);
-    let Some(other) = other else { return Ok(()) };
-    let index = elements
-        .shapes
-        .iter()
-        .position(|s| *s == other)
-        .unwrap_or(0);
-    let found = format!("element {} is a {}", elements.ids[index], other.name());
-    Err(vec![
-        Finding::refused("declared-element", elements.place(index), found)
-            .expected(format!(
-                "{}, as `element:` of case {} declares",
-                element.displacement.name(),
-                case.id
-            ))
-            .hint(format!(
-                "mend `element:` or the result set in {}",
-                plan.folder
-            )),
-    ])
-}
-
-/// A result set that is not at its full load is compared with the wrong state: said, never hidden.
-fn check_load(plan: &LevelPlan, set: &ResultSet, findings: &mut Vec<Finding>) {
-    let Some(factor) = set.totals().and_then(|t| t.get("load_factor")) else {
-        return;
-    };
-    if (factor.value - 1.0).abs() > 1e-9 {
-        findings.push(
-            Finding::new(
-                Weight::Caution,
-                "full-load",
-                factor.place.clone(),
-                format!(
-                    "the load factor is {} in {}, and the case is judged at the full load",
-                    factor.value, plan.folder
-                ),
-            )
-            .expected("a load factor of 1")
-            .hint("export the last load step, or name it with `step:`"),
-        );
-    }
-}
-
-fn note_outside(
-    case: &CasePlan,
-    plan: &LevelPlan,
-    measures: &LevelMeasures,
-    findings: &mut Vec<Finding>,
-) {
-    if measures.outside == 0 {
-        return;
-    }
-    let continued = match case.exact.kinematics() {
-        Kinematics::Finite | Kinematics::SmallStrain => {
-            "the exact solution's formula is continued there"
-        }
-    };
-    findings.push(Finding::new(
-        Weight::Note,
-        "outside-the-body",
-        Place::file(plan.folder.clone()),
-        format!(
-            "{} of {} quadrature points lie outside the exact body, by {:.2e} {} at most: {continued}",
-            measures.outside, measures.quadrature_points, measures.outside_distance, case.units.length.name
-        ),
-    ));
+/// (own measure / elements)^(1/dimension): of an axisymmetric mesh the area of its half section counts.
+fn mesh_size(set: &ResultSet) -> Option<f64> {
+    let (nodes, elements) = (set.nodes()?, set.elements()?);
+    let each = Mesh { nodes, elements }.own_measure() / elements.len() as f64;
+    let size = each.powf(1.0 / elements.dimension() as f64);
+    (size.is_finite() && size > 0.0).then_some(size)
 }
 
 fn outcome(
@@ -325,23 +270,17 @@ fn outcome(
     volume: Option<f64>,
     points: Option<&PointNorms>,
     measures: &LevelMeasures,
+    mesh_size: Option<f64>,
 ) -> LevelOutcome {
     let elements = set.elements();
     let count = elements.map_or(0, |e| e.len());
     let dimension = elements.map(|e| e.dimension());
-    let mesh = set.nodes().zip(elements);
-    let size = mesh
-        .filter(|(_, elements)| !elements.is_empty())
-        .map(|(nodes, elements)| {
-            let each = Mesh { nodes, elements }.own_measure() / count as f64;
-            each.powf(1.0 / elements.dimension() as f64)
-        });
     let shapes = elements.map_or_else(Vec::new, |e| e.shapes_used());
     LevelOutcome {
         level: plan.name.clone(),
         folder: plan.folder.clone(),
         missing: None,
-        h: plan.h.or(size),
+        h: plan.h.or(mesh_size),
         dimension: dimension.map(|d| d as u32),
         nodes: set.nodes().map_or(0, |n| n.len() as u64),
         elements: count as u64,

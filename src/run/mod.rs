@@ -10,6 +10,7 @@ pub mod level;
 pub mod plan;
 pub mod tables;
 
+mod checks;
 mod criteria;
 mod folders;
 mod pairing;

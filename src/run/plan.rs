@@ -6,7 +6,7 @@ use super::folders::{levels, own_folder};
 use super::pairing::{self, Element};
 use super::parameters::{self, Materials};
 use super::refusals::{self, Refusals};
-use crate::exact::{ExactSolution, Parameters, catalogue};
+use crate::exact::{Ends, ExactSolution, Parameters, catalogue};
 use crate::input::Finding;
 use crate::mechanics::{Dimension, UnitSystem};
 use crate::suite::model::{CaseEntry, ExportEntry, Suite};
@@ -43,6 +43,8 @@ pub struct CasePlan {
     pub share: f64,
     /// Declared axial length, for solids.
     pub axial_length: Option<f64>,
+    /// Share of the stated loads at which the results are judged; already in `parameters`.
+    pub load_factor: f64,
     /// Coarsest first.
     pub levels: Vec<LevelPlan>,
     pub criteria: Vec<Criterion>,
@@ -135,6 +137,7 @@ fn plan_case(
         .axial_length
         .as_ref()
         .and_then(|q| length(q, suite, reader));
+    let load_factor = load_factor(entry, reader);
     let h = sizes(entry, suite, reader);
     let mut folders = BTreeMap::new();
     let mut refused = Refusals::default();
@@ -145,6 +148,7 @@ fn plan_case(
         else {
             continue;
         };
+        let parameters = at_load(parameters, load_factor);
         let exact = match catalogue::build(solution.name, &parameters) {
             Ok(exact) => Arc::from(exact),
             Err(refusal) => {
@@ -196,6 +200,7 @@ fn plan_case(
                 element,
                 share: share.unwrap_or(1.0),
                 axial_length,
+                load_factor,
                 levels,
                 criteria,
                 stated_orders: stated.clone(),
@@ -257,6 +262,42 @@ fn share(entry: &CaseEntry, reader: &mut Reader) -> Option<f64> {
         reader,
     );
     None
+}
+
+/// The declared share of the loads, finite and not zero.
+fn load_factor(entry: &CaseEntry, reader: &mut Reader) -> f64 {
+    let Some(declared) = &entry.load_factor else {
+        return 1.0;
+    };
+    let found = match declared.value.within(Dimension::None, &UnitSystem::si()) {
+        Ok(factor) if factor != 0.0 => return factor,
+        Ok(_) => "at the load factor 0 there is nothing to judge".to_string(),
+        Err(found) => found,
+    };
+    refuse(
+        declared,
+        "load-factor",
+        found,
+        "a share of the case's loads, e.g. 0.6",
+        reader,
+    );
+    1.0
+}
+
+/// Pressures and given axial force scaled; a given axial stretch is no load and stays.
+fn at_load(parameters: Parameters, factor: f64) -> Parameters {
+    let ends = match parameters.ends {
+        Ends::GeneralizedPlaneStrain { axial_force } => Ends::GeneralizedPlaneStrain {
+            axial_force: factor * axial_force,
+        },
+        other => other,
+    };
+    Parameters {
+        ends,
+        inner_pressure: factor * parameters.inner_pressure,
+        outer_pressure: factor * parameters.outer_pressure,
+        ..parameters
+    }
 }
 
 fn length(declared: &Placed<Quantity>, suite: &Suite, reader: &mut Reader) -> Option<f64> {

@@ -7,7 +7,8 @@ use crate::mechanics::Point;
 
 /// 17 significant digits: enough to give back the same double.
 pub fn digits17(value: f64) -> String {
-    format!("{value:.16e}")
+    // adding zero makes a negative zero a plain one
+    format!("{:.16e}", value + 0.0)
 }
 
 /// `stations` points from the inner to the outer wall, evenly spaced in R.

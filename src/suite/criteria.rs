@@ -2,11 +2,9 @@
 
 use super::block::{Block, Reader, shown};
 use super::model::{CriterionEntry, LimitKind, Placed, Subject};
-use super::quantity::Quantity;
 use super::read::placed;
 use super::tree::{Node, Value};
 use crate::input::Finding;
-use crate::mechanics::{Dimension, UnitSystem};
 
 /// Reads an `accept` list; a missing one is empty.
 pub(super) fn read_list(
@@ -113,12 +111,6 @@ fn one_of<'a, T: Copy>(
     None
 }
 
-/// A relative limit of one or more: zero everywhere has exactly this error.
-fn accepts_zeros(limit: &Quantity) -> bool {
-    let pure = limit.within(Dimension::None, &UnitSystem::si());
-    limit.dimension() == Dimension::None && pure.is_ok_and(|number| number >= 1.0)
-}
-
 /// Refuses limits that cannot be meant.
 fn sensible(entry: &CriterionEntry, node: &Node, reader: &mut Reader) -> bool {
     let Placed {
@@ -156,13 +148,6 @@ fn sensible(entry: &CriterionEntry, node: &Node, reader: &mut Reader) -> bool {
         (Subject::Error | Subject::Value, _) if entry.by_fit => (
             "`by: fit` is for orders".to_string(),
             "no `by:` here, or `order:`",
-        ),
-        (Subject::Error, _) if accepts_zeros(limit) => (
-            format!(
-                "a relative error of {} is met by a result of zeros",
-                limit.text
-            ),
-            "less than 100 %; write the unit behind a limit on the absolute error",
         ),
         _ => return true,
     };

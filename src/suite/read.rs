@@ -206,6 +206,7 @@ fn read_case(
     let element = take(&mut block, "element").map(|(n, at)| placed(n.clone(), n, &at));
     let section = quantity(&mut block, "section", reader);
     let axial_length = quantity(&mut block, "axial-length", reader);
+    let load_factor = quantity(&mut block, "load-factor", reader);
     let results = text(&mut block, "results", reader);
     let levels = words(&mut block, "levels", reader);
     let h = quantities(&mut block, "h", reader);
@@ -226,6 +227,7 @@ fn read_case(
         element,
         section,
         axial_length,
+        load_factor,
         results,
         levels,
         h,

@@ -39,6 +39,9 @@ pub struct Evidence<'a> {
     pub series: Option<&'a MeasureSeries>,
     /// Relative bound of the exact solution for this measure.
     pub reference_bound: f64,
+    /// What the bound is relative to where the exact number is smaller, in the series' unit: a force that is zero
+    /// is still the balance of forces that are not.
+    pub reference_size: f64,
     /// Appended to the reason of a failed order, e.g. that wall sides are straight.
     pub suspicion: Option<&'a str>,
 }
@@ -61,9 +64,7 @@ pub fn judge(criterion: &Criterion, evidence: Evidence) -> CriterionOutcome {
         return without_number(criterion, None, Verdict::NotRun, "there is no such level");
     };
     match criterion.judged {
-        Judged::Error | Judged::Value => {
-            judge_number(criterion, series, index, evidence.reference_bound)
-        }
+        Judged::Error | Judged::Value => judge_number(criterion, series, index, evidence),
         Judged::Order if criterion.by_fit => order::judge_fit(criterion, series, evidence),
         Judged::Order => order::judge_pair(criterion, series, index, evidence),
     }
@@ -99,7 +100,7 @@ fn judge_number(
     criterion: &Criterion,
     series: &MeasureSeries,
     index: usize,
-    bound: f64,
+    evidence: Evidence,
 ) -> CriterionOutcome {
     let entry = &series.values[index];
     let Some(value) = entry.value.filter(|v| v.is_finite()) else {
@@ -112,9 +113,13 @@ fn judge_number(
     };
     let size = match series.kind {
         Kind::Relative => 1.0,
-        Kind::Absolute | Kind::Value => entry.exact.unwrap_or(0.0).abs(),
+        Kind::Absolute | Kind::Value => entry
+            .exact
+            .unwrap_or(0.0)
+            .abs()
+            .max(evidence.reference_size),
     };
-    let uncertainty = bound * size;
+    let uncertainty = evidence.reference_bound * size;
     let limit = criterion.limit;
     // the distance beyond the limit, negative inside
     let beyond = match criterion.bound {
@@ -138,9 +143,22 @@ fn judge_number(
         ratio: Some(ratio).filter(|r| r.is_finite() && *r >= 0.0),
         verdict,
         reason: number_reason(verdict, criterion, value),
-        note: entry.place.clone(),
+        note: toothless(criterion).or_else(|| entry.place.clone()),
         ..without_number(criterion, Some(&entry.level), verdict, "")
     }
+}
+
+/// A relative limit of one or more is met by a result of zeros, and whoever reads the verdict should know.
+fn toothless(criterion: &Criterion) -> Option<String> {
+    let wide = criterion.judged == Judged::Error
+        && criterion.kind == Kind::Relative
+        && criterion.limit >= 1.0;
+    wide.then(|| {
+        format!(
+            "a result of zeros would meet the limit {}",
+            criterion.limit_text
+        )
+    })
 }
 
 fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String {
@@ -235,6 +253,7 @@ mod tests {
             Evidence {
                 series: Some(&series),
                 reference_bound,
+                reference_size: 0.0,
                 suspicion: None,
             },
         )
@@ -247,6 +266,7 @@ mod tests {
             Evidence {
                 series,
                 reference_bound: 0.0,
+                reference_size: 0.0,
                 suspicion: None,
             },
         )
@@ -292,6 +312,7 @@ mod tests {
             Evidence {
                 series: Some(&s),
                 reference_bound: 0.0,
+                reference_size: 0.0,
                 suspicion: None,
             },
         );

@@ -29,14 +29,32 @@ pub(super) fn judge_pair(
         let reason = "no order between the two finest levels: an error is zero or the mesh size does not fall";
         return without_number(criterion, Some(level), Verdict::Inconclusive, reason);
     };
-    let mut outcome = judge_order(criterion, level, order, 0.0, evidence.suspicion);
+    doubted(
+        judge_order(criterion, level, order, 0.0, evidence.suspicion),
+        used,
+    )
+}
+
+/// A pass that rests on levels which are not in the asymptotic range is none.
+fn doubted(mut outcome: CriterionOutcome, used: &[LevelValue]) -> CriterionOutcome {
     if outcome.verdict == Verdict::Pass
-        && let Some(reason) = not_monotone(used)
+        && let Some(reason) = not_monotone(used).or_else(|| too_fast(&outcome))
     {
         outcome.verdict = Verdict::Inconclusive;
         outcome.reason = format!("{}, but {reason}", outcome.reason);
     }
     outcome
+}
+
+/// Legitimate superconvergence seen so far stays below this above theory (nodes of quadratic elements: about one).
+const SUPERCONVERGENCE: f64 = 1.5;
+
+/// An error that falls much faster than theory says that the coarser mesh is no mesh to judge by.
+fn too_fast(outcome: &CriterionOutcome) -> Option<String> {
+    let (order, theory) = (outcome.value?, outcome.theory?);
+    (order > theory + SUPERCONVERGENCE).then(|| {
+        format!("no element of order {theory} falls like that: the coarser level is not in the asymptotic range, or wrong")
+    })
 }
 
 /// The order fitted over all levels.
@@ -46,6 +64,10 @@ pub(super) fn judge_fit(
     evidence: Evidence,
 ) -> CriterionOutcome {
     let level = series.values.last().map(|v| v.level.as_str());
+    if let Some(gap) = series.values.iter().find(|v| v.value.is_none()) {
+        let reason = format!("no error at level {}: {}", gap.level, missing(gap));
+        return without_number(criterion, level, Verdict::NotRun, &reason);
+    }
     if let Some(reason) = at_round_off(&series.values, series.kind, evidence.reference_bound) {
         return without_number(criterion, level, Verdict::Inconclusive, &reason);
     }
@@ -53,13 +75,11 @@ pub(super) fn judge_fit(
         .fit
         .map(|fit| (fit.order, fit.half_width, fit.levels))
     {
-        Some((order, Some(half_width), _)) => judge_order(
-            criterion,
-            level.unwrap_or(""),
-            order,
-            half_width,
-            evidence.suspicion,
-        ),
+        Some((order, Some(half_width), _)) => {
+            let level = level.unwrap_or("");
+            let judged = judge_order(criterion, level, order, half_width, evidence.suspicion);
+            doubted(judged, &series.values)
+        }
         Some((_, None, levels)) => {
             let reason = format!("a fitted order needs at least 3 levels, there are {levels}");
             without_number(criterion, level, Verdict::Inconclusive, &reason)

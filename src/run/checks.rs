@@ -1,0 +1,159 @@
+//! What a result set must show before it may be judged, and what is noted beside the numbers.
+
+use super::plan::{CasePlan, LevelPlan};
+use crate::exact::Kinematics;
+use crate::input::{Finding, Place, Weight};
+use crate::norms::LevelMeasures;
+use crate::norms::points::PointNorms;
+use crate::results::{ModelKind, ResultSet};
+
+/// How far weights without a mesh may be from the exact body's share.
+const COVER: f64 = 1e-3;
+
+/// Without a mesh the weights are held against the exact body itself: half of the points must not pass for all.
+pub(super) fn covers_without_mesh(
+    case: &CasePlan,
+    set: &ResultSet,
+    norms: &PointNorms,
+) -> Result<(), Vec<Finding>> {
+    let place = Place::file(set.points().map_or(set.shown(), |points| points.file()));
+    let length = match (set.kind(), case.axial_length) {
+        (ModelKind::Planar, _) => 1.0,
+        (_, Some(length)) => length,
+        (_, None) => {
+            let found = "there is no mesh, and the axial length is not declared";
+            let finding = Finding::refused("share-of-body", place, found);
+            return Err(vec![finding.hint(
+                "export nodes.csv and elements.csv, or give `axial-length:`",
+            )]);
+        }
+    };
+    let exact = case.share * case.exact.body().section_area() * length;
+    let found = norms.weight.value();
+    if (found / exact - 1.0).abs() <= COVER {
+        return Ok(());
+    }
+    Err(vec![
+        Finding::refused(
+            "share-of-body",
+            place,
+            format!("the weights add up to {found:.6e}"),
+        )
+        .expected(format!(
+            "{exact:.6e}, the declared share of the exact body, to within {COVER}"
+        ))
+        .hint("export nodes.csv and elements.csv if the sides of the mesh are straight"),
+    ])
+}
+
+/// The mesh is of the declared element, or the orders expected of it mean nothing.
+pub(super) fn check_shape(
+    case: &CasePlan,
+    plan: &LevelPlan,
+    set: &ResultSet,
+) -> Result<(), Vec<Finding>> {
+    let (Some(element), Some(elements)) = (&case.element, set.elements()) else {
+        return Ok(());
+    };
+    let other = elements
+        .shapes_used()
+        .into_iter()
+        .find(|shape| *shape != element.displacement);
+    let Some(other) = other else { return Ok(()) };
+    let index = elements
+        .shapes
+        .iter()
+        .position(|s| *s == other)
+        .unwrap_or(0);
+    let found = format!("element {} is a {}", elements.ids[index], other.name());
+    Err(vec![
+        Finding::refused("declared-element", elements.place(index), found)
+            .expected(format!(
+                "{}, as `element:` of case {} declares",
+                element.displacement.name(),
+                case.id
+            ))
+            .hint(format!(
+                "mend `element:` or the result set in {}",
+                plan.folder
+            )),
+    ])
+}
+
+/// A result set at another load is compared with the wrong state: it is measured, but it can never pass. The reason.
+pub(super) fn check_load(
+    case: &CasePlan,
+    plan: &LevelPlan,
+    set: &ResultSet,
+    findings: &mut Vec<Finding>,
+) -> Option<String> {
+    let factor = set.totals().and_then(|t| t.get("load_factor"))?;
+    if (factor.value - case.load_factor).abs() <= 1e-9 * case.load_factor.abs() {
+        return None;
+    }
+    let found = format!("the load factor is {} in {}", factor.value, plan.folder);
+    findings.push(
+        Finding::new(
+            Weight::Caution,
+            "full-load",
+            factor.place.clone(),
+            found.clone(),
+        )
+        .expected(format!(
+            "{}, at which case {} is judged",
+            case.load_factor, case.id
+        ))
+        .hint("export that load step, name it with `step:`, or declare `load-factor:` in the case"),
+    );
+    Some(format!(
+        "{found}, and the case is judged at {}",
+        case.load_factor
+    ))
+}
+
+/// A slice without szz is judged on what there is, and that is said where it can be seen.
+pub(super) fn note_axial_stress(case: &CasePlan, set: &ResultSet, findings: &mut Vec<Finding>) {
+    let Some(points) = set.points() else { return };
+    let channels = points.channels();
+    let lacks = set.kind() == ModelKind::Planar
+        && channels.stress.is_available()
+        && !channels.components.has(2);
+    if lacks && case.parameters.ends != crate::exact::Ends::PlaneStress {
+        let place = Place::file(points.file()).field("szz");
+        findings.push(
+            Finding::new(
+                Weight::Caution,
+                "axial-stress",
+                place,
+                "the axial stress is not exported, so that no norm of stress holds the code to it",
+            )
+            .expected("a column szz")
+            .hint("export it: it is what the end condition shows in"),
+        );
+    }
+}
+
+pub(super) fn note_outside(
+    case: &CasePlan,
+    plan: &LevelPlan,
+    measures: &LevelMeasures,
+    findings: &mut Vec<Finding>,
+) {
+    if measures.outside == 0 {
+        return;
+    }
+    let continued = match case.exact.kinematics() {
+        Kinematics::Finite | Kinematics::SmallStrain => {
+            "the exact solution's formula is continued there"
+        }
+    };
+    findings.push(Finding::new(
+        Weight::Note,
+        "outside-the-body",
+        Place::file(plan.folder.clone()),
+        format!(
+            "{} of {} quadrature points lie outside the exact body, by {:.2e} {} at most: {continued}",
+            measures.outside, measures.quadrature_points, measures.outside_distance, case.units.length.name
+        ),
+    ));
+}
