@@ -1,8 +1,8 @@
 //! An incompressible hyperelastic tube under inner and outer pressure, at finite strain.
 //!
 //! The wall stays a tube: `r^2 = a^2 + (R^2 - A^2)/lz`, `z = lz Z`. Equilibrium and the end condition are two
-//! equations for the bore and the axial stretch ([`equations`]); their states are followed from the unloaded tube
-//! ([`path`]), solved at the given loads ([`solve`]) and evaluated at points ([`wall_fields`]).
+//! equations for the bore and the axial stretch (`equations`); their states are followed from the unloaded tube
+//! (`path`), solved at the given loads (`solve`) and evaluated at points (`wall_fields`).
 //! Sources: Rivlin, Phil. Trans. R. Soc. A 242 (1949) 173; Ogden, Non-Linear Elastic Deformations (1984),
 //! section 5.3 (from memory). Pressures of any sign; axial force positive in tension.
 
