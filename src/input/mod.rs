@@ -132,13 +132,13 @@ mod tests {
     #[test]
     fn a_finding_names_place_expectation_and_mend() {
         let place = Place::file("nodes.csv").line(7).field("ux");
-        let finding = Finding::refused("finite-numbers", place, "\"nan\" is not a finite number")
+        let finding = Finding::refused("finite-number", place, "\"nan\" is not a finite number")
             .expected("a decimal number such as -1.5e-3")
             .hint("export this node again");
         assert_eq!(
             finding.to_string(),
             "nodes.csv:7: ux: \"nan\" is not a finite number\n  expected: a decimal number such as -1.5e-3\n  \
-             hint: export this node again\n  rule: finite-numbers"
+             hint: export this node again\n  rule: finite-number"
         );
     }
 }

@@ -1,5 +1,6 @@
 //! Everything a suite can name, as text: solutions, materials, elements, measures, units, rules.
 
+use super::rules;
 use crate::elements::{STANDARD_RULES, Shape};
 use crate::exact;
 use crate::materials;
@@ -30,7 +31,7 @@ pub fn text(name: Option<&str>) -> Result<String, String> {
     if let Some(found) = MEASURES.iter().find(|m| m.name == name) {
         return Ok(measure(found));
     }
-    if let Some((rule, meaning)) = RULES.iter().find(|(rule, _)| *rule == name) {
+    if let Some((rule, meaning)) = all_rules().find(|(rule, _)| *rule == name) {
         return Ok(format!("{rule}\n  {meaning}\n"));
     }
     let mut message = format!("there is no entry \"{name}\"");
@@ -50,7 +51,11 @@ fn names() -> impl Iterator<Item = &'static str> {
         .chain(materials)
         .chain(shapes)
         .chain(measures)
-        .chain(RULES.iter().map(|(rule, _)| *rule))
+        .chain(all_rules().map(|(rule, _)| *rule))
+}
+
+fn all_rules() -> impl Iterator<Item = &'static (&'static str, &'static str)> {
+    rules::SUITE.iter().chain(RULES).chain(rules::BODY)
 }
 
 fn everything() -> String {
@@ -93,9 +98,15 @@ fn everything() -> String {
     for (name, meaning) in STANDARD_RULES {
         let _ = writeln!(text, "  {name:<14} {meaning}");
     }
-    text.push_str("\nrules of reading\n");
-    for (rule, meaning) in RULES {
-        let _ = writeln!(text, "  {rule:<24} {meaning}");
+    for (title, list) in [
+        ("the suite", rules::SUITE),
+        ("reading", RULES),
+        ("mesh and body", rules::BODY),
+    ] {
+        let _ = writeln!(text, "\nrules of {title}");
+        for (rule, meaning) in list {
+            let _ = writeln!(text, "  {rule:<24} {meaning}");
+        }
     }
     text.push_str("\n`truebore catalogue NAME` tells more\n");
     text

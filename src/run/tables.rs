@@ -93,7 +93,7 @@ pub fn at_points(
     let unreadable = |e: csv::Error| {
         let line = e.position().map_or(place(), |p| place().line(p.line()));
         vec![
-            Finding::refused("csv-form", line, e.to_string())
+            Finding::refused("csv-syntax", line, e.to_string())
                 .hint("every row needs as many cells as the header"),
         ]
     };
@@ -118,7 +118,7 @@ pub fn at_points(
         outside_distance: 0.0,
     };
     let mut findings = Vec::new();
-    let broken = |e: csv::Error| vec![Finding::refused("csv-form", place(), e.to_string())];
+    let broken = |e: csv::Error| vec![Finding::refused("csv-syntax", place(), e.to_string())];
     writer
         .write_record(headers.iter().chain(appended))
         .map_err(broken)?;
@@ -134,7 +134,7 @@ pub fn at_points(
             if number.is_none() {
                 let at = place().line(line).field(headers.get(column).unwrap_or(""));
                 findings.push(Finding::refused(
-                    "finite-numbers",
+                    "finite-number",
                     at,
                     format!("\"{cell}\" is not a finite number"),
                 ));
@@ -176,7 +176,7 @@ pub fn at_points(
     }
     let bytes = writer
         .into_inner()
-        .map_err(|e| vec![Finding::refused("csv-form", place(), e.to_string())])?;
+        .map_err(|e| vec![Finding::refused("csv-syntax", place(), e.to_string())])?;
     table.csv = String::from_utf8_lossy(&bytes).into_owned();
     Ok(table)
 }
