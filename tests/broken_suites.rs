@@ -400,6 +400,11 @@ const BROKEN: &[(&str, &str, &str)] = &[
         "no order is known to expect of displacement-L2",
     ),
     (
+        "node-tolerance-too-coarse",
+        "cases[0].node-tolerance",
+        "is more than a hundredth of the wall",
+    ),
+    (
         "criterion-unknown-level",
         ":20:58: cases[0].accept[0].level",
         "there is no level \"3\" in this case",

@@ -63,6 +63,8 @@ pub struct Declared {
     /// Share of the section.
     pub share: f64,
     pub axial_length: Option<f64>,
+    /// How far a node may lie off the body, where it is not [`tolerance`].
+    pub node_tolerance: Option<f64>,
 }
 
 /// How far a node may be from where it belongs: a millionth of the wall, and what single precision leaves.
@@ -87,7 +89,7 @@ pub fn compare(
     let look = Look {
         mesh,
         body,
-        slack: tolerance(body),
+        slack: declared.node_tolerance.unwrap_or_else(|| tolerance(body)),
         folder,
     };
     look.nodes_on_body(&mut report);
@@ -158,7 +160,7 @@ impl Look<'_> {
                 report.findings.push(
                     Finding::refused("node-on-body", self.mesh.nodes.place(node), found)
                         .expected(format!("R from {inner} to {outer}, to within {:.1e}", self.slack))
-                        .hint("are these reference coordinates, in the declared unit, about the Z axis, of this case?"),
+                        .hint("are these reference coordinates, in the declared unit, about the Z axis, of this case? a file of few digits needs `node-tolerance:`"),
                 );
             }
         }

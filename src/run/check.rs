@@ -322,6 +322,19 @@ fn declared(case: &CasePlan) -> Vec<Fact> {
             text: rule.value.clone(),
         });
     }
+    if let Some(tolerance) = case.node_tolerance {
+        let text = format!("{tolerance} {}", case.units.length.name);
+        facts.push(Fact {
+            label: "Node tolerance".to_string(),
+            text,
+        });
+    }
+    if case.load_factor != 1.0 {
+        facts.push(Fact {
+            label: "Load factor".to_string(),
+            text: case.load_factor.to_string(),
+        });
+    }
     if let Some(step) = &case.export.step {
         facts.push(Fact {
             label: "Load step".to_string(),

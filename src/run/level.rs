@@ -209,6 +209,7 @@ fn compare_with_body(
     let declared = Declared {
         share: case.share,
         axial_length: case.axial_length,
+        node_tolerance: case.node_tolerance,
     };
     let boundary = sanity::boundary_sides(elements);
     let mesh = Mesh { nodes, elements };

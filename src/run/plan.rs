@@ -43,6 +43,8 @@ pub struct CasePlan {
     pub share: f64,
     /// Declared axial length, for solids.
     pub axial_length: Option<f64>,
+    /// Declared geometric tolerance of nodes.
+    pub node_tolerance: Option<f64>,
     /// Share of the stated loads at which the results are judged; already in `parameters`.
     pub load_factor: f64,
     /// Coarsest first.
@@ -137,6 +139,10 @@ fn plan_case(
         .axial_length
         .as_ref()
         .and_then(|q| length(q, suite, reader));
+    let node_tolerance = entry
+        .node_tolerance
+        .as_ref()
+        .and_then(|q| length(q, suite, reader));
     let load_factor = load_factor(entry, reader);
     let h = sizes(entry, suite, reader);
     let mut folders = BTreeMap::new();
@@ -156,6 +162,7 @@ fn plan_case(
                 continue;
             }
         };
+        too_coarse(entry, node_tolerance, &parameters, reader);
         for element_choice in &elements {
             let element = element_choice
                 .as_ref()
@@ -200,6 +207,7 @@ fn plan_case(
                 element,
                 share: share.unwrap_or(1.0),
                 axial_length,
+                node_tolerance,
                 load_factor,
                 levels,
                 criteria,
@@ -262,6 +270,26 @@ fn share(entry: &CaseEntry, reader: &mut Reader) -> Option<f64> {
         reader,
     );
     None
+}
+
+/// A declared tolerance of nodes must not hide a wrong wall: at most a hundredth of it.
+fn too_coarse(entry: &CaseEntry, tolerance: Option<f64>, p: &Parameters, reader: &mut Reader) {
+    let most = 0.01 * (p.outer_radius - p.inner_radius);
+    if let (Some(declared), Some(tolerance)) = (&entry.node_tolerance, tolerance)
+        && tolerance > most
+    {
+        let found = format!(
+            "\"{}\" is more than a hundredth of the wall",
+            declared.value.text
+        );
+        refuse(
+            declared,
+            "node-tolerance",
+            found,
+            &format!("at most {most}"),
+            reader,
+        );
+    }
 }
 
 /// The declared share of the loads, finite and not zero.

@@ -43,6 +43,10 @@ pub const SUITE: &[(&str, &str)] = &[
         "no-exact-solution",
         "the exact solution exists at these parameters and loads",
     ),
+    (
+        "node-tolerance",
+        "a declared tolerance of nodes is at most a hundredth of the wall",
+    ),
     ("not-utf8", "a suite is UTF-8 text"),
     (
         "off-the-body",

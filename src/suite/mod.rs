@@ -3,6 +3,7 @@
 mod block;
 mod criteria;
 mod export;
+mod materials;
 pub mod model;
 pub mod quantity;
 pub mod read;

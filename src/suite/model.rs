@@ -47,6 +47,8 @@ pub struct CaseEntry {
     /// Modelled share of the section.
     pub section: Option<Placed<Quantity>>,
     pub axial_length: Option<Placed<Quantity>>,
+    /// How far a node may lie off the body; a default from the wall thickness where it is not given.
+    pub node_tolerance: Option<Placed<Quantity>>,
     /// Share of the stated loads that the result sets are at; 1 where it is not given.
     pub load_factor: Option<Placed<Quantity>>,
     /// Folder of a result set, with `{...}` to fill in.

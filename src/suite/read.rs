@@ -3,7 +3,7 @@
 use super::block::{Block, Reader};
 use super::model::*;
 use super::tree::{Node, Value};
-use super::{criteria, export, tree};
+use super::{criteria, export, materials, tree};
 use crate::input::Finding;
 use crate::mechanics::UnitSystem;
 use std::collections::BTreeMap;
@@ -60,7 +60,7 @@ fn read_suite(root: &Node, reader: &mut Reader) -> Option<Suite> {
             reader,
             "named materials, e.g. soft: { neo-Hookean: { mu: 0.4 } }",
         )
-        .map(|n| read_materials(n, reader))
+        .map(|n| materials::read_all(n, reader))
         .unwrap_or_default();
     let accept = criteria::read_list(block.optional("accept"), "accept", reader);
     let export = export::read_keys(&mut block, reader);
@@ -108,47 +108,6 @@ pub(super) fn placed<T>(value: T, node: &Node, path: &str) -> Placed<T> {
         column: node.column,
         path: path.to_string(),
     }
-}
-
-fn read_materials(node: &Node, reader: &mut Reader) -> Vec<MaterialEntry> {
-    let Value::Map(entries) = &node.value else {
-        let found = format!("found {}", node.kind());
-        reader
-            .refuse("wrong-type", node, "materials", found)
-            .expected = "a block of named materials".into();
-        return Vec::new();
-    };
-    entries
-        .iter()
-        .filter_map(|(key, node)| read_material(&key.name, node, reader))
-        .collect()
-}
-
-fn read_material(name: &str, node: &Node, reader: &mut Reader) -> Option<MaterialEntry> {
-    let path = format!("materials.{name}");
-    let (law, constants) = reader.variant(node, &path)?;
-    let law_path = format!("{path}.{law}");
-    let mut read = Vec::new();
-    if let Some(constants) = constants {
-        let Value::Map(entries) = &constants.value else {
-            let found = format!("found {}", constants.kind());
-            reader
-                .refuse("wrong-type", constants, &law_path, found)
-                .expected = "a block of constants".into();
-            return None;
-        };
-        for (key, value) in entries {
-            let at = format!("{law_path}.{}", key.name);
-            if let Some(quantity) = reader.quantity(value, &at) {
-                read.push((placed(key.name.clone(), value, &at), quantity));
-            }
-        }
-    }
-    Some(MaterialEntry {
-        name: name.to_string(),
-        law: placed(law, node, &law_path),
-        constants: read,
-    })
 }
 
 fn read_cases(
@@ -206,6 +165,7 @@ fn read_case(
     let element = take(&mut block, "element").map(|(n, at)| placed(n.clone(), n, &at));
     let section = quantity(&mut block, "section", reader);
     let axial_length = quantity(&mut block, "axial-length", reader);
+    let node_tolerance = quantity(&mut block, "node-tolerance", reader);
     let load_factor = quantity(&mut block, "load-factor", reader);
     let results = text(&mut block, "results", reader);
     let levels = words(&mut block, "levels", reader);
@@ -227,6 +187,7 @@ fn read_case(
         element,
         section,
         axial_length,
+        node_tolerance,
         load_factor,
         results,
         levels,
