@@ -4,6 +4,7 @@ use super::facts;
 use super::plan::{CasePlan, Plan};
 use crate::elements::Shape;
 use crate::exact::{Ends, Kinematics};
+use crate::mechanics::StressMeasure;
 use crate::norms::catalogue;
 use crate::verdict::outcome::Judged;
 use std::fmt::Write;
@@ -50,10 +51,15 @@ fn brief_case(case: &CasePlan) -> String {
         "totals.csv",
         format!("quantity,value  with {}", totals(case).join(", ")),
     ));
+    let reading = super::level::reading(case);
+    lines.push(("as declared", reading.conventions.describe()));
+    let (length, stress) = (
+        reading.units_from.length.name,
+        reading.units_from.stress.name,
+    );
     lines.push((
         "",
-        "Cauchy stress, tension positive; p = -tr(sigma)/3; W per reference volume; J = det F;"
-            .to_string(),
+        format!("files in {length} and {stress}; W per reference volume; J = det F;"),
     ));
     lines.push((
         "",
@@ -80,10 +86,15 @@ fn constants(case: &CasePlan) -> String {
     let unit = case.units.stress.name;
     format!(
         "small-strain constants: shear modulus {} {unit}, Young's modulus {} {unit}, Poisson's ratio {}",
-        m.shear_modulus(),
-        m.young_modulus(),
+        twelve(m.shear_modulus()),
+        twelve(m.young_modulus()),
         m.poisson_ratio()
     )
+}
+
+/// A derived constant without the noise of its last digits.
+fn twelve(value: f64) -> f64 {
+    format!("{value:.11e}").parse().unwrap_or(value)
 }
 
 fn load(case: &CasePlan) -> String {
@@ -153,20 +164,34 @@ fn dimensions(case: &CasePlan) -> Vec<usize> {
         .map_or(vec![2, 3], |e| vec![e.displacement.dimension()])
 }
 
+/// Whether the model is asked for in three dimensions.
+fn solid(case: &CasePlan) -> bool {
+    dimensions(case).contains(&3)
+}
+
+/// Names of the exchange format as the case's own headers.
+fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
+    let header = |name: &&str| {
+        let columns = &case.export.columns;
+        let find = |of: &str| columns.iter().find(|(t, n, _)| t == of && n == name);
+        find(table)
+            .or_else(|| find(""))
+            .map_or(name.to_string(), |(_, _, header)| header.value.clone())
+    };
+    names.iter().map(header).collect::<Vec<_>>().join(",")
+}
+
 /// Header of nodes.csv.
 pub fn nodes_header(case: &CasePlan) -> String {
-    let solid = dimensions(case).contains(&3);
-    let header = if solid {
-        "node,X,Y,Z,ux,uy,uz"
+    let mut names = if solid(case) {
+        vec!["node", "X", "Y", "Z", "ux", "uy", "uz"]
     } else {
-        "node,X,Y,ux,uy"
+        vec!["node", "X", "Y", "ux", "uy"]
     };
-    let nodal = case.criteria.iter().any(|c| c.measure.ends_with("-nodal"));
-    match (nodal, solid) {
-        (false, _) => header.to_string(),
-        (true, false) => format!("{header},sxx,syy,szz,sxy"),
-        (true, true) => format!("{header},sxx,syy,szz,sxy,syz,szx"),
+    if case.criteria.iter().any(|c| c.measure.ends_with("-nodal")) {
+        names.extend(stress_columns(case));
     }
+    declared(case, "nodes", &names)
 }
 
 /// Header of elements.csv.
@@ -176,15 +201,58 @@ pub fn elements_header(case: &CasePlan) -> String {
         .as_ref()
         .map_or(Shape::Hex27.node_count(), |e| e.displacement.node_count());
     let columns: Vec<_> = (1..=nodes).map(|i| format!("n{i}")).collect();
-    format!("element,shape,{}", columns.join(","))
+    let names: Vec<&str> = ["element", "shape"]
+        .into_iter()
+        .chain(columns.iter().map(String::as_str))
+        .collect();
+    declared(case, "elements", &names)
 }
 
 /// Header of points.csv.
 pub fn points_header(case: &CasePlan) -> String {
-    if dimensions(case).contains(&3) {
-        "element,point,X,Y,Z,weight,sxx,syy,szz,sxy,syz,szx,p,J,W".to_string()
+    let mut names = vec!["element", "point", "X", "Y"];
+    if solid(case) {
+        names.push("Z");
+    }
+    names.push("weight");
+    names.extend(stress_columns(case));
+    // J may already stand with the stress that it converts
+    names.extend(
+        ["p", "J", "W"]
+            .into_iter()
+            .filter(|name| !names.contains(name))
+            .collect::<Vec<_>>(),
+    );
+    declared(case, "points", &names)
+}
+
+/// The columns of the declared stress measure, with the deformation gradient where it is needed to convert.
+fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
+    let cauchy: &[&str] = if solid(case) {
+        &["sxx", "syy", "szz", "sxy", "syz", "szx"]
     } else {
-        "element,point,X,Y,weight,sxx,syy,szz,sxy,p,J,W".to_string()
+        &["sxx", "syy", "szz", "sxy"]
+    };
+    let (piola, gradient): (&[&str], &[&str]) = if solid(case) {
+        (
+            &[
+                "P11", "P12", "P13", "P21", "P22", "P23", "P31", "P32", "P33",
+            ],
+            &[
+                "F11", "F12", "F13", "F21", "F22", "F23", "F31", "F32", "F33",
+            ],
+        )
+    } else {
+        (
+            &["P11", "P12", "P21", "P22", "P33"],
+            &["F11", "F12", "F21", "F22", "F33"],
+        )
+    };
+    match super::level::reading(case).conventions.stress {
+        StressMeasure::Cauchy => cauchy.to_vec(),
+        StressMeasure::Kirchhoff => [cauchy, &["J"]].concat(),
+        StressMeasure::FirstPiolaKirchhoff => [piola, gradient].concat(),
+        StressMeasure::SecondPiolaKirchhoff => [cauchy, gradient].concat(),
     }
 }
 
