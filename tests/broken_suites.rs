@@ -401,8 +401,8 @@ const BROKEN: &[(&str, &str, &str)] = &[
     ),
     (
         "node-tolerance-too-coarse",
-        "cases[0].node-tolerance",
-        "is more than a hundredth of the wall",
+        ":17:21: cases[0].node-tolerance",
+        "is more than a hundredth of a wall",
     ),
     (
         "criterion-unknown-level",

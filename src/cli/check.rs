@@ -118,6 +118,10 @@ fn run_one(
         }
     };
     progress.clear();
+    let (read, named) = result_sets(&outcome);
+    eprint(&format!(
+        "{read} of {named} result sets read and measured\n"
+    ));
     if let Err(finding) = files::write_together(&out, &reports(&outcome)) {
         return refuse(&[finding]);
     }
@@ -132,6 +136,15 @@ fn run_one(
         format!("{table}reports in {}\n", out.display())
     };
     print(&said, exit_of(&outcome))
+}
+
+/// How many result sets were there, of how many that are named.
+fn result_sets(outcome: &Outcome) -> (usize, usize) {
+    let levels = || outcome.cases.iter().flat_map(|case| &case.levels);
+    (
+        levels().filter(|level| level.missing.is_none()).count(),
+        levels().count(),
+    )
 }
 
 /// Every report that is a file, with its name.
@@ -169,8 +182,6 @@ impl Progress for Line {
     fn step(&self, done: usize, all: usize, what: &str) {
         if self.live {
             eprint(&format!("\r\x1b[Kresult set {done} of {all}: {what}"));
-        } else if done == all {
-            eprint(&format!("{all} result sets read and measured\n"));
         }
     }
 }

@@ -162,7 +162,20 @@ impl UnitSystem {
         }
     }
 
-    /// The unit's name as reports print it, e.g. `MPa mm^2` for a force.
+    /// `N`, `mN` or `kN` (and `J`, `mJ`, `kJ`) where this system's unit is that, else the product written out.
+    fn product(&self, dimension: Dimension, base: &str, power: u32) -> String {
+        let in_si = self.factor_to(&UnitSystem::si(), dimension);
+        let near = |factor: f64| (in_si / factor - 1.0).abs() < 1e-12;
+        let prefix = [("", 1.0), ("m", 1e-3), ("k", 1e3)]
+            .into_iter()
+            .find(|(_, factor)| near(*factor));
+        match prefix {
+            Some((prefix, _)) => format!("{prefix}{base}"),
+            None => format!("{} {}^{power}", self.stress.name, self.length.name),
+        }
+    }
+
+    /// The unit's name as reports print it: `N` for a force in MPa and mm, `psi in^2` in psi and inch.
     pub fn name_of(&self, dimension: Dimension) -> String {
         let (l, s) = (self.length.name, self.stress.name);
         match dimension {
@@ -172,8 +185,10 @@ impl UnitSystem {
             Dimension::None => "1".to_string(),
             Dimension::Area => format!("{l}^2"),
             Dimension::Volume => format!("{l}^3"),
-            Dimension::Force | Dimension::EnergyPerLength => format!("{s} {l}^2"),
-            Dimension::Energy => format!("{s} {l}^3"),
+            Dimension::Force => self.product(dimension, "N", 2),
+            // joule per metre of length, which is a newton
+            Dimension::EnergyPerLength => self.product(dimension, "J/m", 2),
+            Dimension::Energy => self.product(dimension, "J", 3),
         }
     }
 }
@@ -230,7 +245,11 @@ mod tests {
         let si = UnitSystem::si();
         assert!((suite.factor_to(&si, Dimension::Force) - 1.0).abs() < 1e-15);
         assert!((suite.factor_to(&si, Dimension::Energy) - 1e-3).abs() < 1e-18);
-        assert_eq!(suite.name_of(Dimension::Force), "MPa mm^2");
+        assert_eq!(suite.name_of(Dimension::Force), "N");
+        assert_eq!(suite.name_of(Dimension::EnergyPerLength), "J/m");
+        assert_eq!(suite.name_of(Dimension::Energy), "mJ");
+        let inches = UnitSystem::of("in", "psi").unwrap();
+        assert_eq!(inches.name_of(Dimension::Force), "psi in^2");
         assert!(UnitSystem::of("MPa", "mm").is_none());
     }
 }

@@ -59,7 +59,7 @@ pub const MEASURES: &[Measure] = measures! {
         "the same of p = -tr(sigma)/3"
         "points: weight, X Y [Z], p or sxx syy szz";
     "volume-ratio-L2" "Volume ratio, L2" "volume ratio" Gradient None
-        "the same of J; relative to that of the exact J (one, when incompressible)"
+        "the same of J; relative to that of the exact J - 1, or of one where the exact volume does not change"
         "points: weight, X Y [Z], J";
     "energy-density-L2" "Energy density, L2" "energy density" Stress EnergyDensity
         "the same of the strain energy per reference volume"

@@ -226,10 +226,11 @@ impl<'a> Level<'a> {
             Some(why) if channels.stress.is_available() => Channel::Missing(why),
             _ => channels.stress.clone(),
         };
+        let (volume, against) = points.volume();
         let all = [
             (&stress_channel, &points.stress, Some(compared)),
             (&channels.p, &points.pressure, None),
-            (&channels.j, &points.volume_ratio, None),
+            (&channels.j, volume, Some(against.to_string())),
             (&channels.w, &points.energy_density, None),
         ];
         for ((name, dimension), (channel, norm, note)) in FIELDS.into_iter().zip(all) {

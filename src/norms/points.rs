@@ -17,6 +17,9 @@ const BLOCK: usize = 512;
 pub struct PointNorms {
     pub stress: SquaredError,
     pub pressure: SquaredError,
+    /// Of J, against the size of the exact J - 1.
+    pub volume_change: SquaredError,
+    /// Of J, against the size of the exact J: what remains where the exact volume does not change.
     pub volume_ratio: SquaredError,
     pub energy_density: SquaredError,
     pub points: u64,
@@ -44,9 +47,18 @@ pub struct KeptPoint {
 }
 
 impl PointNorms {
+    /// The norm of J and what it is relative to: where the exact volume changes, an error is judged by that change.
+    pub fn volume(&self) -> (&SquaredError, &'static str) {
+        match self.volume_change.finish() {
+            Ok(norm) if norm.exact > 0.0 => (&self.volume_change, "relative to J - 1"),
+            _ => (&self.volume_ratio, "relative to J = 1"),
+        }
+    }
+
     fn merge(&mut self, later: Self) {
         self.stress.merge(&later.stress);
         self.pressure.merge(&later.pressure);
+        self.volume_change.merge(&later.volume_change);
         self.volume_ratio.merge(&later.volume_ratio);
         self.energy_density.merge(&later.energy_density);
         self.points += later.points;
@@ -148,6 +160,13 @@ fn add_row(norms: &mut PointNorms, block: &PointBlock, row: usize, state: &State
         let (distance, size) =
             stress_squares(&stress[row], &state.stress.to_array(), block.components);
         norms.stress.add(weight, distance, size);
+    }
+    if let Some(j) = &block.j {
+        let change = state.volume_ratio - 1.0;
+        let miss = j[row] - state.volume_ratio;
+        norms
+            .volume_change
+            .add(weight, miss * miss, change * change);
     }
     let scalars = [
         (&block.p, state.pressure, &mut norms.pressure),

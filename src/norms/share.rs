@@ -29,6 +29,7 @@ impl Look<'_> {
             );
             return;
         }
+        self.angle(declared, report);
         let allowed = 1.2 * self.cut_off(boundary, declared.share * report.axial_length)
             + 2e-6 * report.exact_volume;
         let excess = (mesh_volume - report.exact_volume).abs();
@@ -48,6 +49,43 @@ impl Look<'_> {
             )
             .expected(format!("a meshed volume of {:.6e}, found {mesh_volume:.6e}", report.exact_volume))
             .hint("is `section:` right, and is the mesh whole, without overlaps and gaps?"),
+        );
+    }
+
+    /// A sector spans its share of the turn: the same sector meshed twice would have the volume, not the angle.
+    fn angle(&self, declared: Declared, report: &mut BodyReport) {
+        let turn = 2.0 * std::f64::consts::PI;
+        if declared.share >= 1.0 || self.mesh.kind() == ModelKind::Axisymmetric {
+            return;
+        }
+        let mut angles: Vec<f64> = (0..self.mesh.nodes.len())
+            .map(|node| self.mesh.node(node).theta())
+            .collect();
+        angles.sort_by(f64::total_cmp);
+        let (Some(first), Some(last)) = (angles.first(), angles.last()) else {
+            return;
+        };
+        let across = first + turn - last;
+        let gap = angles
+            .windows(2)
+            .map(|pair| pair[1] - pair[0])
+            .fold(across, f64::max);
+        let (found, wanted) = (turn - gap, declared.share * turn);
+        let Body::Tube { inner, .. } = self.body;
+        if (found - wanted).abs() <= 1e-3 * wanted + 4.0 * self.slack / inner {
+            return;
+        }
+        let text = format!(
+            "the mesh spans {:.3} deg about the axis",
+            found.to_degrees()
+        );
+        report.findings.push(
+            Finding::refused("sector-angle", self.place("nodes.csv"), text)
+                .expected(format!(
+                    "{:.3} deg, the declared share of the turn",
+                    wanted.to_degrees()
+                ))
+                .hint("is `section:` right, and is no part of the section meshed twice?"),
         );
     }
 

@@ -134,11 +134,16 @@ fn table(outcome: &Outcome, look: Look) -> String {
     }
     let fixed = |width| ColumnConstraint::Absolute(Width::Fixed(width));
     let number = 2 + outcome.cases.len().to_string().len().max(3) as u16;
+    let case = case_width(look) as u16 + 2;
+    let tightest = (look.width as u16)
+        .saturating_sub(5 + 14 + number + case + 12 + BETWEEN)
+        .max(7);
     for (k, width) in [
         (0, 5),
         (1, 14),
         (2, number),
-        (3, case_width(look) as u16 + 2),
+        (3, case),
+        (4, tightest),
         (5, 12),
     ] {
         if let Some(column) = table.column_mut(k) {
@@ -188,9 +193,12 @@ fn row(number: usize, case: &CaseOutcome, width: usize) -> Row {
     ])
 }
 
-/// Columns of a case's id in the table: 25 on the usual 80.
+/// What the table itself puts between its six columns.
+const BETWEEN: u16 = 5;
+
+/// Columns of a case's id in the table: 22 on the usual 80.
 fn case_width(look: Look) -> usize {
-    look.width.saturating_sub(55).clamp(10, 42)
+    look.width.saturating_sub(58).clamp(10, 42)
 }
 
 /// An id over several lines, broken behind its hyphens where possible.

@@ -35,7 +35,12 @@ pub fn escape(text: &str) -> String {
 pub fn sentence(text: &str) -> String {
     let text = text.trim();
     let mut chars = text.chars();
+    let is_name = text
+        .split_whitespace()
+        .next()
+        .is_some_and(|word| word.contains(['/', '.', '_']));
     let mut out: String = match chars.next() {
+        Some(first) if is_name => std::iter::once(first).chain(chars).collect(),
         Some(first) => first.to_uppercase().chain(chars).collect(),
         None => return String::new(),
     };

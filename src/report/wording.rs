@@ -136,11 +136,14 @@ pub fn name(criterion: &CriterionOutcome) -> String {
 
 /// The value of a criterion with its uncertainty and unit.
 pub fn value(criterion: &CriterionOutcome, voice: Voice) -> Option<String> {
-    let value = criterion.value?;
+    // in percent where the limit is, so that the two can be compared at a glance
+    let percent = criterion.limit_text.trim().ends_with('%');
+    let scale = if percent { 100.0 } else { 1.0 };
+    let value = scale * criterion.value?;
     let order = (criterion.judged == Judged::Order).then_some(2);
     // an uncertainty below half of the third digit would only lengthen the number
     let visible = |u: &f64| *u > 5e-4 * value.abs();
-    let number = match criterion.uncertainty.filter(visible) {
+    let number = match criterion.uncertainty.map(|u| scale * u).filter(visible) {
         Some(half_width) => {
             let (value, half_width) = with_uncertainty(value, half_width, order);
             let sign = format!("{THIN}±{THIN}");
@@ -152,16 +155,23 @@ pub fn value(criterion: &CriterionOutcome, voice: Voice) -> Option<String> {
         }
         None => (voice.number)(&order.map_or(Number::three(value), |_| Number::fixed(value, 2))),
     };
-    Some(with_unit(number, &criterion.unit, voice))
+    Some(match percent {
+        true => format!("{number}{NBSP}%"),
+        false => with_unit(number, &criterion.unit, voice),
+    })
 }
 
 /// The limit as the suite wrote it; an order's as "≥ 3 − 0.2".
 pub fn limit(criterion: &CriterionOutcome, voice: Voice) -> String {
-    let text = with_unit(
-        limit_number(&criterion.limit_text, voice),
-        &criterion.unit,
-        voice,
-    );
+    // a limit that was written with its unit is printed as it was written
+    let written = criterion.limit_text.trim();
+    let has_unit = written.ends_with('%') || written.contains(char::is_whitespace);
+    let number = limit_number(&criterion.limit_text, voice);
+    let text = if has_unit {
+        number
+    } else {
+        with_unit(number, &criterion.unit, voice)
+    };
     match (criterion.bound, criterion.theory) {
         (Bound::AtMost, _) => text,
         (Bound::AtLeast, _) => format!("≥{THIN}{text}"),

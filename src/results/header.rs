@@ -243,7 +243,11 @@ pub(crate) fn check_mapping(
                 && tables
                     .iter()
                     .any(|&t| own_names(columns, t).contains_key(canonical));
-            if !found && !overridden {
+            // a table that is missing may be the one the column stands in; what needs it will say so
+            let could_be_missing = tables.iter().any(|t| {
+                canonical_names(*t).contains(canonical) && !headers.iter().any(|h| h.table == *t)
+            });
+            if !found && !overridden && !could_be_missing {
                 let what = format!("no table has the column \"{header}\" declared for {canonical}");
                 log.add(Finding::refused("mapped-column-found", place, what));
             }
@@ -319,6 +323,8 @@ mod tests {
         let mut columns = ColumnNames::default();
         columns.all.insert("ux".into(), "U1".into());
         columns.nodes.insert("banana".into(), "node".into());
+        columns.nodes.insert("uy".into(), "U2".into());
+        // points.csv is not there: its columns are not looked for
         columns.points.insert("p".into(), "press".into());
         let h = header(&["node", "U1"], &columns);
         let mut log = Log::new();

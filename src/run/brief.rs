@@ -53,13 +53,17 @@ fn brief_case(case: &CasePlan) -> String {
     ));
     let reading = super::level::reading(case);
     lines.push(("as declared", reading.conventions.describe()));
+    let j = match case.exact.kinematics() {
+        Kinematics::Finite => "det F",
+        Kinematics::SmallStrain => "1 + tr(epsilon)",
+    };
     let (length, stress) = (
         reading.units_from.length.name,
         reading.units_from.stress.name,
     );
     lines.push((
         "",
-        format!("files in {length} and {stress}; W per reference volume; J = det F;"),
+        format!("files in {length} and {stress}; W per reference volume; J = {j};"),
     ));
     lines.push((
         "",
@@ -112,13 +116,17 @@ fn ends(case: &CasePlan) -> String {
         Ends::PlaneStrain => "slice: plane strain; solid: no axial displacement at both end faces",
         Ends::GeneralizedPlaneStrain { .. } => {
             "slice: one axial stretch for the whole wall as an unknown; solid: end faces stay plane and parallel, \
-             one face with no axial displacement"
+             no axial displacement at Z = 0"
+        }
+        Ends::Closed if case.exact.kinematics() == Kinematics::SmallStrain => {
+            "the net axial force on the wall is inner pressure x pi A^2 - outer pressure x pi B^2 with the given \
+             radii A, B; end faces stay plane and parallel; solid: no axial displacement at Z = 0"
         }
         Ends::Closed => {
             "the net axial force on the wall is inner pressure x pi a^2 - outer pressure x pi b^2 with the deformed \
-             radii a, b; end faces stay plane and parallel"
+             radii a, b; end faces stay plane and parallel; solid: no axial displacement at Z = 0"
         }
-        Ends::FixedStretch { .. } => "slice: this axial stretch everywhere; solid: end faces moved apart by it",
+        Ends::FixedStretch { .. } => "slice: this axial stretch everywhere; solid: end faces moved apart by it, no axial displacement at Z = 0",
         Ends::PlaneStress => "slice: plane stress; solid: end faces free",
     }
     .to_string()

@@ -1,6 +1,6 @@
 //! Everything a suite can name, as text: solutions, materials, elements, measures, units, rules.
 
-use super::rules;
+use super::{format_pages, rules};
 use crate::elements::{STANDARD_RULES, Shape};
 use crate::exact;
 use crate::materials;
@@ -19,6 +19,11 @@ pub fn text(name: Option<&str>) -> Result<String, String> {
     let Some(name) = name else {
         return Ok(everything());
     };
+    match name {
+        "columns" => return Ok(format_pages::COLUMNS.to_string()),
+        "suite" => return Ok(format_pages::SUITE.to_string()),
+        _ => {}
+    }
     if let Some(entry) = exact::find(name) {
         return Ok(solution(entry));
     }
@@ -47,7 +52,9 @@ fn names() -> impl Iterator<Item = &'static str> {
     let materials = materials::entries().iter().map(|e| e.name);
     let shapes = Shape::ALL.into_iter().map(Shape::name);
     let measures = MEASURES.iter().map(|m| m.name);
-    solutions
+    ["columns", "suite"]
+        .into_iter()
+        .chain(solutions)
         .chain(materials)
         .chain(shapes)
         .chain(measures)
@@ -108,6 +115,7 @@ fn everything() -> String {
             let _ = writeln!(text, "  {rule:<24} {meaning}");
         }
     }
+    text.push_str("\npages\n  columns            columns of the tables\n  suite              keys of a suite\n");
     text.push_str("\n`truebore catalogue NAME` tells more\n");
     text
 }
@@ -136,7 +144,7 @@ fn solution(entry: &exact::Entry) -> String {
 
 fn material(entry: &materials::Entry) -> String {
     let mut text = format!(
-        "{}\n  W = {}\n  {}\n\nconstants\n",
+        "{}\n  {}\n  {}\n\nconstants\n",
         entry.name, entry.formula, entry.convention
     );
     for p in entry.parameters {

@@ -1,5 +1,6 @@
 //! The main job: every result set measured, every criterion judged, everything recorded.
 
+use super::checks;
 use super::facts;
 use super::level::{self, LevelResult};
 use super::plan::{CasePlan, LevelPlan, Plan};
@@ -64,7 +65,7 @@ pub fn check(
         }
     }
     for (case, levels) in plan.cases.iter().zip(&by_case) {
-        refused.extend(declared_sizes(case, levels));
+        refused.extend(checks::declared_sizes(case, levels));
     }
     if !refused.is_empty() {
         refused.dedup();
@@ -117,33 +118,6 @@ pub fn check(
         cases,
         inputs,
     })
-}
-
-/// How far a declared ratio of mesh sizes may be from that of the meshes.
-const SIZE_RATIO: f64 = 0.2;
-
-/// Declared mesh sizes must fall as the meshes themselves do, or any order could be had by declaring it.
-fn declared_sizes(case: &CasePlan, levels: &[LevelResult]) -> Option<Finding> {
-    for (pair, declared) in levels.windows(2).zip(case.levels.windows(2)) {
-        let (Some(h1), Some(h2)) = (declared[0].h, declared[1].h) else {
-            continue;
-        };
-        let (Some(m1), Some(m2)) = (pair[0].mesh_size, pair[1].mesh_size) else {
-            continue;
-        };
-        let (ratio, own) = (h1 / h2, m1 / m2);
-        if (ratio / own - 1.0).abs() > SIZE_RATIO {
-            let found = format!(
-                "`h:` falls by {ratio:.3} from level {} to {}, the mesh itself by {own:.3}",
-                declared[0].name, declared[1].name
-            );
-            let finding = Finding::refused("mesh-sizes", case.place.clone(), found);
-            return Some(
-                finding.hint("leave `h:` out: (volume / elements)^(1/dimension) is used then"),
-            );
-        }
-    }
-    None
 }
 
 fn file_name(path: &str) -> String {
@@ -276,6 +250,19 @@ fn case_verdict(
             "level {} of case {} was not run",
             missing.join(", "),
             case.id
+        );
+        return (Verdict::NotRun, Some(reason));
+    }
+    // nor do levels of different load steps, unless each says that it is at the case's load
+    let read = || levels.iter().filter(|l| l.outcome.missing.is_none());
+    let same = read().all(|l| l.outcome.step == levels[0].outcome.step);
+    if verdict == Verdict::Pass && !same && read().any(|l| !l.load_confirmed) {
+        let steps: Vec<_> = read()
+            .map(|l| l.outcome.step.map_or("none".to_string(), |s| s.to_string()))
+            .collect();
+        let reason = format!(
+            "the levels were judged at different load steps ({}), and no load_factor says that each is at the case's load",
+            steps.join(", ")
         );
         return (Verdict::NotRun, Some(reason));
     }

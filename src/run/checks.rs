@@ -1,5 +1,6 @@
 //! What a result set must show before it may be judged, and what is noted beside the numbers.
 
+use super::level::LevelResult;
 use super::plan::{CasePlan, LevelPlan};
 use crate::exact::Kinematics;
 use crate::input::{Finding, Place, Weight};
@@ -87,7 +88,20 @@ pub(super) fn check_load(
     set: &ResultSet,
     findings: &mut Vec<Finding>,
 ) -> Option<String> {
-    let factor = set.totals().and_then(|t| t.get("load_factor"))?;
+    let Some(factor) = set.totals().and_then(|t| t.get("load_factor")) else {
+        if let Some(step) = set.step().filter(|_| set.steps().len() > 1) {
+            let found = format!(
+                "step {step} of {} is judged, and no load_factor says that it is the case's load",
+                set.steps().len()
+            );
+            let place = Place::file(plan.folder.clone());
+            let finding = Finding::new(Weight::Caution, "full-load", place, found);
+            findings.push(
+                finding.hint("export load_factor in totals.csv, or name the step with `step:`"),
+            );
+        }
+        return None;
+    };
     if (factor.value - case.load_factor).abs() <= 1e-9 * case.load_factor.abs() {
         return None;
     }
@@ -109,6 +123,34 @@ pub(super) fn check_load(
         "{found}, and the case is judged at {}",
         case.load_factor
     ))
+}
+
+/// In a solid the exact axial displacement is counted from Z = 0, and a model held elsewhere differs by a rigid shift.
+pub(super) fn note_axial_origin(
+    case: &CasePlan,
+    plan: &LevelPlan,
+    set: &ResultSet,
+    findings: &mut Vec<Finding>,
+) {
+    let Some(nodes) = set.nodes().filter(|_| set.kind() != ModelKind::Planar) else {
+        return;
+    };
+    let nearest = nodes
+        .positions
+        .iter()
+        .map(|p| p[2].abs())
+        .fold(f64::INFINITY, f64::min);
+    if nearest > 1e-6 * case.exact.body().thickness()
+        && case.parameters.ends != crate::exact::Ends::PlaneStrain
+    {
+        let place = Place::file(plan.folder.clone());
+        let found = "no node lies at Z = 0, from where the exact axial displacement is counted";
+        findings.push(
+            Finding::new(Weight::Caution, "axial-origin", place, found).hint(
+                "put the face that does not move axially at Z = 0, or shift Z and uz on export",
+            ),
+        );
+    }
 }
 
 /// A slice without szz is judged on what there is, and that is said where it can be seen.
@@ -156,4 +198,31 @@ pub(super) fn note_outside(
             measures.outside, measures.quadrature_points, measures.outside_distance, case.units.length.name
         ),
     ));
+}
+
+/// How far a declared ratio of mesh sizes may be from that of the meshes.
+const SIZE_RATIO: f64 = 0.2;
+
+/// Declared mesh sizes must fall as the meshes themselves do, or any order could be had by declaring it.
+pub(super) fn declared_sizes(case: &CasePlan, levels: &[LevelResult]) -> Option<Finding> {
+    for (pair, declared) in levels.windows(2).zip(case.levels.windows(2)) {
+        let (Some(h1), Some(h2)) = (declared[0].h, declared[1].h) else {
+            continue;
+        };
+        let (Some(m1), Some(m2)) = (pair[0].mesh_size, pair[1].mesh_size) else {
+            continue;
+        };
+        let (ratio, own) = (h1 / h2, m1 / m2);
+        if (ratio / own - 1.0).abs() > SIZE_RATIO {
+            let found = format!(
+                "`h:` falls by {ratio:.3} from level {} to {}, the mesh itself by {own:.3}",
+                declared[0].name, declared[1].name
+            );
+            let finding = Finding::refused("mesh-sizes", case.place.clone(), found);
+            return Some(
+                finding.hint("leave `h:` out: (volume / elements)^(1/dimension) is used then"),
+            );
+        }
+    }
+    None
 }

@@ -56,6 +56,9 @@ fn describe(case: &CasePlan, result: &LevelResult, text: &mut String) {
         "    {} nodes, {} elements{dimension} ({}), {} integration points",
         o.nodes, o.elements, o.shapes, o.points
     );
+    if let Some(step) = o.step {
+        let _ = writeln!(text, "    load step {step}");
+    }
     if let (Some(volume), Some(exact)) = (o.volume, o.exact_volume) {
         let h =
             o.h.map_or(String::new(), |h| format!(", element size {h:.4} {length}"));

@@ -21,6 +21,8 @@ use std::path::Path;
 #[derive(Debug)]
 pub struct LevelResult {
     pub outcome: LevelOutcome,
+    /// True if a load factor says that the results are those of the case's load.
+    pub load_confirmed: bool,
     /// Why the results are not those of the case's load.
     pub other_load: Option<String>,
     /// Element size of the mesh itself, whatever is declared.
@@ -92,6 +94,7 @@ fn absent(plan: &LevelPlan, why: String) -> LevelResult {
             level: plan.name.clone(),
             folder: plan.folder.clone(),
             missing: Some(why),
+            step: None,
             h: plan.h,
             dimension: None,
             nodes: 0,
@@ -105,6 +108,7 @@ fn absent(plan: &LevelPlan, why: String) -> LevelResult {
             outside_distance: 0.0,
             walls: "none".to_string(),
         },
+        load_confirmed: false,
         other_load: None,
         mesh_size: None,
         measures: LevelMeasures::default(),
@@ -151,7 +155,9 @@ pub fn measure(
     let (report, volume) = compare_with_body(case, plan, &set, &mut findings)?;
     let points = judge_points(case, &set, report.as_ref(), &mut findings)?;
     checks::check_shape(case, plan, &set)?;
+    let stated = set.totals().is_some_and(|t| t.get("load_factor").is_some());
     let other_load = checks::check_load(case, plan, &set, &mut findings);
+    let load_confirmed = stated && other_load.is_none();
     let measures = Level {
         set: &set,
         exact: case.exact.as_ref(),
@@ -163,6 +169,7 @@ pub fn measure(
     .measure();
     checks::note_outside(case, plan, &measures, &mut findings);
     checks::note_axial_stress(case, &set, &mut findings);
+    checks::note_axial_origin(case, plan, &set, &mut findings);
     let sides = report.as_ref().map_or(WallSides::default(), |r| r.sides);
     let mesh_size = mesh_size(&set);
     let outcome = outcome(
@@ -177,6 +184,7 @@ pub fn measure(
     let inputs = set.inputs();
     Ok(LevelResult {
         outcome,
+        load_confirmed,
         other_load,
         mesh_size,
         measures,
@@ -281,6 +289,7 @@ fn outcome(
         level: plan.name.clone(),
         folder: plan.folder.clone(),
         missing: None,
+        step: set.step(),
         h: plan.h.or(mesh_size),
         dimension: dimension.map(|d| d as u32),
         nodes: set.nodes().map_or(0, |n| n.len() as u64),

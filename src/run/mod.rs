@@ -14,6 +14,7 @@ pub mod tables;
 mod checks;
 mod criteria;
 mod folders;
+mod format_pages;
 mod pairing;
 mod parameters;
 mod refusals;

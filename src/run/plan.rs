@@ -279,14 +279,14 @@ fn too_coarse(entry: &CaseEntry, tolerance: Option<f64>, p: &Parameters, reader:
         && tolerance > most
     {
         let found = format!(
-            "\"{}\" is more than a hundredth of the wall",
+            "\"{}\" is more than a hundredth of a wall",
             declared.value.text
         );
         refuse(
             declared,
             "node-tolerance",
             found,
-            &format!("at most {most}"),
+            "at most a hundredth of the thinnest wall",
             reader,
         );
     }

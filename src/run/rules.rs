@@ -95,6 +95,7 @@ pub const SUITE: &[(&str, &str)] = &[
 /// Rules of the mesh against the body: name and meaning, in alphabetical order.
 pub const BODY: &[(&str, &str)] = &[
     ("axial-length", "a solid is as long as declared"),
+    ("axial-origin", "a solid is held axially at Z = 0"),
     (
         "axial-stress",
         "a slice exports the axial stress, in which its end condition shows",
@@ -116,6 +117,7 @@ pub const BODY: &[(&str, &str)] = &[
         "outside-the-body",
         "quadrature points outside the exact body are counted, and the formula continued there",
     ),
+    ("sector-angle", "a sector spans its share of the turn"),
     (
         "share-of-body",
         "a quarter is a quarter: the mesh (or the weights) covers the declared share of the body",

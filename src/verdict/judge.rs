@@ -126,7 +126,9 @@ fn judge_number(
         Bound::AtLeast => limit - value,
         Bound::AtMost | Bound::Within => value - limit,
     };
-    let verdict = if beyond + uncertainty <= 0.0 {
+    let verdict = if beyond + uncertainty <= 0.0 && met_by_no_deformation(criterion, entry) {
+        Verdict::Inconclusive
+    } else if beyond + uncertainty <= 0.0 {
         Verdict::Pass
     } else if beyond - uncertainty > 0.0 {
         Verdict::Fail
@@ -146,6 +148,15 @@ fn judge_number(
         note: toothless(criterion).or_else(|| entry.place.clone()),
         ..without_number(criterion, Some(&entry.level), verdict, "")
     }
+}
+
+/// A stretch that differs from one by less than the limit cannot tell a deformed part from one that did nothing.
+fn met_by_no_deformation(criterion: &Criterion, entry: &LevelValue) -> bool {
+    let change = entry.exact.map_or(0.0, |exact| (exact - 1.0).abs());
+    criterion.measure == "axial-stretch"
+        && criterion.judged == Judged::Error
+        && change > 0.0
+        && change <= criterion.limit * entry.exact.unwrap_or(1.0).abs().min(1.0)
 }
 
 /// A relative limit of one or more is met by a result of zeros, and whoever reads the verdict should know.
@@ -169,6 +180,9 @@ fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String 
     let value = in_words(value, criterion);
     let said = format!("{value} where {bound} {} is asked", criterion.limit_text);
     match verdict {
+        Verdict::Inconclusive if criterion.measure == "axial-stretch" => {
+            format!("{said}: a part that does not deform would meet this limit too")
+        }
         Verdict::Inconclusive => format!("{said}: closer than the exact solution is known"),
         _ => said,
     }

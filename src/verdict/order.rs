@@ -26,7 +26,7 @@ pub(super) fn judge_pair(
         return without_number(criterion, Some(level), Verdict::Inconclusive, &reason);
     }
     let Some(order) = used[index].observed_order else {
-        let reason = "no order between the two finest levels: an error is zero or the mesh size does not fall";
+        let reason = "no order between the two finest levels: an error is zero, or the mesh does not get finer (list levels coarsest first)";
         return without_number(criterion, Some(level), Verdict::Inconclusive, reason);
     };
     doubted(

@@ -221,6 +221,8 @@ pub struct LevelOutcome {
     pub folder: String,
     /// Why the level was not read.
     pub missing: Option<String>,
+    /// The load step that was judged, where the tables have steps.
+    pub step: Option<i64>,
     /// Mean element size (volume/elements)^(1/dimension), or as given.
     pub h: Option<f64>,
     /// 2 or 3.

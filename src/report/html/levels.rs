@@ -257,8 +257,11 @@ fn meshes(levels: &[LevelOutcome], length_unit: &str) -> String {
 }
 
 fn mesh(level: &LevelOutcome, length_unit: &str) -> String {
+    let step = level
+        .step
+        .map_or(String::new(), |step| format!(", load step {step}"));
     let name = format!(
-        "<th scope=\"row\">{}<br/><small><code>{}</code></small></th>",
+        "<th scope=\"row\">{}{step}<br/><small><code>{}</code></small></th>",
         escape(&level.level),
         escape(&level.folder)
     );

@@ -12,7 +12,7 @@ const OUTER: f64 = 92.0;
 pub fn sketch(sketch: &Sketch, length_unit: &str, stress_unit: &str) -> String {
     let mut canvas = Canvas::default();
     let inner = OUTER * (sketch.inner_radius / sketch.outer_radius).clamp(0.0, 1.0);
-    section(&mut canvas, inner);
+    section(&mut canvas, inner, sketch.share);
     if sketch.inner_pressure != 0.0 {
         arrows(&mut canvas, inner, Side::Bore, sketch.inner_pressure > 0.0);
     }
@@ -39,23 +39,37 @@ pub fn sketch(sketch: &Sketch, length_unit: &str, stress_unit: &str) -> String {
     )
 }
 
-fn section(canvas: &mut Canvas, inner: f64) {
+/// A quarter of the section; of a smaller share only that is hatched.
+fn section(canvas: &mut Canvas, inner: f64, share: f64) {
     let (x, y) = CENTRE;
-    let (r, t) = (at(inner), at(OUTER));
-    canvas.raw(&format!(
-        "<path d=\"M{} {y}A{r} {r} 0 0 0 {x} {}V{}A{t} {t} 0 0 1 {} {y}Z\" fill=\"url(#sec)\" stroke=\"{INK}\" \
-         stroke-width=\"1.5\"/>",
-        at(x + inner),
-        at(y - inner),
-        at(y - OUTER),
-        at(x + OUTER)
-    ));
+    let angle = (360.0 * share).min(90.0);
+    if angle < 90.0 {
+        canvas.raw(&sector(inner, 90.0, "none", INK2, 0.6));
+    }
+    canvas.raw(&sector(inner, angle, "url(#sec)", INK, 1.5));
     for (x2, y2, x1, y1) in [(8.0, y, 128.0, y), (x, 134.0, x, 16.0)] {
         canvas.raw(&format!(
             "<line x1=\"{x1}\" y1=\"{y1}\" x2=\"{x2}\" y2=\"{y2}\" stroke=\"{INK2}\" stroke-width=\"0.75\" \
              stroke-dasharray=\"9 2.5 2 2.5\"/>"
         ));
     }
+}
+
+/// The wall from the horizontal up to an angle in degrees.
+fn sector(inner: f64, angle: f64, fill: &str, stroke: &str, width: f64) -> String {
+    let (x, y) = CENTRE;
+    let (sine, cosine) = angle.to_radians().sin_cos();
+    let (r, t) = (at(inner), at(OUTER));
+    format!(
+        "<path d=\"M{} {y}A{r} {r} 0 0 0 {} {}L{} {}A{t} {t} 0 0 1 {} {y}Z\" fill=\"{fill}\" stroke=\"{stroke}\" \
+         stroke-width=\"{width}\"/>",
+        at(x + inner),
+        at(x + inner * cosine),
+        at(y - inner * sine),
+        at(x + OUTER * cosine),
+        at(y - OUTER * sine),
+        at(x + OUTER)
+    )
 }
 
 #[derive(Clone, Copy, PartialEq, Eq)]

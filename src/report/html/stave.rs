@@ -27,14 +27,14 @@ pub fn stave(outcome: &Outcome) -> String {
     let cases = &outcome.cases;
     out += &match cases.len() {
         0 => String::new(),
-        1..=8 => {
+        1..=8 if told_apart(cases) => {
             format!(
                 "<div class=\"st wide\" aria-hidden=\"true\">{}</div><div class=\"st slim\" aria-hidden=\"true\">{}</div>",
                 named(cases),
                 numbered(cases)
             )
         }
-        9..=24 => format!(
+        1..=24 => format!(
             "<div class=\"st\" aria-hidden=\"true\">{}</div>",
             numbered(cases)
         ),
@@ -48,6 +48,14 @@ pub fn stave(outcome: &Outcome) -> String {
         }
     };
     out + "</div>\n"
+}
+
+/// Whether ids, cut to the width of a column, still differ.
+fn told_apart(cases: &[CaseOutcome]) -> bool {
+    let cut = |case: &CaseOutcome| case.id.chars().take(9).collect::<String>();
+    let mut seen: Vec<String> = cases.iter().map(cut).collect();
+    seen.sort();
+    seen.windows(2).all(|pair| pair[0] != pair[1])
 }
 
 fn open(width: f64, height: u32) -> String {
