@@ -29,11 +29,11 @@ impl Look<'_> {
             );
             return;
         }
-        self.angle(declared, report);
         let allowed = 1.2 * self.cut_off(boundary, declared.share * report.axial_length)
             + 2e-6 * report.exact_volume;
         let excess = (mesh_volume - report.exact_volume).abs();
         if excess <= allowed {
+            self.angle(declared, report);
             return;
         }
         report.findings.push(
