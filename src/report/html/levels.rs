@@ -40,7 +40,8 @@ fn comes_first(case: &CaseOutcome, series: &MeasureSeries) -> bool {
     let place = ["inner-wall-s", "mid-wall-", "outer-wall-"]
         .iter()
         .any(|start| series.measure.starts_with(start));
-    series.kind == Kind::Relative && (judged || !place)
+    let repeated = series.measure.ends_with("-rms");
+    series.kind == Kind::Relative && (judged || !(place || repeated))
 }
 
 fn of_kind<'a>(
