@@ -7,6 +7,8 @@ use crate::mechanics::Dimension;
 const ENTRIES: &[Entry] = &[
     super::neo_hookean::ENTRY,
     super::mooney_rivlin::ENTRY,
+    super::yeoh::ENTRY,
+    super::demiray::ENTRY,
     super::linear_elastic::ENTRY,
 ];
 

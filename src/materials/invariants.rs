@@ -9,7 +9,7 @@
 //! 2Tz - Tt - Tr = 2 W1 (2 z3/lz - q2) + 2 W2 (2 z3/lz^2 + lz^2 q2)
 //! ```
 
-use super::incompressible::Number;
+use super::incompressible::{Hardening, Number};
 
 /// Invariants at one state, none by subtracting nearly equal numbers.
 #[derive(Debug, Clone, Copy)]
@@ -65,5 +65,15 @@ impl<D: Number> Invariants<D> {
         let first = self.z3 * 2.0 / self.lz - self.q2;
         let second = self.z3 * 2.0 / self.lz2 + self.lz2 * self.q2;
         (w1 * first + w2 * second) * 2.0
+    }
+}
+
+impl Invariants<f64> {
+    /// How fast a law of I1 alone stiffens, from `by_i1` = d ln(dW/dI1)/dI1.
+    pub fn hardening(&self, d: f64, by_i1: f64) -> Hardening {
+        Hardening {
+            by_d: (by_i1 * 2.0 * d.sinh() / self.lz).abs(),
+            loss: (by_i1 * self.i1).abs(),
+        }
     }
 }

@@ -6,17 +6,21 @@
 //! can check the difference form. To add a law: one file, and one line in [`catalogue`].
 
 pub mod catalogue;
+mod demiray;
 mod incompressible;
 mod invariants;
 mod linear_elastic;
 mod mooney_rivlin;
 mod neo_hookean;
+mod yeoh;
 
 pub use catalogue::{Entry, ParameterEntry, Problem, build, entries, find};
-pub use incompressible::{Differences, Formula, IncompressibleLaw, Number, Slope};
+pub use demiray::Demiray;
+pub use incompressible::{Differences, Formula, Hardening, IncompressibleLaw, Number, Slope};
 pub use linear_elastic::LinearElastic;
 pub use mooney_rivlin::MooneyRivlin;
 pub use neo_hookean::NeoHookean;
+pub use yeoh::Yeoh;
 
 use crate::mechanics::Dimension;
 use std::sync::Arc;

@@ -27,13 +27,19 @@ pub(super) const CHECK_POINTS: usize = 24;
 /// Widest panel in X: the integrands are analytic up to |Im X| = pi/2, so that 16 points miss 1e-25 of them.
 const PANEL: f64 = 1.0;
 
+/// Width of a graded panel in units of the law's own length.
+const GRADE: f64 = 2.0;
+
+/// More graded panels than any law needs: 60/GRADE and the panels of the wall.
+const MOST_PANELS: usize = 400;
+
 /// A number with its derivatives by `g` and `e`, and the sum of the sizes of its terms.
 #[derive(Debug, Clone, Copy, PartialEq, Default)]
 pub(super) struct Graded {
     pub value: f64,
     pub by_g: f64,
     pub by_e: f64,
-    /// Sum of |weight f|: what round-off is measured against.
+    /// Sum of |weight f|, each times the digits its law loses: what round-off is measured against.
     pub size: f64,
 }
 
@@ -114,9 +120,42 @@ impl Wall {
         )
     }
 
-    /// Ends of the panels in X. For k < 0 the integrand has a pole at X0 = ln(-k)/2 just inside the bore, and the
+    /// Ends of the panels in X, graded where the law stiffens; then as [`Self::plain_panels`].
+    fn panels(&self, g: f64, e: f64) -> Vec<f64> {
+        let mut ends = self.plain_panels(g);
+        if self.law.hardening(g, e).by_d == 0.0 {
+            return ends;
+        }
+        // widths in proportion to the distance from the lock (or to the e-folding of an exponential): the ratio 2 leaves
+        // 3.7^-32 of a pole. Once the stiffness fell by e^60 the rest of the wall counts for nothing.
+        let (mut graded, mut x, mut fall) = (vec![0.0], 0.0_f64, 0.0);
+        while fall < 60.0 && graded.len() < MOST_PANELS {
+            let swell = (2.0 * x).exp_m1();
+            let (d, stretch) = local(swell, g);
+            let d_by_x = 2.0 * (g.exp_m1() / (1.0 + swell)).abs() / stretch;
+            let pace = self.law.hardening(d, e).by_d * d_by_x;
+            let end = ends.iter().copied().find(|&end| end > x);
+            let Some(end) = end.filter(|_| pace.is_finite()) else {
+                break;
+            };
+            let width = GRADE / pace;
+            let next = if x + 1.1 * width >= end {
+                end
+            } else {
+                x + width
+            };
+            fall += pace * (next - x);
+            graded.push(next);
+            x = next;
+        }
+        ends.retain(|&end| end > x);
+        graded.extend(ends);
+        graded
+    }
+
+    /// Ends of the panels in X for a law of constant stiffness. For k < 0 the integrand has a pole at X0 = ln(-k)/2 just inside the bore, and the
     /// panels grow with the distance from it.
-    fn panels(&self, g: f64) -> Vec<f64> {
+    fn plain_panels(&self, g: f64) -> Vec<f64> {
         let mut ends = vec![0.0];
         if g >= 0.0 {
             let n = (self.span / PANEL).ceil().max(1.0);
@@ -144,7 +183,7 @@ impl Wall {
         let bore = g.exp();
         let mut sums = [CompensatedSum::new(); 4];
         let mut slopes = [(0.0, 0.0, 0.0); 4];
-        for panel in self.panels(g).windows(2) {
+        for panel in self.panels(g, e).windows(2) {
             for (x, weight) in rule.on(panel[0], panel[1]) {
                 let swell = (2.0 * x).exp_m1();
                 let s = 1.0 + swell;
@@ -153,6 +192,7 @@ impl Wall {
                 let stretch_by_g = bore / s;
                 let d_by_g = stretch_by_g / stretch;
                 let law = self.law.with_slopes(d, e);
+                let lost = 1.0 + 3.0 * self.law.hardening(d, e).loss;
                 let f = law.hoop.value / stretch;
                 let f_by_g = (law.hoop.by_d / stretch - f) * d_by_g;
                 let f_by_e = law.hoop.by_e / stretch;
@@ -176,7 +216,7 @@ impl Wall {
                     sum.add(weight * value);
                     slope.0 += weight * by_g;
                     slope.1 += weight * by_e;
-                    slope.2 += weight * value.abs();
+                    slope.2 += weight * value.abs() * lost;
                 }
             }
         }

@@ -152,9 +152,11 @@ fn bound_of(
         let by = |by_d: f64, by_e: f64| by_d.abs() * d_error + by_e.abs() * e_error;
         let hoop = by(law.hoop.by_d, law.hoop.by_e);
         let axial = by(law.axial.by_d, law.axial.by_e);
+        let lost = 4.0 * f64::EPSILON * wall.law.hardening(d, solved.e).loss;
+        let round_off = lost * law.hoop.value.abs().max(law.axial.value.abs());
         let pressure = &solved.integrals.pressure;
         let radial = pressure.by_g.abs() * g_error + pressure.by_e.abs() * e_error;
-        stress.0 = stress.0.max(radial + hoop.max(axial));
+        stress.0 = stress.0.max(radial + hoop.max(axial) + round_off);
         for s in [local.stress.xx, local.stress.yy, local.stress.zz] {
             stress.1 = stress.1.max(s.abs());
         }

@@ -199,7 +199,12 @@ impl Path<'_> {
             let Some(next) = self.station(g, here.e + here.e_slope * (g - here.g)) else {
                 step *= 0.5;
                 if step < 1e-6 {
-                    return (trail, Some(End::Lost(here)));
+                    let end = if self.hardened(&here, sign) {
+                        End::Open(here)
+                    } else {
+                        End::Lost(here)
+                    };
+                    return (trail, Some(end));
                 }
                 continue;
             };
@@ -228,6 +233,16 @@ impl Path<'_> {
             let widest = if here.g.abs() < 5.0 { 0.25 } else { 1.0 };
             step = (1.5 * step).min(widest);
         }
+    }
+
+    /// Whether the law at the bore has stiffened without bound: it locks within the next step, or nearly, or its numbers
+    /// leave the range of doubles there.
+    fn hardened(&self, here: &Station, sign: f64) -> bool {
+        let g = here.g + sign * 1e-4;
+        let e = here.e + here.e_slope * (g - here.g);
+        let ahead = self.wall.law.at(g, e);
+        let loss = self.wall.law.hardening(here.g, here.e).loss;
+        !ahead.hoop.is_finite() || !ahead.reduced.is_finite() || loss > 500.0
     }
 
     /// The station with slope zero between two stations of opposite slope.

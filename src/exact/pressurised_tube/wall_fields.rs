@@ -20,6 +20,8 @@ use nalgebra::Vector3;
 const NODES: usize = 20;
 /// Wanted size of the last coefficients against the largest.
 const TAIL: f64 = 2e-15;
+/// Halvings at most: near a lock a piece is as long as the distance to it.
+const DEPTH: usize = 30;
 
 /// Everything a point needs.
 #[derive(Debug, Clone)]
@@ -84,7 +86,9 @@ impl Fields {
     /// G over `0..range` in pieces that hold it to round-off.
     fn fit(&self, range: f64) -> Option<Piecewise> {
         let mut at = |del: f64| slope(&self.wall, self.outer_difference + del, self.e);
-        let breaks = Piecewise::breaks((0.0, range), NODES, TAIL, 10, &mut at)?;
+        // a stiffening law's own round-off cannot be resolved
+        let tail = TAIL + 2.0 * f64::EPSILON * self.wall.law.hardening(self.g, self.e).loss;
+        let breaks = Piecewise::breaks((0.0, range), NODES, tail, DEPTH, &mut at)?;
         let rule = GaussRule::of(NODES);
         let mut before = 0.0;
         let mut pieces = Vec::with_capacity(breaks.len() - 1);
