@@ -15,6 +15,14 @@ const STATE: &[&str] = &[
     "p", "J", "F11", "F12", "F13", "F21", "F22", "F23", "F31", "F32", "F33", "step",
 ];
 
+/// Names of the exchange format in a table (`nodes`, `elements`, `points`, `totals`), or in any for an empty name.
+pub fn column_names(table: &str) -> Vec<String> {
+    let tables = TableName::ALL
+        .into_iter()
+        .filter(|t| table.is_empty() || t.name() == table);
+    tables.flat_map(canonical_names).collect()
+}
+
 /// Every name of the exchange format in a table.
 pub(crate) fn canonical_names(table: TableName) -> Vec<String> {
     let (own, shared): (Vec<String>, &[&[&str]]) = match table {

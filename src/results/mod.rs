@@ -34,6 +34,7 @@ pub use conventions::{
 pub use elements::Elements;
 pub use files::{InputFile, TableName};
 pub use frame::ModelKind;
+pub use header::column_names;
 pub use log::LISTED;
 pub use nodes::Nodes;
 pub use points::{Pass, PointChannels, PointSource};

@@ -13,6 +13,7 @@ pub mod tables;
 
 mod checks;
 mod criteria;
+mod exports;
 mod folders;
 mod format_pages;
 mod pairing;

@@ -201,6 +201,19 @@ pub fn number(
 fn ends(node: &Node, path: &str, units: &UnitSystem, reader: &mut Reader) -> Option<Ends> {
     let (name, inner) = reader.variant(node, path)?;
     let at = format!("{path}.{name}");
+    if let Some(inner) = inner.filter(|inner| !matches!(inner.value, Value::Map(_))) {
+        let found = format!("found {}", inner.scalar().unwrap_or(inner.kind()));
+        let finding = reader.refuse("wrong-type", inner, &at, found);
+        finding.expected = match name.as_str() {
+            "fixed-stretch" => "{ fixed-stretch: { axial-stretch: 1.2 } }",
+            "generalized-plane-strain" => {
+                "{ generalized-plane-strain: { axial-force: 20 N } }, or the bare word"
+            }
+            _ => "the bare word",
+        }
+        .to_string();
+        return None;
+    }
     let mut block = match inner {
         Some(inner) => Some(reader.block(inner, &at)?),
         None => None,

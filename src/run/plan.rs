@@ -2,6 +2,7 @@
 
 use super::criteria;
 use super::expand::{self, Combination};
+use super::exports;
 use super::folders::{levels, own_folder};
 use super::pairing::{self, Element};
 use super::parameters::{self, Materials};
@@ -125,6 +126,7 @@ fn plan_case(
     let Some((problems, elements)) = combinations(entry, reader) else {
         return;
     };
+    exports::check_columns(&entry.export, reader);
     let stated = criteria::stated_orders(entry, reader);
     let element_path = entry.element.as_ref().map_or("", |e| e.path.as_str());
     // once without regard to the problem, so that its faults hide none of the criteria's

@@ -65,6 +65,13 @@ impl Quantity {
                 let factor = UnitSystem::si().factor_to(suite, dimension);
                 return Ok(unit.convert(self.number, &base) * factor);
             }
+            Dimension::Force | Dimension::Energy => {
+                let possible = Unit::names_of(dimension).join(", ");
+                return Err(format!(
+                    "\"{}\" has the wrong kind of unit; possible here: {possible}",
+                    self.text
+                ));
+            }
             other => {
                 let wanted = suite.name_of(other);
                 return Err(format!(
