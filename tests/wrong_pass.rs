@@ -967,6 +967,41 @@ fn what_is_declared_or_left_out_lets_nothing_through() {
             "refused share-of-body",
         ),
         (
+            "another last step at one level, and no load factor to vouch for it",
+            |d| {
+                d.change_all("totals", |t| {
+                    let name = t.at("quantity");
+                    t.rows.retain(|row| row[name] != "load_factor");
+                });
+                for table in ["nodes", "points", "totals"] {
+                    d.change(2, table, |t| t.map("step", |step| step + 1.0));
+                }
+            },
+            "not-run",
+        ),
+        (
+            "the same quarter meshed twice and declared a half",
+            |d| {
+                let twice = |t: &mut Table, columns: &[&str]| {
+                    let at: Vec<usize> = columns.iter().map(|c| t.at(c)).collect();
+                    for mut row in t.rows.clone() {
+                        for &i in &at {
+                            row[i] = (row[i].parse::<i64>().unwrap() + 10_000).to_string();
+                        }
+                        t.rows.push(row);
+                    }
+                };
+                let element = [
+                    "element", "n1", "n2", "n3", "n4", "n5", "n6", "n7", "n8", "n9",
+                ];
+                d.change_all("nodes", |t| twice(t, &["node"]));
+                d.change_all("elements", |t| twice(t, &element));
+                d.change_all("points", |t| twice(t, &["element"]));
+                d.edit_suite("section: 1/4", "section: 1/2");
+            },
+            "refused sector-angle",
+        ),
+        (
             "a declared load factor that the results are not at",
             |d| d.edit_suite("    levels:", "    load-factor: 0.5\n    levels:"),
             "fail",

@@ -2,7 +2,6 @@
 
 use super::level::LevelResult;
 use super::plan::{CasePlan, LevelPlan};
-use crate::exact::Kinematics;
 use crate::input::{Finding, Place, Weight};
 use crate::norms::LevelMeasures;
 use crate::norms::points::PointNorms;
@@ -17,7 +16,14 @@ pub(super) fn covers_without_mesh(
     set: &ResultSet,
     norms: &PointNorms,
 ) -> Result<(), Vec<Finding>> {
-    let place = Place::file(set.points().map_or(set.shown(), |points| points.file()));
+    let Some(points) = set
+        .points()
+        .filter(|points| points.channels().weight.is_available())
+    else {
+        // without weights there is no norm at all, and each says so
+        return Ok(());
+    };
+    let place = Place::file(points.file());
     let length = match (set.kind(), case.axial_length) {
         (ModelKind::Planar, _) => 1.0,
         (_, Some(length)) => length,
@@ -175,6 +181,7 @@ pub(super) fn note_axial_stress(case: &CasePlan, set: &ResultSet, findings: &mut
     }
 }
 
+/// How many quadrature points leave the exact body, and how far.
 pub(super) fn note_outside(
     case: &CasePlan,
     plan: &LevelPlan,
@@ -184,17 +191,12 @@ pub(super) fn note_outside(
     if measures.outside == 0 {
         return;
     }
-    let continued = match case.exact.kinematics() {
-        Kinematics::Finite | Kinematics::SmallStrain => {
-            "the exact solution's formula is continued there"
-        }
-    };
     findings.push(Finding::new(
         Weight::Note,
         "outside-the-body",
         Place::file(plan.folder.clone()),
         format!(
-            "{} of {} quadrature points lie outside the exact body, by {:.2e} {} at most: {continued}",
+            "{} of {} quadrature points lie outside the exact body, by {:.2e} {} at most: the exact solution's formula is continued there",
             measures.outside, measures.quadrature_points, measures.outside_distance, case.units.length.name
         ),
     ));

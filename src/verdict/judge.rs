@@ -126,9 +126,24 @@ fn judge_number(
         Bound::AtLeast => limit - value,
         Bound::AtMost | Bound::Within => value - limit,
     };
-    let verdict = if beyond + uncertainty <= 0.0 && met_by_no_deformation(criterion, entry) {
-        Verdict::Inconclusive
-    } else if beyond + uncertainty <= 0.0 {
+    let inside = beyond + uncertainty <= 0.0;
+    if inside && met_by_no_deformation(criterion, entry) {
+        let said = in_words(value, criterion);
+        return CriterionOutcome {
+            value: Some(value),
+            uncertainty: Some(uncertainty),
+            ..without_number(
+                criterion,
+                Some(&entry.level),
+                Verdict::Inconclusive,
+                &format!(
+                    "{said}, but a part that does not deform would meet the limit {} too",
+                    criterion.limit_text
+                ),
+            )
+        };
+    }
+    let verdict = if inside {
         Verdict::Pass
     } else if beyond - uncertainty > 0.0 {
         Verdict::Fail
@@ -180,9 +195,6 @@ fn number_reason(verdict: Verdict, criterion: &Criterion, value: f64) -> String 
     let value = in_words(value, criterion);
     let said = format!("{value} where {bound} {} is asked", criterion.limit_text);
     match verdict {
-        Verdict::Inconclusive if criterion.measure == "axial-stretch" => {
-            format!("{said}: a part that does not deform would meet this limit too")
-        }
         Verdict::Inconclusive => format!("{said}: closer than the exact solution is known"),
         _ => said,
     }
@@ -295,6 +307,23 @@ mod tests {
         assert_eq!(verdict(&c, &[9.5e-4], 1e-4), Verdict::Inconclusive);
         assert_eq!(verdict(&c, &[1.05e-3], 1e-4), Verdict::Inconclusive);
         assert_eq!(verdict(&c, &[8e-4], 1e-4), Verdict::Pass);
+    }
+
+    #[test]
+    fn a_stretch_that_no_deformation_would_have_too_is_no_evidence() {
+        let mut c = criterion(Judged::Error, Bound::AtMost, 1e-3);
+        c.measure = "axial-stretch".into();
+        let mut s = series(&[1e-6]);
+        for (exact, expected) in [
+            (1.0005, Verdict::Inconclusive),
+            (0.9995, Verdict::Inconclusive),
+            (1.05, Verdict::Pass),
+            // held at its length: the stretch is given, and one
+            (1.0, Verdict::Pass),
+        ] {
+            s.values[0].exact = Some(exact);
+            assert_eq!(of(&c, Some(&s)), expected, "{exact}");
+        }
     }
 
     #[test]
