@@ -1,6 +1,6 @@
 //! Every law a suite can name, its parameters and their admissible range, and how it is built from numbers.
 
-use super::{Material, MaterialKind};
+use super::{Constant, ConstantForm, Constants, Material, MaterialKind};
 use crate::mechanics::Dimension;
 
 /// All laws, in the order they are listed. To add one, add its `ENTRY`.
@@ -9,7 +9,9 @@ const ENTRIES: &[Entry] = &[
     super::mooney_rivlin::ENTRY,
     super::yeoh::ENTRY,
     super::demiray::ENTRY,
+    super::compressible::ENTRY,
     super::linear_elastic::ENTRY,
+    super::elastic_plastic::ENTRY,
 ];
 
 /// One law as a reader of the catalogue sees it.
@@ -19,23 +21,85 @@ pub struct Entry {
     pub name: &'static str,
     pub kind: MaterialKind,
     pub parameters: &'static [ParameterEntry],
+    /// Constants whose names follow a pattern, any number of them.
+    pub family: Option<Family>,
     /// The strain energy.
     pub formula: &'static str,
     /// What the symbols of the formula mean, and the constants other books use.
     pub convention: &'static str,
     pub source: &'static str,
-    /// From finite values in the order of `parameters`; checks the range.
-    pub(super) build: fn(&[f64]) -> Result<Material, Problem>,
+    /// From finite values; checks the range.
+    pub(super) build: fn(&Constants) -> Result<Material, Problem>,
 }
 
-/// One parameter of a law.
+/// One constant of a law.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct ParameterEntry {
     pub name: &'static str,
+    pub form: ConstantForm,
     pub dimension: Dimension,
+    pub required: bool,
     pub meaning: &'static str,
     /// Admissible values, as text.
     pub range: &'static str,
+}
+
+impl ParameterEntry {
+    /// A number that must be given.
+    pub const fn number(
+        name: &'static str,
+        dimension: Dimension,
+        meaning: &'static str,
+        range: &'static str,
+    ) -> Self {
+        Self {
+            name,
+            form: ConstantForm::Number,
+            dimension,
+            required: true,
+            meaning,
+            range,
+        }
+    }
+
+    /// The same in another form.
+    pub const fn of(self, form: ConstantForm) -> Self {
+        Self { form, ..self }
+    }
+
+    /// The same, not required.
+    pub const fn optional(self) -> Self {
+        Self {
+            required: false,
+            ..self
+        }
+    }
+}
+
+/// Constants whose names follow a pattern: `c10`, `c01`, `c22`.
+#[derive(Debug, Clone, Copy)]
+pub struct Family {
+    /// The pattern as text: `cIJ`.
+    pub pattern: &'static str,
+    pub fits: fn(&str) -> bool,
+    pub dimension: Dimension,
+    pub meaning: &'static str,
+}
+
+impl Entry {
+    /// Form and dimension of the constant of this name, or `None` when the law has none such.
+    pub fn constant(&self, name: &str) -> Option<(ConstantForm, Dimension)> {
+        let own = self.parameters.iter().find(|p| p.name == name);
+        let family = || self.family.filter(|f| (f.fits)(name));
+        own.map(|p| (p.form, p.dimension))
+            .or_else(|| family().map(|f| (ConstantForm::Number, f.dimension)))
+    }
+
+    /// Names of its constants, for messages.
+    pub fn constant_names(&self) -> String {
+        let own = self.parameters.iter().map(|p| p.name);
+        list(own.chain(self.family.map(|f| f.pattern)))
+    }
 }
 
 /// Why a material cannot be built.
@@ -83,45 +147,62 @@ pub fn names_of(kind: MaterialKind) -> Vec<&'static str> {
     of_it.map(|e| e.name).collect()
 }
 
-/// A material from its law's name and `(parameter, value)` pairs in any order. Stresses in one unit.
-pub fn build(name: &str, values: &[(String, f64)]) -> Result<Material, Problem> {
+/// A material from its law's name and `(constant, value)` pairs in any order. Stresses in one unit.
+///
+/// # Errors
+/// What is missing, twice, unknown, of the wrong form, not finite or out of range.
+pub fn build<C: Clone + Into<Constant>>(
+    name: &str,
+    values: &[(String, C)],
+) -> Result<Material, Problem> {
     let entry = find(name).ok_or_else(|| Problem {
         message: format!("unknown material law `{name}`"),
         parameter: String::new(),
         hint: format!("known laws: {}", list(ENTRIES.iter().map(|e| e.name))),
     })?;
-    let names = || list(entry.parameters.iter().map(|p| p.name));
+    let mut given = Constants::default();
+    for (name, value) in values {
+        given.list.push((name.clone(), value.clone().into()));
+    }
+    check_form(entry, &given)?;
+    (entry.build)(&given)
+}
+
+/// Every constant is one of the law's, once, of its form and finite, and none is missing.
+fn check_form(entry: &Entry, given: &Constants) -> Result<(), Problem> {
     let problem = |parameter: &str, what: String| Problem {
         message: what,
         parameter: parameter.to_string(),
-        hint: format!("parameters of {name}: {}", names()),
+        hint: format!("parameters of {}: {}", entry.name, entry.constant_names()),
     };
-    for (i, (given, value)) in values.iter().enumerate() {
-        if !entry.parameters.iter().any(|p| p.name == given) {
-            return Err(problem(given, format!("{name} has no parameter `{given}`")));
-        }
-        if values[..i].iter().any(|(earlier, _)| earlier == given) {
-            return Err(problem(given, format!("{given} is given twice")));
-        }
-        if !value.is_finite() {
-            return Err(problem(
-                given,
-                format!("{given} = {value} is not a finite number"),
-            ));
-        }
-    }
-    let mut ordered = Vec::with_capacity(entry.parameters.len());
-    for parameter in entry.parameters {
-        let found = values.iter().find(|(given, _)| given == parameter.name);
-        let missing = || {
-            problem(
-                parameter.name,
-                format!("{name} needs {} ({})", parameter.name, parameter.meaning),
-            )
+    for (i, (name, value)) in given.iter().enumerate() {
+        let Some((form, _)) = entry.constant(name) else {
+            let what = format!("{} has no parameter `{name}`", entry.name);
+            return Err(problem(name, what));
         };
-        ordered.push(found.ok_or_else(missing)?.1);
+        if given.list[..i].iter().any(|(earlier, _)| earlier == name) {
+            return Err(problem(name, format!("{name} is given twice")));
+        }
+        if value.form() != form {
+            let what = format!("{name} = {value} is not {}", form.words());
+            return Err(problem(name, what));
+        }
+        if let Some(odd) = value.numbers().iter().find(|v| !v.is_finite()) {
+            let what = format!("{name} = {odd} is not a finite number");
+            return Err(problem(name, what));
+        }
     }
-    (entry.build)(&ordered)
+    let missing = entry
+        .parameters
+        .iter()
+        .find(|p| p.required && given.get(p.name).is_none());
+    match missing {
+        Some(p) => Err(problem(
+            p.name,
+            format!("{} needs {} ({})", entry.name, p.name, p.meaning),
+        )),
+        None => Ok(()),
+    }
 }
 
 fn list<'a>(names: impl Iterator<Item = &'a str>) -> String {
@@ -145,9 +226,11 @@ mod tests {
         let given: Vec<_> = material
             .parameters()
             .iter()
-            .map(|p| (p.name, p.value))
+            .map(|p| (p.name.clone(), p.value.clone()))
             .collect();
-        assert_eq!(given, [("c10", 0.15), ("c01", 0.05)]);
+        let expected =
+            [("c10", 0.15), ("c01", 0.05)].map(|(n, v)| (n.to_string(), Constant::Number(v)));
+        assert_eq!(given, expected);
     }
 
     // Red when a range check is turned round or dropped.
@@ -220,7 +303,7 @@ mod tests {
                     && !entry.source.is_empty()
                     && !entry.convention.is_empty()
             );
-            assert!(!entry.parameters.is_empty());
+            assert!(!entry.parameters.is_empty() || entry.family.is_some());
         }
         assert_eq!(names_of(MaterialKind::LinearElastic), ["linear-elastic"]);
     }

@@ -22,25 +22,21 @@ pub(super) const ENTRY: Entry = Entry {
     name: Demiray::NAME,
     kind: MaterialKind::Incompressible,
     parameters: &[
-        ParameterEntry {
-            name: "c",
-            dimension: Dimension::Stress,
-            meaning: "shear modulus of the unstrained material",
-            range: "c > 0",
-        },
-        ParameterEntry {
-            name: "b",
-            dimension: Dimension::None,
-            meaning: "rate of stiffening",
-            range: "b > 0",
-        },
+        ParameterEntry::number(
+            "c",
+            Dimension::Stress,
+            "shear modulus of the unstrained material",
+            "c > 0",
+        ),
+        ParameterEntry::number("b", Dimension::None, "rate of stiffening", "b > 0"),
     ],
+    family: None,
     formula: Demiray::ENERGY,
     convention: "I1 = lambda1^2 + lambda2^2 + lambda3^2, lambda1 lambda2 lambda3 = 1; shear modulus c; Delfino's form \
                  (a/b) (exp(b (I1 - 3)/2) - 1) has a = c and twice this b",
     source: "Demiray, J. Biomech. 5 (1972) 309; Delfino et al., J. Biomech. 30 (1997) 777",
-    build: |values| {
-        let (c, b) = (values[0], values[1]);
+    build: |given| {
+        let (c, b) = (given.number("c"), given.number("b"));
         if c <= 0.0 {
             return Err(Problem::out_of_range(
                 "c",
@@ -99,16 +95,8 @@ impl Formula for Demiray {
 
     fn parameters(&self) -> Vec<Parameter> {
         vec![
-            Parameter {
-                name: "c",
-                value: self.c,
-                dimension: Dimension::Stress,
-            },
-            Parameter {
-                name: "b",
-                value: self.b,
-                dimension: Dimension::None,
-            },
+            Parameter::number("c", self.c, Dimension::Stress),
+            Parameter::number("b", self.b, Dimension::None),
         ]
     }
 }

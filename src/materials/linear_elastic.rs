@@ -27,44 +27,40 @@ pub(super) const ENTRY: Entry = Entry {
     name: NAME,
     kind: MaterialKind::LinearElastic,
     parameters: &[
-        ParameterEntry {
-            name: "E",
-            dimension: Dimension::Stress,
-            meaning: "Young's modulus",
-            range: "E > 0",
-        },
-        ParameterEntry {
-            name: "nu",
-            dimension: Dimension::None,
-            meaning: "Poisson's ratio",
-            range: "-1 < nu <= 0.5",
-        },
+        ParameterEntry::number("E", Dimension::Stress, "Young's modulus", "E > 0"),
+        ParameterEntry::number("nu", Dimension::None, "Poisson's ratio", "-1 < nu <= 0.5"),
     ],
+    family: None,
     formula: ENERGY,
     convention: "small strain, the shear modulus is E/(2 (1 + nu)); at nu = 0.5 tr(eps) = 0 and the pressure is free",
     source: "Timoshenko & Goodier, Theory of Elasticity, 3rd ed. (1970), section 6",
-    build: |values| {
-        let (e, nu) = (values[0], values[1]);
-        if e <= 0.0 {
-            return Err(Problem::out_of_range(
-                "E",
-                e,
-                "E > 0",
-                "any positive stress",
-            ));
-        }
-        if nu <= -1.0 || nu > 0.5 {
-            let nearest = if nu > 0.5 {
-                "0.5"
-            } else {
-                "any value above -1"
-            };
-            let problem = Problem::out_of_range("nu", nu, "-1 < nu <= 0.5", nearest);
-            return Err(problem.because("outside it the stored energy of some strain is negative"));
-        }
-        Ok(Material::LinearElastic(LinearElastic { e, nu }))
+    build: |given| {
+        let law = checked(given.number("E"), given.number("nu"))?;
+        Ok(Material::LinearElastic(law))
     },
 };
+
+/// Within its range, or why not.
+pub(super) fn checked(e: f64, nu: f64) -> Result<LinearElastic, Problem> {
+    if e <= 0.0 {
+        return Err(Problem::out_of_range(
+            "E",
+            e,
+            "E > 0",
+            "any positive stress",
+        ));
+    }
+    if nu <= -1.0 || nu > 0.5 {
+        let nearest = if nu > 0.5 {
+            "0.5"
+        } else {
+            "any value above -1"
+        };
+        let problem = Problem::out_of_range("nu", nu, "-1 < nu <= 0.5", nearest);
+        return Err(problem.because("outside it the stored energy of some strain is negative"));
+    }
+    Ok(LinearElastic { e, nu })
+}
 
 impl LinearElastic {
     /// E/(2 (1 + nu)).
@@ -79,16 +75,8 @@ impl LinearElastic {
 
     /// Parameters in the order of the catalogue.
     pub fn parameters(&self) -> Vec<Parameter> {
-        let e = Parameter {
-            name: "E",
-            value: self.e,
-            dimension: Dimension::Stress,
-        };
-        let nu = Parameter {
-            name: "nu",
-            value: self.nu,
-            dimension: Dimension::None,
-        };
+        let e = Parameter::number("E", self.e, Dimension::Stress);
+        let nu = Parameter::number("nu", self.nu, Dimension::None);
         vec![e, nu]
     }
 }

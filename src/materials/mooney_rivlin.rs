@@ -21,25 +21,26 @@ pub(super) const ENTRY: Entry = Entry {
     name: MooneyRivlin::NAME,
     kind: MaterialKind::Incompressible,
     parameters: &[
-        ParameterEntry {
-            name: "c10",
-            dimension: Dimension::Stress,
-            meaning: "factor of I1 - 3",
-            range: "c10 >= 0, c10 + c01 > 0",
-        },
-        ParameterEntry {
-            name: "c01",
-            dimension: Dimension::Stress,
-            meaning: "factor of I2 - 3",
-            range: "c01 >= 0, c10 + c01 > 0",
-        },
+        ParameterEntry::number(
+            "c10",
+            Dimension::Stress,
+            "factor of I1 - 3",
+            "c10 >= 0, c10 + c01 > 0",
+        ),
+        ParameterEntry::number(
+            "c01",
+            Dimension::Stress,
+            "factor of I2 - 3",
+            "c01 >= 0, c10 + c01 > 0",
+        ),
     ],
+    family: None,
     formula: MooneyRivlin::ENERGY,
     convention: "I1 = sum of lambda_i^2, I2 = sum of lambda_i^-2, lambda1 lambda2 lambda3 = 1; \
                  shear modulus 2 (c10 + c01)",
     source: "Mooney, J. Appl. Phys. 11 (1940) 582; Rivlin, Phil. Trans. R. Soc. A 241 (1948) 379",
-    build: |values| {
-        let (c10, c01) = (values[0], values[1]);
+    build: |given| {
+        let (c10, c01) = (given.number("c10"), given.number("c01"));
         let reason =
             "a negative factor makes W unbounded below in some deformation, and the tube unstable";
         for (name, value) in [("c10", c10), ("c01", c01)] {
@@ -84,11 +85,7 @@ impl Formula for MooneyRivlin {
 
     fn parameters(&self) -> Vec<Parameter> {
         [("c10", self.c10), ("c01", self.c01)]
-            .map(|(name, value)| Parameter {
-                name,
-                value,
-                dimension: Dimension::Stress,
-            })
+            .map(|(name, value)| Parameter::number(name, value, Dimension::Stress))
             .to_vec()
     }
 }

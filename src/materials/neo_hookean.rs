@@ -19,17 +19,18 @@ pub struct NeoHookean {
 pub(super) const ENTRY: Entry = Entry {
     name: NeoHookean::NAME,
     kind: MaterialKind::Incompressible,
-    parameters: &[ParameterEntry {
-        name: "mu",
-        dimension: Dimension::Stress,
-        meaning: "shear modulus",
-        range: "mu > 0",
-    }],
+    parameters: &[ParameterEntry::number(
+        "mu",
+        Dimension::Stress,
+        "shear modulus",
+        "mu > 0",
+    )],
+    family: None,
     formula: NeoHookean::ENERGY,
     convention: "I1 = lambda1^2 + lambda2^2 + lambda3^2, lambda1 lambda2 lambda3 = 1; c10 = mu/2, Young's modulus 3 mu",
     source: "Treloar, The Physics of Rubber Elasticity, 3rd ed. (1975), section 4.3",
-    build: |values| {
-        let mu = values[0];
+    build: |given| {
+        let mu = given.number("mu");
         if mu <= 0.0 {
             return Err(Problem::out_of_range(
                 "mu",
@@ -66,11 +67,7 @@ impl Formula for NeoHookean {
     }
 
     fn parameters(&self) -> Vec<Parameter> {
-        vec![Parameter {
-            name: "mu",
-            value: self.mu,
-            dimension: Dimension::Stress,
-        }]
+        vec![Parameter::number("mu", self.mu, Dimension::Stress)]
     }
 }
 

@@ -25,31 +25,31 @@ pub(super) const ENTRY: Entry = Entry {
     name: Yeoh::NAME,
     kind: MaterialKind::Incompressible,
     parameters: &[
-        ParameterEntry {
-            name: "c10",
-            dimension: Dimension::Stress,
-            meaning: "factor of I1 - 3",
-            range: "c10 > 0",
-        },
-        ParameterEntry {
-            name: "c20",
-            dimension: Dimension::Stress,
-            meaning: "factor of (I1 - 3)^2, 0 if there is none",
-            range: "c20 >= 0, or above -sqrt(3 c10 c30)",
-        },
-        ParameterEntry {
-            name: "c30",
-            dimension: Dimension::Stress,
-            meaning: "factor of (I1 - 3)^3, 0 if there is none",
-            range: "c30 >= 0",
-        },
+        ParameterEntry::number("c10", Dimension::Stress, "factor of I1 - 3", "c10 > 0"),
+        ParameterEntry::number(
+            "c20",
+            Dimension::Stress,
+            "factor of (I1 - 3)^2, 0 if there is none",
+            "c20 >= 0, or above -sqrt(3 c10 c30)",
+        ),
+        ParameterEntry::number(
+            "c30",
+            Dimension::Stress,
+            "factor of (I1 - 3)^3, 0 if there is none",
+            "c30 >= 0",
+        ),
     ],
+    family: None,
     formula: Yeoh::ENERGY,
     convention: "I1 = lambda1^2 + lambda2^2 + lambda3^2, lambda1 lambda2 lambda3 = 1; shear modulus 2 c10; \
                  no constant has a default, write 0",
     source: "Yeoh, Rubber Chem. Technol. 63 (1990) 792; 66 (1993) 754",
-    build: |values| {
-        let (c10, c20, c30) = (values[0], values[1], values[2]);
+    build: |given| {
+        let (c10, c20, c30) = (
+            given.number("c10"),
+            given.number("c20"),
+            given.number("c30"),
+        );
         if c10 <= 0.0 {
             let problem = Problem::out_of_range("c10", c10, "c10 > 0", "any positive stress");
             return Err(problem.because("the shear modulus is 2 c10"));
@@ -109,21 +109,9 @@ impl Formula for Yeoh {
 
     fn parameters(&self) -> Vec<Parameter> {
         vec![
-            Parameter {
-                name: "c10",
-                value: self.c10,
-                dimension: Dimension::Stress,
-            },
-            Parameter {
-                name: "c20",
-                value: self.c20,
-                dimension: Dimension::Stress,
-            },
-            Parameter {
-                name: "c30",
-                value: self.c30,
-                dimension: Dimension::Stress,
-            },
+            Parameter::number("c10", self.c10, Dimension::Stress),
+            Parameter::number("c20", self.c20, Dimension::Stress),
+            Parameter::number("c30", self.c30, Dimension::Stress),
         ]
     }
 }

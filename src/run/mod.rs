@@ -16,6 +16,7 @@ mod criteria;
 mod exports;
 mod folders;
 mod format_pages;
+mod materials;
 mod pairing;
 mod parameters;
 mod refusals;

@@ -1,109 +1,11 @@
 //! From one combination of a problem block to the parameters of its exact solution.
 
+use super::materials::{Materials, refuse};
 use crate::exact::{Ends, Parameters, catalogue};
-use crate::input::Finding;
-use crate::materials::{self, Material};
+use crate::materials::Material;
 use crate::mechanics::{Dimension, UnitSystem};
-use crate::suite::model::{MaterialEntry, Suite};
 use crate::suite::tree::{Node, Value};
 use crate::suite::{Block, Placed, Quantity, Reader, nearest};
-
-/// The materials of a suite, built; a material that could not be is `None` (and already reported).
-#[derive(Debug)]
-pub struct Materials {
-    list: Vec<(String, Option<Material>)>,
-}
-
-impl Materials {
-    /// Builds every material of the suite, reporting each problem at its place.
-    pub fn build(suite: &Suite, reader: &mut Reader) -> Self {
-        let built = suite.materials.iter().map(|entry| {
-            (
-                entry.name.clone(),
-                build_material(entry, &suite.units, reader),
-            )
-        });
-        Self {
-            list: built.collect(),
-        }
-    }
-
-    fn find(&self, name: &str) -> Option<&Option<Material>> {
-        self.list
-            .iter()
-            .find(|(known, _)| known == name)
-            .map(|(_, material)| material)
-    }
-
-    fn names(&self) -> Vec<&str> {
-        self.list.iter().map(|(name, _)| name.as_str()).collect()
-    }
-}
-
-fn build_material(
-    entry: &MaterialEntry,
-    units: &UnitSystem,
-    reader: &mut Reader,
-) -> Option<Material> {
-    let Some(law) = materials::find(&entry.law.value) else {
-        let names: Vec<_> = materials::entries().iter().map(|e| e.name).collect();
-        let finding = refuse(
-            &entry.law,
-            "unknown-law",
-            format!("unknown law \"{}\"", entry.law.value),
-            reader,
-        );
-        finding.expected = format!("one of: {}", names.join(", "));
-        if let Some(near) = nearest(&entry.law.value, names) {
-            finding.hint = format!("did you mean `{near}`?");
-        }
-        return None;
-    };
-    let mut values = Vec::new();
-    let mut complete = true;
-    for (name, quantity) in &entry.constants {
-        let known = law.parameters.iter().find(|p| p.name == name.value);
-        let dimension = known.map_or(quantity.dimension(), |p| p.dimension);
-        match quantity.within(dimension, units) {
-            Ok(value) => values.push((name.value.clone(), value)),
-            Err(found) => {
-                refuse(name, "wrong-unit", found, reader);
-                complete = false;
-            }
-        }
-    }
-    if !complete {
-        return None;
-    }
-    match materials::build(&entry.law.value, &values) {
-        Ok(material) => Some(material),
-        Err(problem) => {
-            let at = entry
-                .constants
-                .iter()
-                .map(|(name, _)| name)
-                .find(|n| n.value == problem.parameter);
-            refuse(
-                at.unwrap_or(&entry.law),
-                "material-constants",
-                problem.message,
-                reader,
-            )
-            .hint = problem.hint;
-            None
-        }
-    }
-}
-
-fn refuse<'r>(
-    at: &Placed<String>,
-    rule: &str,
-    found: String,
-    reader: &'r mut Reader,
-) -> &'r mut Finding {
-    let place = reader.place(at.line, at.column, &at.path);
-    reader.push(Finding::refused(rule, place, found))
-}
 
 /// Reads one combination. What is wrong is reported; `None` then.
 pub fn read(

@@ -25,25 +25,15 @@ fn read_one(name: &str, node: &Node, reader: &mut Reader) -> Option<MaterialEntr
     let path = format!("materials.{name}");
     let (law, constants) = reader.variant(node, &path)?;
     let law_path = format!("{path}.{law}");
-    let mut read = Vec::new();
-    if let Some(constants) = constants {
-        let Value::Map(entries) = &constants.value else {
-            let found = format!("found {}", constants.kind());
-            reader
-                .refuse("wrong-type", constants, &law_path, found)
-                .expected = "a block of constants".into();
-            return None;
-        };
-        for (key, value) in entries {
-            let at = format!("{law_path}.{}", key.name);
-            if let Some(quantity) = reader.quantity(value, &at) {
-                read.push((placed(key.name.clone(), value, &at), quantity));
-            }
-        }
+    if let Some(found) = constants.filter(|c| !matches!(c.value, Value::Map(_))) {
+        let kind = format!("found {}", found.kind());
+        reader.refuse("wrong-type", found, &law_path, kind).expected =
+            "a block of constants".into();
+        return None;
     }
     Some(MaterialEntry {
         name: name.to_string(),
         law: placed(law, node, &law_path),
-        constants: read,
+        constants: constants.map(|c| placed(c.clone(), c, &law_path)),
     })
 }

@@ -26,12 +26,13 @@ pub struct Suite {
     pub cases: Vec<CaseEntry>,
 }
 
-/// A named material: a law with its constants.
+/// A named material: a law with its constants as written.
 #[derive(Debug, Clone, PartialEq)]
 pub struct MaterialEntry {
     pub name: String,
     pub law: Placed<String>,
-    pub constants: Vec<(Placed<String>, Quantity)>,
+    /// The block of its constants, read with the law at hand.
+    pub constants: Option<Placed<Node>>,
 }
 
 /// A case before its lists are expanded.

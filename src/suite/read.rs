@@ -350,7 +350,7 @@ cases:
             .replace("section: 1/4", "secton: 1/4")
             .replace("within: 0.2", "inside: 0.2")
             .replace("stress: MPa", "stress: mm")
-            .replace("400 kPa", "[1]");
+            .replace("{ mu: 400 kPa }", "[1]");
         let findings = read(&broken, "suite.yaml").unwrap_err();
         let lines: Vec<_> = findings.iter().filter_map(|f| f.place.line).collect();
         for line in [3, 5, 11, 16] {
