@@ -12,11 +12,14 @@
 //! displacement: a = A + u(A), enclosed volume pi a^2 (1 + ez).
 
 use super::Ends;
+use super::body::Body;
+use super::description::Description;
 use super::parameters::{Parameters, refuse};
-use super::solution::{Body, ErrorBound, ExactSolution, Kinematics, Refusal, State, Total};
+use super::solution::{ErrorBound, ExactSolution, Kinematics, Refusal, State, Total};
 use super::totals::TubeTotals;
+use super::tube_words::TubeWords;
 use crate::materials::{LinearElastic, Material};
-use crate::mechanics::{Point, SymTensor};
+use crate::mechanics::{Point, SymTensor, UnitSystem};
 use nalgebra::Vector3;
 use std::f64::consts::PI;
 
@@ -37,6 +40,7 @@ pub struct LameTube {
     linear: f64,
     inverse: f64,
     totals: Vec<Total>,
+    words: TubeWords,
 }
 
 impl LameTube {
@@ -88,6 +92,15 @@ impl LameTube {
             linear,
             inverse: (1.0 + nu) * decaying / e,
             totals: Vec::new(),
+            words: TubeWords {
+                inner: given.inner_radius,
+                outer: given.outer_radius,
+                ends: given.ends,
+                inner_pressure: given.inner_pressure,
+                outer_pressure: given.outer_pressure,
+                kinematics: Kinematics::SmallStrain,
+                dead: false,
+            },
         };
         tube.totals = tube.all_totals(given).list();
         if tube
@@ -189,6 +202,14 @@ impl ExactSolution for LameTube {
 
     fn kinematics(&self) -> Kinematics {
         Kinematics::SmallStrain
+    }
+
+    fn description(&self, units: &UnitSystem) -> Description {
+        self.words.description("tube", units)
+    }
+
+    fn load_stress(&self) -> f64 {
+        self.words.inner_pressure.abs() + self.words.outer_pressure.abs()
     }
 
     fn method(&self) -> String {

@@ -1,8 +1,11 @@
 //! Exact solutions. Never sees a mesh, so that no solution can be bent towards a result.
 
+pub mod body;
+pub mod description;
 pub mod solution;
 
 pub mod ends;
+pub mod given;
 pub mod parameters;
 
 pub mod lame_tube;
@@ -11,10 +14,15 @@ pub mod pressurised_tube;
 pub mod catalogue;
 
 mod totals;
+mod tube_entries;
+mod tube_words;
 
-pub use catalogue::{Entry, ParameterEntry, build, entries, find};
+pub use body::{Body, Frame};
+pub use catalogue::{Entry, build, entries, find};
+pub use description::{Description, Line, Sketch};
 pub use ends::Ends;
+pub use given::{Form, Given, ParameterEntry, Value, VariantEntry};
 pub use lame_tube::LameTube;
 pub use parameters::Parameters;
 pub use pressurised_tube::{Limit, PressurisedTube};
-pub use solution::{Body, ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};
+pub use solution::{ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};

@@ -1,6 +1,8 @@
 //! What a tube is built from, and the checks every tube shares.
 
 use super::Ends;
+pub(super) use super::given::refuse;
+use super::given::{Given, Value};
 use super::solution::Refusal;
 use crate::materials::Material;
 
@@ -19,19 +21,22 @@ pub struct Parameters {
     pub outer_pressure: f64,
 }
 
-/// A refusal in one line.
-pub(super) fn refuse(parameter: &'static str, message: String, hint: impl Into<String>) -> Refusal {
-    Refusal {
-        message,
-        parameter,
-        hint: hint.into(),
-    }
-}
-
 /// Beyond this ratio of the radii the wall is no tube any more, and its integrals no numbers.
 const MOST_RATIO: f64 = 1e6;
 
 impl Parameters {
+    /// From what a suite gives.
+    pub(super) fn of(given: &Given) -> Result<Self, Refusal> {
+        Ok(Self {
+            inner_radius: given.finite("inner-radius")?,
+            outer_radius: given.finite("outer-radius")?,
+            ends: given.ends()?,
+            material: given.material()?.clone(),
+            inner_pressure: given.finite_or("inner-pressure", 0.0)?,
+            outer_pressure: given.finite_or("outer-pressure", 0.0)?,
+        })
+    }
+
     /// Refuses what is no tube: radii out of order, values that are not finite.
     pub(super) fn check(&self) -> Result<(), Refusal> {
         let (force, stretch) = match self.ends {
@@ -83,5 +88,23 @@ impl Parameters {
             return Err(refuse("outer-radius", message, ""));
         }
         Ok(())
+    }
+}
+
+impl From<&Parameters> for Given {
+    fn from(p: &Parameters) -> Self {
+        Self::default()
+            .number("inner-radius", p.inner_radius)
+            .number("outer-radius", p.outer_radius)
+            .with("ends", Value::Ends(p.ends))
+            .with("material", Value::Material(p.material.clone()))
+            .number("inner-pressure", p.inner_pressure)
+            .number("outer-pressure", p.outer_pressure)
+    }
+}
+
+impl From<&Given> for Given {
+    fn from(given: &Given) -> Self {
+        given.clone()
     }
 }

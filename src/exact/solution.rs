@@ -1,6 +1,8 @@
 //! What every exact solution answers: the state at a reference point, totals, its body and its own error bound.
 
-use crate::mechanics::{Dimension, Point, SymTensor};
+use super::body::{Body, Frame};
+use super::description::{Description, Line};
+use crate::mechanics::{Dimension, Point, SymTensor, UnitSystem};
 use nalgebra::{Matrix3, Vector3};
 
 /// The exact state at one reference point. Everything in the units of the case; tension positive.
@@ -36,7 +38,7 @@ impl State {
 pub enum Extent {
     /// The same for any share: a stretch, a radius, a pressure.
     Whole,
-    /// Proportional to the share of the section: a force.
+    /// Proportional to the share of the section (of a sphere, of the whole): a force.
     Section,
     /// Proportional to the share of the section and to the axial length (one, in a slice): an energy, a volume.
     SectionAndLength,
@@ -50,34 +52,6 @@ pub struct Total {
     pub value: Result<f64, String>,
     pub dimension: Dimension,
     pub extent: Extent,
-}
-
-/// The body an exact solution fills in its reference state.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub enum Body {
-    /// `inner <= R <= outer`, any length along Z.
-    Tube { inner: f64, outer: f64 },
-}
-
-impl Body {
-    /// How far a point lies outside, zero inside.
-    pub fn outside(&self, point: &Point) -> f64 {
-        let Body::Tube { inner, outer } = self;
-        let radius = point.radius();
-        (inner - radius).max(radius - outer).max(0.0)
-    }
-
-    /// Area of the full section.
-    pub fn section_area(&self) -> f64 {
-        let Body::Tube { inner, outer } = self;
-        std::f64::consts::PI * (outer - inner) * (outer + inner)
-    }
-
-    /// Wall thickness.
-    pub fn thickness(&self) -> f64 {
-        let Body::Tube { inner, outer } = self;
-        outer - inner
-    }
 }
 
 /// Bounds on the error of the solution's own numbers, relative to the largest value of the case.
@@ -124,4 +98,36 @@ pub trait ExactSolution: Send + Sync + std::fmt::Debug {
 
     /// How the numbers are obtained, for reports: "closed form", "quadrature and Newton", with digits.
     fn method(&self) -> String;
+
+    /// The solution in words, in the units its numbers are in.
+    fn description(&self, units: &UnitSystem) -> Description;
+
+    /// The line its stations stand on: through the wall where there is one.
+    fn line(&self) -> Line {
+        let body = self.body();
+        match (body.span(), body.frame()) {
+            (Some((inner, outer)), Frame::Spherical) => Line::radial(inner, outer, Line::SPHERE),
+            (Some((inner, outer)), _) => Line::radial(inner, outer, Line::TUBE),
+            (None, _) => Line {
+                from: Point::new(0.0, 0.0, 0.0),
+                to: body.middle(),
+                columns: Line::CARTESIAN,
+            },
+        }
+    }
+
+    /// Whether particles turn about the axis, so that the radial direction of the reference is not the deformed one.
+    fn turns(&self) -> bool {
+        false
+    }
+
+    /// Size of the loads as stresses: what a force that is their balance is measured against.
+    fn load_stress(&self) -> f64 {
+        0.0
+    }
+
+    /// Body force per reference volume that equilibrium needs, in X, Y, Z.
+    fn body_force(&self, _point: Point) -> Result<Vector3<f64>, Refusal> {
+        Ok(Vector3::zeros())
+    }
 }

@@ -98,6 +98,16 @@ impl Material {
         }
     }
 
+    /// The name, and that its volume changes where the law alone would not say so.
+    pub fn in_words(&self) -> String {
+        match self {
+            Self::Compressible(Compressible::Split { law, volumetric }) => {
+                format!("{} with volumetric {}", law.name(), volumetric.form.name())
+            }
+            _ => self.name().to_string(),
+        }
+    }
+
     /// Which solutions can use it.
     pub fn kind(&self) -> MaterialKind {
         match self {

@@ -69,8 +69,7 @@ pub struct Declared {
 
 /// How far a node may be from where it belongs: a millionth of the wall, and what single precision leaves.
 pub fn tolerance(body: &Body) -> f64 {
-    let Body::Tube { outer, .. } = body;
-    1e-6 * body.thickness() + 2e-7 * outer
+    1e-6 * body.thickness() + 2e-7 * body.extent()
 }
 
 /// Findings of one kind that are listed; the rest are counted.
@@ -92,6 +91,7 @@ pub fn compare(
         slack: declared.node_tolerance.unwrap_or_else(|| tolerance(body)),
         folder,
     };
+    look.kind_of_model(&mut report);
     look.nodes_on_body(&mut report);
     look.walls(boundary, &mut report);
     look.axial_extent(declared, &mut report);
@@ -107,24 +107,57 @@ pub(super) struct Look<'a> {
 }
 
 impl Look<'_> {
-    /// Distance of a position in space from the axis.
+    /// The coordinate of a position in space that runs from wall to wall.
     pub(super) fn radius(&self, position: [f64; 3]) -> f64 {
-        model::point(position).radius()
+        self.body.radius(&model::point(position))
     }
 
     pub(super) fn wall_of(&self, radius: f64) -> Option<Wall> {
-        let Body::Tube { inner, outer } = self.body;
-        if (radius - inner).abs() <= self.slack {
+        let (inner, outer) = self.body.walls();
+        let near = |wall: Option<f64>| wall.is_some_and(|w| (radius - w).abs() <= self.slack);
+        if near(inner) {
             Some(Wall::Inner)
-        } else if (radius - outer).abs() <= self.slack {
+        } else if near(outer) {
             Some(Wall::Outer)
         } else {
             None
         }
     }
 
+    /// Where the body is, for messages.
+    fn range(&self) -> String {
+        match self.body {
+            Body::Block { lower, upper } => format!(
+                "X from {} to {}, Y from {} to {}",
+                lower[0], upper[0], lower[1], upper[1]
+            ),
+            Body::Ellipse { a, b } => format!("(X/{a})^2 + (Y/{b})^2 at most 1"),
+            Body::Free { hole } => format!("R at least {hole}"),
+            _ => {
+                let (inner, outer) = self.body.span().unwrap_or_default();
+                format!("R from {inner} to {outer}")
+            }
+        }
+    }
+
     pub(super) fn place(&self, file: &str) -> Place {
         Place::file(format!("{}/{file}", self.folder))
+    }
+
+    /// A plane section cannot stand for a sphere, nor half a section for what is no tube.
+    fn kind_of_model(&self, report: &mut BodyReport) {
+        let kind = self.mesh.kind();
+        let expected = match (self.body, kind) {
+            (Body::Sphere { .. }, ModelKind::Planar) => "an axisymmetric model or a solid",
+            (Body::Tube { .. } | Body::Sphere { .. }, _) => return,
+            (_, ModelKind::Axisymmetric) => "a plane model or a solid",
+            _ => return,
+        };
+        let found = format!("the result set is {} model", kind.words());
+        let place = self.place("nodes.csv");
+        report
+            .findings
+            .push(Finding::refused("model-of-body", place, found).expected(expected));
     }
 
     /// Corner nodes lie on the body; mid-side nodes may lie off it only as far as the chord of their corners does.
@@ -151,15 +184,16 @@ impl Look<'_> {
             }
             stray += 1;
             if stray <= LISTED {
-                let Body::Tube { inner, outer } = self.body;
-                let found = format!(
-                    "node {} lies {off:.3e} off the body (R = {:.6})",
-                    self.mesh.nodes.ids[node],
-                    self.radius(self.mesh.nodes.positions[node])
-                );
+                let [x, y, z] = self.mesh.nodes.positions[node];
+                let at = match self.body.span() {
+                    Some(_) => format!("R = {:.6}", self.radius([x, y, z])),
+                    None => format!("X = {x:.6}, Y = {y:.6}"),
+                };
+                let id = self.mesh.nodes.ids[node];
+                let found = format!("node {id} lies {off:.3e} off the body ({at})");
                 report.findings.push(
                     Finding::refused("node-on-body", self.mesh.nodes.place(node), found)
-                        .expected(format!("R from {inner} to {outer}, to within {:.1e}", self.slack))
+                        .expected(format!("{}, to within {:.1e}", self.range(), self.slack))
                         .hint("are these reference coordinates, in the declared unit, about the Z axis, of this case? a file of few digits needs `node-tolerance:`"),
                 );
             }
@@ -245,24 +279,25 @@ impl Look<'_> {
         straight: usize,
         astray: usize,
     ) {
-        let Body::Tube { inner, outer } = self.body;
+        let (inner, outer) = self.body.walls();
         let walls = [
             ("inner", inner, report.inner_elements.len()),
             ("outer", outer, report.outer_elements.len()),
         ];
         for (name, radius, sides) in walls {
-            if sides == 0 {
-                let (low, high) = self.extent_of_radius();
-                report.findings.push(
-                    Finding::refused(
-                        "wall-reached",
-                        self.place("nodes.csv"),
-                        format!("no element side lies on the {name} wall; nodes reach from R = {low:.6} to {high:.6}"),
-                    )
-                    .expected(format!("sides at R = {radius}"))
-                    .hint("radius or diameter? unit? reference or current coordinates?"),
-                );
-            }
+            let Some(radius) = radius.filter(|_| sides == 0) else {
+                continue;
+            };
+            let (low, high) = self.extent_of_radius();
+            report.findings.push(
+                Finding::refused(
+                    "wall-reached",
+                    self.place("nodes.csv"),
+                    format!("no element side lies on the {name} wall; nodes reach from R = {low:.6} to {high:.6}"),
+                )
+                .expected(format!("sides at R = {radius}"))
+                .hint("radius or diameter? unit? reference or current coordinates?"),
+            );
         }
         let place = self.place("elements.csv");
         match report.sides {
@@ -297,7 +332,7 @@ impl Look<'_> {
     }
 
     fn axial_extent(&self, declared: Declared, report: &mut BodyReport) {
-        if self.mesh.kind() == ModelKind::Planar {
+        if self.mesh.kind() == ModelKind::Planar || !self.body.is_prism() {
             report.axial_length = 1.0;
             return;
         }

@@ -9,8 +9,8 @@ use super::points::{self, PointNorms};
 use super::profile::{self, StressProfile};
 use super::wall::{self, AtPlace};
 use super::watched::elements_across;
-use crate::exact::{Body, ExactSolution};
-use crate::mechanics::{Dimension, Point, UnitSystem};
+use crate::exact::{ExactSolution, Frame};
+use crate::mechanics::{Dimension, UnitSystem};
 use crate::results::{Channel, ModelKind, ResultSet};
 
 /// All of one mesh.
@@ -68,8 +68,8 @@ impl<'a> Level<'a> {
         self.wall_stresses(&mut level);
         self.totals(&mut level);
         if let (Some(mesh), Some(points)) = (self.mesh(), self.points) {
-            level.profile =
-                profile::profile(mesh, &points.kept, &profile::column(mesh), self.exact);
+            let column = profile::column(mesh, &self.exact.body());
+            level.profile = profile::profile(mesh, &points.kept, &column, self.exact);
         }
         level
     }
@@ -110,7 +110,7 @@ impl<'a> Level<'a> {
                         format!(
                             "node {} (R {:.6}, {:.3} deg)",
                             mesh.nodes.ids[node],
-                            p.radius(),
+                            self.exact.body().radius(&p),
                             p.theta().to_degrees()
                         )
                     });
@@ -128,8 +128,13 @@ impl<'a> Level<'a> {
                     }
                 }
             });
-        let Body::Tube { inner, outer } = self.exact.body();
-        let middle = wall::nodes_nearest(mesh, 0.5 * (inner + outer), outer - inner);
+        let shape = self.exact.body();
+        let middle = match shape.span() {
+            Some((inner, outer)) => {
+                wall::nodes_nearest(mesh, &shape, 0.5 * (inner + outer), outer - inner)
+            }
+            None => Vec::new(),
+        };
         let (inner_nodes, outer_nodes) = match self.body {
             Some(body) => (body.inner_nodes.clone(), body.outer_nodes.clone()),
             None => (Vec::new(), Vec::new()),
@@ -253,9 +258,10 @@ impl<'a> Level<'a> {
         let Some((mesh, body)) = self.mesh().zip(self.body) else {
             return;
         };
-        let Body::Tube { inner, outer } = self.exact.body();
-        let middle = 0.5 * (inner + outer);
-        let across = elements_across(mesh, middle);
+        let shape = self.exact.body();
+        let (inner, outer) = shape.walls();
+        let middle = shape.span().map(|(inner, outer)| 0.5 * (inner + outer));
+        let across = middle.map_or_else(Vec::new, |r| elements_across(mesh, &shape, r));
         let walls = [
             ("inner-wall", inner, &body.inner_elements, &body.inner_nodes),
             ("mid-wall", middle, &across, &Vec::new()),
@@ -264,12 +270,37 @@ impl<'a> Level<'a> {
         for (wall_name, radius, elements, nodes) in walls {
             for (component, symbol) in ["srr", "stt", "szz"].into_iter().enumerate() {
                 let name = format!("{wall_name}-{symbol}");
+                if let Some(why) = self.no_such_stress(radius, component) {
+                    self.missing_stresses(&name, why, level);
+                    continue;
+                }
+                let radius = radius.unwrap_or(0.0);
                 self.point_stress(&name, mesh, elements, radius, component, level);
                 if wall_name != "mid-wall" {
                     self.nodal_stress(&format!("{name}-nodal"), mesh, nodes, component, level);
                 }
             }
         }
+    }
+
+    /// Why the body has no stress of that name, or `None`.
+    fn no_such_stress(&self, radius: Option<f64>, component: usize) -> Option<&'static str> {
+        match (radius, self.exact.body().frame()) {
+            (None, _) => Some("the body has no such wall"),
+            (_, Frame::Cartesian) => Some("the body has no radial and hoop direction"),
+            (_, Frame::Spherical) if component == 2 => Some("a sphere has no axial direction"),
+            _ => None,
+        }
+    }
+
+    fn missing_stresses(&self, name: &str, why: &str, level: &mut LevelMeasures) {
+        let unit = self.unit(Dimension::Stress);
+        let mut names = vec![name.to_string()];
+        if !name.starts_with("mid-wall") {
+            names.extend(["extrapolated", "nodal"].map(|how| format!("{name}-{how}")));
+        }
+        let missing = names.iter().map(|name| Measured::missing(name, &unit, why));
+        level.measured.extend(missing);
     }
 
     fn point_stress(
@@ -304,7 +335,7 @@ impl<'a> Level<'a> {
         let extrapolated = kept.and_then(|kept| {
             let state = self
                 .exact
-                .at(Point::new(radius, 0.0, 0.0))
+                .at(self.exact.body().point_at(radius))
                 .map_err(|r| r.to_string())?;
             let exact = state.local_stress.to_array()[component];
             Ok(wall::extrapolated(
@@ -337,7 +368,10 @@ impl<'a> Level<'a> {
 
     /// Cartesian components that the radial and hoop (0, 1) or the axial stress (2) are made of.
     fn needed_for(&self, component: usize) -> &'static [usize] {
+        let spherical = self.exact.body().frame() == Frame::Spherical;
         match (component, self.set.kind()) {
+            (_, ModelKind::Axisymmetric) if spherical => &[0, 1, 2, 5],
+            (_, _) if spherical => &[0, 1, 2, 3, 4, 5],
             (2, _) => &[2],
             // on the X axis the shear has no part in them
             (_, ModelKind::Axisymmetric) => &[0, 1],

@@ -1,7 +1,7 @@
 //! How a mesh stands for the body, and which part of the exact state it is held to.
 
 use crate::elements::{MAX_NODES, ShapeTable, map};
-use crate::exact::State;
+use crate::exact::{Body, ExactSolution, Frame, State};
 use crate::mechanics::{Point, SymTensor};
 use crate::results::{Elements, ModelKind, Nodes};
 
@@ -43,15 +43,62 @@ impl Mesh<'_> {
     }
 }
 
-/// Radial, hoop and axial stress from Cartesian components, of which those that are not given hold NaN. NaN stays
-/// only where a component that is not given is needed: on the X axis, where every axisymmetric model lies, no shear is.
-pub fn local_normal_stress(mut stress: [f64; 6], direction: (f64, f64)) -> [f64; 3] {
-    let idle = if direction.1 == 0.0 { 3 } else { 4 };
-    for shear in stress[idle..].iter_mut().filter(|shear| shear.is_nan()) {
-        *shear = 0.0;
+/// Normal stresses along the body's own axes (radial, hoop, axial) from Cartesian components, of which those that are not
+/// given hold NaN. NaN stays only where a component that is not given is needed: on the X axis, where every axisymmetric
+/// model lies, no shear with Y is. `at` is where the axes are taken: the reference point, or the deformed one where
+/// particles turn. On a sphere the two hoop stresses should be one: the one farther from `exact` is taken.
+pub fn local_normal_stress(
+    body: &Body,
+    mut stress: [f64; 6],
+    at: Point,
+    exact: &SymTensor,
+) -> [f64; 3] {
+    let direction = at.direction();
+    let idle = if direction.1 == 0.0 { 3..5 } else { 4..5 };
+    let mut forget = |range: std::ops::Range<usize>| {
+        for shear in stress[range].iter_mut().filter(|shear| shear.is_nan()) {
+            *shear = 0.0;
+        }
+    };
+    match body.frame() {
+        Frame::Cartesian => [stress[0], stress[1], stress[2]],
+        Frame::Cylindrical => {
+            forget(idle.start..6);
+            let local = SymTensor::from_array(stress).cartesian_to_cylindrical(direction);
+            [local.xx, local.yy, local.zz]
+        }
+        Frame::Spherical => {
+            if direction.1 == 0.0 {
+                forget(idle);
+            }
+            let local = SymTensor::from_array(stress).cartesian_to_cylindrical(direction);
+            let size = at.radius().hypot(at.z);
+            let (c, s) = if size == 0.0 {
+                (1.0, 0.0)
+            } else {
+                (at.radius() / size, at.z / size)
+            };
+            let radial = local.xx * c * c + local.zz * s * s + 2.0 * local.zx * s * c;
+            let along = local.xx * s * s + local.zz * c * c - 2.0 * local.zx * s * c;
+            let off = |hoop: f64| (hoop - exact.yy).abs();
+            let worse = if off(along) > off(local.yy) || along.is_nan() {
+                along
+            } else {
+                local.yy
+            };
+            [radial, worse, f64::NAN]
+        }
     }
-    let local = SymTensor::from_array(stress).cartesian_to_cylindrical(direction);
-    [local.xx, local.yy, local.zz]
+}
+
+/// Where the local axes of a particle are: its reference point, or where it has moved to if particles turn.
+pub fn place_of_axes(exact: &dyn ExactSolution, point: Point, state: &State) -> Point {
+    if exact.turns() {
+        let u = state.displacement;
+        Point::new(point.x + u[0], point.y + u[1], point.z + u[2])
+    } else {
+        point
+    }
 }
 
 /// A position in space as a point.
@@ -132,14 +179,46 @@ mod tests {
 
     #[test]
     fn a_shear_that_is_not_given_matters_only_off_the_x_axis() {
+        let tube = Body::Tube {
+            inner: 1.0,
+            outer: 2.0,
+        };
+        let local = |stress, (c, s): (f64, f64)| {
+            local_normal_stress(&tube, stress, Point::new(c, s, 0.0), &SymTensor::default())
+        };
         let stress = [1.0, 2.0, 3.0, f64::NAN, f64::NAN, 0.5];
-        assert_eq!(local_normal_stress(stress, (1.0, 0.0)), [1.0, 2.0, 3.0]);
-        let turned = local_normal_stress(stress, (0.6, 0.8));
+        assert_eq!(local(stress, (1.0, 0.0)), [1.0, 2.0, 3.0]);
+        let turned = local(stress, (0.6, 0.8));
         assert!(turned[0].is_nan() && turned[1].is_nan());
         assert_eq!(turned[2], 3.0);
         let known = [1.0, 2.0, 3.0, 0.25, f64::NAN, f64::NAN];
-        let turned = local_normal_stress(known, (0.6, 0.8));
+        let turned = local(known, (0.6, 0.8));
         // 0.36 + 2 * 0.64 + 2 * 0.25 * 0.48
         assert!((turned[0] - 1.88).abs() < 1e-15 && (turned[1] - 1.12).abs() < 1e-15);
+    }
+
+    #[test]
+    fn on_a_sphere_the_worse_of_the_two_hoop_stresses_counts() {
+        let sphere = Body::Sphere {
+            inner: 1.0,
+            outer: 2.0,
+        };
+        let exact = SymTensor::diagonal(-1.0, 2.0, 2.0);
+        // radial along Z: rr = szz, the hoops are sxx and syy
+        let at = Point::new(0.0, 0.0, 1.5);
+        let local = |sxx: f64, syy: f64| {
+            local_normal_stress(&sphere, [sxx, syy, -1.0, 0.0, 0.0, 0.0], at, &exact)
+        };
+        assert_eq!(local(2.0, 2.5)[..2], [-1.0, 2.5]);
+        assert_eq!(local(1.0, 2.5)[..2], [-1.0, 1.0]);
+        // 45 degrees in the X-Z plane, shear only: radial +, meridian -
+        let at = Point::new(1.0, 0.0, 1.0);
+        let half = local_normal_stress(
+            &sphere,
+            [0.0, f64::NAN, 0.0, f64::NAN, f64::NAN, 3.0],
+            at,
+            &exact,
+        );
+        assert!((half[0] - 3.0).abs() < 1e-15);
     }
 }

@@ -138,7 +138,7 @@ fn judge_rows(
             Ok(state) => {
                 add_row(&mut norms, block, row, &state);
                 if watched.get(block.element[row] as usize) == Some(&true) {
-                    norms.kept.push(kept(block, row, &state));
+                    norms.kept.push(kept(block, row, exact, &state));
                 }
             }
             Err(refusal) => {
@@ -193,16 +193,20 @@ pub fn stress_squares(computed: &[f64; 6], exact: &[f64; 6], components: Compone
     sums
 }
 
-fn kept(block: &PointBlock, row: usize, state: &State) -> KeptPoint {
+fn kept(block: &PointBlock, row: usize, exact: &dyn ExactSolution, state: &State) -> KeptPoint {
+    let body = exact.body();
     let point = model::point(block.position[row]);
     let computed = match &block.stress {
         None => [f64::NAN; 3],
-        Some(stress) => model::local_normal_stress(stress[row], point.direction()),
+        Some(stress) => {
+            let at = model::place_of_axes(exact, point, state);
+            model::local_normal_stress(&body, stress[row], at, &state.local_stress)
+        }
     };
     KeptPoint {
         element: block.element[row],
         point: block.point[row],
-        radius: point.radius(),
+        radius: body.radius(&point),
         theta: point.theta(),
         computed,
         exact: [

@@ -23,11 +23,16 @@ pub struct StressProfile {
 }
 
 /// Indices of the elements the radius runs through, ascending.
-pub fn column(mesh: Mesh) -> Vec<usize> {
+pub fn column(mesh: Mesh, body: &Body) -> Vec<usize> {
     let angles = (0..mesh.nodes.len()).map(|node| mesh.node(node).theta());
     let (low, high) = extent(angles);
     let target = low + WHERE * (high - low);
-    let axial = (0..mesh.nodes.len()).map(|node| mesh.node(node).z);
+    // height along the axis, on a sphere the latitude
+    let height_of = |p: Point| match body {
+        Body::Sphere { .. } => p.z.atan2(p.radius()),
+        _ => p.z,
+    };
+    let axial = (0..mesh.nodes.len()).map(|node| height_of(mesh.node(node)));
     let (bottom, top) = extent(axial);
     let height = bottom + WHERE * (top - bottom);
     let through = |element: &usize| {
@@ -38,7 +43,7 @@ pub fn column(mesh: Mesh) -> Vec<usize> {
                 .map(|&n| mesh.node(n as usize))
         };
         let (a, b) = extent(nodes().map(|p| p.theta()));
-        let (c, d) = extent(nodes().map(|p| p.z));
+        let (c, d) = extent(nodes().map(height_of));
         // an element across the cut of the angle at pi spans almost the whole turn
         b - a < std::f64::consts::PI
             && (low == high || (a..=b).contains(&target))
@@ -74,15 +79,16 @@ pub fn profile(
     {
         return None;
     }
-    let Body::Tube { inner, outer } = exact.body();
+    let body = exact.body();
+    let (inner, outer) = body.span()?;
     profile.computed.sort_by(|a, b| a.0.total_cmp(&b.0));
     profile
         .computed
         .dedup_by(|a, b| (a.0 - b.0).abs() <= 1e-9 * outer);
-    profile.borders = borders(mesh, column, inner, outer);
+    profile.borders = borders(mesh, &body, column, (inner, outer));
     for i in 0..STATIONS {
         let radius = inner + (outer - inner) * (i as f64 / (STATIONS - 1) as f64);
-        let state = exact.at(Point::new(radius.min(outer), 0.0, 0.0)).ok()?;
+        let state = exact.at(body.point_at(radius.min(outer))).ok()?;
         let s = state.local_stress;
         profile.exact.push((radius.min(outer), [s.xx, s.yy, s.zz]));
     }
@@ -108,14 +114,14 @@ fn along_one_radius(group: &[KeptPoint], profile: &mut StressProfile) {
     }
 }
 
-fn borders(mesh: Mesh, column: &[usize], inner: f64, outer: f64) -> Vec<f64> {
+fn borders(mesh: Mesh, body: &Body, column: &[usize], (inner, outer): (f64, f64)) -> Vec<f64> {
     let mut radii = vec![inner, outer];
     for &element in column {
         let corners = mesh.elements.shapes[element].corner_count();
         radii.extend(
             mesh.elements.nodes(element)[..corners]
                 .iter()
-                .map(|&n| mesh.node(n as usize).radius()),
+                .map(|&n| body.radius(&mesh.node(n as usize))),
         );
     }
     radii.retain(|r| (inner..=outer).contains(r));

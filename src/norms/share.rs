@@ -16,9 +16,15 @@ impl Look<'_> {
         boundary: &[Side],
         report: &mut BodyReport,
     ) {
-        let whole = self.body.section_area() * report.axial_length;
+        let Some(area) = self.body.section_area() else {
+            // the mesh itself says what is modelled
+            report.exact_volume = mesh_volume;
+            return;
+        };
+        let whole = area * report.axial_length;
         report.exact_volume = declared.share * whole;
-        if self.mesh.kind() == ModelKind::Axisymmetric && declared.share != 1.0 {
+        let ring = self.mesh.kind() == ModelKind::Axisymmetric && self.body.is_prism();
+        if ring && declared.share != 1.0 {
             let found = format!(
                 "`section:` declares {} of the section of an axisymmetric model",
                 declared.share
@@ -55,11 +61,18 @@ impl Look<'_> {
     /// A sector spans its share of the turn: the same sector meshed twice would have the volume, not the angle.
     fn angle(&self, declared: Declared, report: &mut BodyReport) {
         let turn = 2.0 * std::f64::consts::PI;
-        if declared.share >= 1.0 || self.mesh.kind() == ModelKind::Axisymmetric {
+        let Some(full) = self.body.turn() else {
+            return;
+        };
+        let share = declared.share * full / turn;
+        if share >= 1.0 || self.mesh.kind() == ModelKind::Axisymmetric {
             return;
         }
+        // nodes on the axis have no angle
         let mut angles: Vec<f64> = (0..self.mesh.nodes.len())
-            .map(|node| self.mesh.node(node).theta())
+            .map(|node| self.mesh.node(node))
+            .filter(|point| point.radius() > self.slack)
+            .map(|point| point.theta())
             .collect();
         angles.sort_by(f64::total_cmp);
         let (Some(first), Some(last)) = (angles.first(), angles.last()) else {
@@ -70,9 +83,10 @@ impl Look<'_> {
             .windows(2)
             .map(|pair| pair[1] - pair[0])
             .fold(across, f64::max);
-        let (found, wanted) = (turn - gap, declared.share * turn);
-        let Body::Tube { inner, .. } = self.body;
-        if (found - wanted).abs() <= 1e-3 * wanted + 4.0 * self.slack / inner {
+        let (found, wanted) = (turn - gap, share * turn);
+        let (inner, outer) = self.body.span().unwrap_or((0.0, 1.0));
+        let nearest = inner.max(0.1 * outer);
+        if (found - wanted).abs() <= 1e-3 * wanted + 4.0 * self.slack / nearest {
             return;
         }
         let text = format!(
@@ -91,7 +105,8 @@ impl Look<'_> {
 
     /// Volume between the wall circles and the sides that stand for them, from the largest gap found on any side.
     fn cut_off(&self, boundary: &[Side], share_and_length: f64) -> f64 {
-        let Body::Tube { inner, outer } = self.body;
+        let (inner, outer) = self.body.walls();
+        let (inner, outer) = (inner.unwrap_or(0.0), outer.unwrap_or(0.0));
         let (mut inner_gap, mut outer_gap) = (self.slack, self.slack);
         for side in boundary {
             let nodes = self.mesh.elements.nodes(side.element as usize);
@@ -114,14 +129,21 @@ impl Look<'_> {
             let gap = self.side_gap(
                 side.element as usize,
                 &corners,
-                if wall == Wall::Inner { *inner } else { *outer },
+                if wall == Wall::Inner { inner } else { outer },
             );
             match wall {
                 Wall::Inner => inner_gap = inner_gap.max(gap),
                 Wall::Outer => outer_gap = outer_gap.max(gap),
             }
         }
-        2.0 * std::f64::consts::PI * (inner * inner_gap + outer * outer_gap) * share_and_length
+        let gaps = |i: f64, o: f64| i * inner_gap + o * outer_gap;
+        let turn = 2.0 * std::f64::consts::PI;
+        match self.body {
+            Body::Sphere { .. } => {
+                2.0 * turn * gaps(inner * inner, outer * outer) * share_and_length
+            }
+            _ => turn * gaps(inner, outer.max(self.body.extent())) * share_and_length,
+        }
     }
 
     /// The largest distance from the wall on the lines between the corners of a side.

@@ -3,7 +3,8 @@
 use super::accumulate::Largest;
 use super::model::{self, Mesh};
 use super::points::KeptPoint;
-use crate::exact::ExactSolution;
+use crate::exact::{Body, ExactSolution};
+use crate::mechanics::Point;
 
 /// A number at a place with the exact one it is held against.
 #[derive(Debug, Clone, PartialEq)]
@@ -33,6 +34,22 @@ fn words(radius: f64, theta: f64) -> String {
     format!("(R {radius:.6}, {:.3} deg)", theta.to_degrees())
 }
 
+/// The part of a displacement that points from the axis, or from the centre of a sphere, to the particle.
+fn outward(body: &Body, point: &Point, u: [f64; 3]) -> f64 {
+    let (c, s) = point.direction();
+    let plane = u[0] * c + u[1] * s;
+    match body {
+        Body::Sphere { .. } => {
+            let size = body.radius(point);
+            if size == 0.0 {
+                return 0.0;
+            }
+            (plane * point.radius() + u[2] * point.z) / size
+        }
+        _ => plane,
+    }
+}
+
 /// Radial displacement of the worst of the nodes.
 ///
 /// # Errors
@@ -43,19 +60,19 @@ pub fn radial_displacement(
     nodes: &[usize],
     exact: &dyn ExactSolution,
 ) -> Result<Option<AtPlace>, String> {
+    let body = exact.body();
     let mut candidates = Vec::with_capacity(nodes.len());
     for &node in nodes {
         let point = mesh.node(node);
-        let (c, s) = point.direction();
         let state = exact.at(point).map_err(|r| r.to_string())?;
-        let u = displacements[node];
+        let outward = |u: [f64; 3]| outward(&body, &point, u);
         candidates.push(AtPlace {
-            computed: u[0] * c + u[1] * s,
-            exact: state.displacement[0] * c + state.displacement[1] * s,
+            computed: outward(displacements[node]),
+            exact: outward(state.displacement.into()),
             place: format!(
                 "node {} {}",
                 mesh.nodes.ids[node],
-                words(point.radius(), point.theta())
+                words(body.radius(&point), point.theta())
             ),
         });
     }
@@ -63,8 +80,8 @@ pub fn radial_displacement(
 }
 
 /// The nodes nearest to a radius: all within a millionth of `scale` of the nearest.
-pub fn nodes_nearest(mesh: Mesh, radius: f64, scale: f64) -> Vec<usize> {
-    let distance = |node: usize| (mesh.node(node).radius() - radius).abs();
+pub fn nodes_nearest(mesh: Mesh, body: &Body, radius: f64, scale: f64) -> Vec<usize> {
+    let distance = |node: usize| (body.radius(&mesh.node(node)) - radius).abs();
     let nearest = (0..mesh.nodes.len())
         .map(distance)
         .fold(f64::INFINITY, f64::min);
@@ -84,18 +101,20 @@ pub fn nodal_stress(
     component: usize,
     exact: &dyn ExactSolution,
 ) -> Result<Option<AtPlace>, String> {
+    let body = exact.body();
     let mut candidates = Vec::with_capacity(nodes.len());
     for &node in nodes {
         let point = mesh.node(node);
         let state = exact.at(point).map_err(|r| r.to_string())?;
-        let local = model::local_normal_stress(stress[node], point.direction());
+        let at = model::place_of_axes(exact, point, &state);
+        let local = model::local_normal_stress(&body, stress[node], at, &state.local_stress);
         candidates.push(AtPlace {
             computed: local[component],
             exact: state.local_stress.to_array()[component],
             place: format!(
                 "node {} {}",
                 mesh.nodes.ids[node],
-                words(point.radius(), point.theta())
+                words(body.radius(&point), point.theta())
             ),
         });
     }

@@ -22,6 +22,15 @@ pub enum ModelKind {
 }
 
 impl ModelKind {
+    /// With its article, for messages.
+    pub fn words(self) -> &'static str {
+        match self {
+            Self::Planar => "a plane",
+            Self::Solid => "a solid",
+            Self::Axisymmetric => "an axisymmetric",
+        }
+    }
+
     /// The word reports use.
     pub fn name(self) -> &'static str {
         match self {

@@ -3,7 +3,8 @@
 use super::facts;
 use super::plan::{CasePlan, Plan};
 use crate::elements::Shape;
-use crate::exact::{Ends, Kinematics};
+use crate::exact::Kinematics;
+use crate::materials::Material;
 use crate::mechanics::StressMeasure;
 use crate::norms::catalogue;
 use crate::verdict::outcome::Judged;
@@ -34,12 +35,18 @@ fn brief_case(case: &CasePlan) -> String {
         ("Body", facts::body(case)),
         ("", cuts(case)),
         ("Material", facts::material(case)),
-        ("", case.parameters.material.energy_text().to_string()),
-        ("", constants(case)),
-        ("Load", load(case)),
-        ("Ends", facts::ends(case)),
-        ("", ends(case)),
     ];
+    for material in case.given.materials() {
+        lines.push(("", material.energy_text()));
+        lines.push(("", constants(case, material)));
+    }
+    let description = facts::description(case);
+    lines.push(("Load", description.load));
+    if let Some(ends) = description.ends {
+        lines.push(("Ends", ends));
+    }
+    let notes = description.modelling.into_iter().enumerate();
+    lines.extend(notes.map(|(i, note)| (if i == 0 { "Modelling" } else { "" }, note)));
     if let Some(element) = &case.element {
         lines.push(("Element", element.text.clone()));
     }
@@ -82,54 +89,34 @@ fn cuts(case: &CasePlan) -> String {
     if case.share == 1.0 {
         return String::new();
     }
-    "no displacement normal to the two radial cuts, no friction on them".to_string()
+    "no displacement normal to the cuts, no friction on them".to_string()
 }
 
-fn constants(case: &CasePlan) -> String {
-    let m = &case.parameters.material;
+/// The constants of small strain, by the names other codes ask for.
+fn constants(case: &CasePlan, material: &Material) -> String {
     let unit = case.units.stress.name;
-    format!(
+    let (mu, bulk) = (material.shear_modulus(), material.bulk_modulus());
+    let mut text = format!(
         "small-strain constants: shear modulus {} {unit}, Young's modulus {} {unit}, Poisson's ratio {}",
-        twelve(m.shear_modulus()),
-        twelve(m.young_modulus()),
-        m.poisson_ratio()
-    )
+        twelve(mu),
+        twelve(material.young_modulus()),
+        twelve(material.poisson_ratio())
+    );
+    if bulk.is_finite() {
+        let _ = write!(
+            text,
+            ", bulk modulus K {} {unit}, Lame's lambda {} {unit}, 2/K {} 1/{unit}",
+            twelve(bulk),
+            twelve(bulk - mu / 1.5),
+            twelve(2.0 / bulk)
+        );
+    }
+    text
 }
 
 /// A derived constant without the noise of its last digits.
 fn twelve(value: f64) -> f64 {
     format!("{value:.11e}").parse().unwrap_or(value)
-}
-
-fn load(case: &CasePlan) -> String {
-    let tail = match case.exact.kinematics() {
-        Kinematics::Finite => {
-            "; normal to the deformed surface, per deformed area (a follower load)"
-        }
-        Kinematics::SmallStrain => "; small-strain kinematics",
-    };
-    format!("{}{tail}", facts::load(case))
-}
-
-fn ends(case: &CasePlan) -> String {
-    match case.parameters.ends {
-        Ends::PlaneStrain => "slice: plane strain; solid: no axial displacement at both end faces",
-        Ends::GeneralizedPlaneStrain { .. } => {
-            "slice: one axial stretch for the whole wall as an unknown; solid: end faces stay plane and parallel, \
-             no axial displacement at Z = 0"
-        }
-        Ends::Closed if case.exact.kinematics() == Kinematics::SmallStrain => {
-            "the net axial force on the wall is inner pressure x pi A^2 - outer pressure x pi B^2 with the given \
-             radii A, B; end faces stay plane and parallel; solid: no axial displacement at Z = 0"
-        }
-        Ends::Closed => {
-            "the net axial force on the wall is inner pressure x pi a^2 - outer pressure x pi b^2 with the deformed \
-             radii a, b; end faces stay plane and parallel; solid: no axial displacement at Z = 0"
-        }
-        Ends::FixedStretch { .. } => "slice: this axial stretch everywhere; solid: end faces moved apart by it, no axial displacement at Z = 0",
-        Ends::PlaneStress => "slice: plane stress; solid: end faces free",
-    }
-    .to_string()
 }
 
 fn meshes(case: &CasePlan) -> Vec<(&'static str, String)> {
@@ -266,13 +253,7 @@ fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
 
 /// Totals a criterion needs, and those worth having.
 pub fn totals(case: &CasePlan) -> Vec<&'static str> {
-    let mut wanted = vec!["strain_energy", "axial_force", "load_factor"];
-    if !matches!(
-        case.parameters.ends,
-        Ends::PlaneStrain | Ends::FixedStretch { .. }
-    ) {
-        wanted.insert(1, "axial_stretch");
-    }
+    let mut wanted = facts::description(case).totals;
     for criterion in &case.criteria {
         if criterion.measure == "axial-stretch" && !wanted.contains(&"axial_stretch") {
             wanted.insert(1, "axial_stretch");

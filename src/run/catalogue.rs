@@ -3,6 +3,7 @@
 use super::{format_pages, rules};
 use crate::elements::{STANDARD_RULES, Shape};
 use crate::exact;
+use crate::exact::given::{Form, ParameterEntry};
 use crate::materials;
 use crate::mechanics::Dimension;
 use crate::mechanics::units::Unit;
@@ -72,12 +73,11 @@ fn everything() -> String {
     }
     text.push_str("\nmaterials\n");
     for entry in materials::entries() {
-        let constants: Vec<_> = entry.parameters.iter().map(|p| p.name).collect();
         let _ = writeln!(
             text,
             "  {:<18} {{ {} }}   {}",
             entry.name,
-            constants.join(", "),
+            entry.constant_names(),
             entry.formula
         );
     }
@@ -122,15 +122,11 @@ fn everything() -> String {
 
 fn solution(entry: &exact::Entry) -> String {
     let mut text = format!("{}\n  {}\n\nparameters\n", entry.name, entry.title);
-    for p in entry.parameters {
-        let need = if p.required {
-            "required".to_string()
-        } else {
-            format!("default {}", p.default)
-        };
-        let _ = writeln!(text, "  {:<16} {need:<10} {}", p.name, p.meaning);
+    parameters(&mut text, entry.parameters, 2);
+    text.push('\n');
+    if !entry.ends().is_empty() {
+        let _ = writeln!(text, "ends       {}", entry.ends().join(", "));
     }
-    let _ = writeln!(text, "\nends       {}", entry.ends.join(", "));
     let _ = writeln!(text, "materials  {}", entry.materials().join(", "));
     let _ = writeln!(text, "range      {}", entry.range);
     for (label, lines) in [("sources", entry.sources), ("checks", entry.checks)] {
@@ -142,6 +138,40 @@ fn solution(entry: &exact::Entry) -> String {
     text
 }
 
+/// The keys of a block, those below them further in.
+fn parameters(text: &mut String, entries: &[ParameterEntry], indent: usize) {
+    for p in entries {
+        let need = match (p.required, p.default) {
+            (true, _) => "required".to_string(),
+            (false, "") => "optional".to_string(),
+            (false, default) => format!("default {default}"),
+        };
+        let width = 18_usize.saturating_sub(indent);
+        let _ = writeln!(
+            text,
+            "{:indent$}{:<width$} {need:<10} {}",
+            "", p.name, p.meaning
+        );
+        match p.form {
+            Form::Word(words) => {
+                let _ = writeln!(text, "{:indent$}  one of: {}", "", words.join(", "));
+            }
+            Form::Block(below) => parameters(text, below, indent + 2),
+            Form::Variant(variants) => {
+                for variant in variants {
+                    let _ = writeln!(
+                        text,
+                        "{:indent$}  {}: {}",
+                        "", variant.name, variant.meaning
+                    );
+                    parameters(text, variant.parameters, indent + 4);
+                }
+            }
+            _ => {}
+        }
+    }
+}
+
 fn material(entry: &materials::Entry) -> String {
     let mut text = format!(
         "{}\n  {}\n  {}\n\nconstants\n",
@@ -149,6 +179,20 @@ fn material(entry: &materials::Entry) -> String {
     );
     for p in entry.parameters {
         let _ = writeln!(text, "  {:<8} {} ({})", p.name, p.meaning, p.range);
+    }
+    if let Some(family) = entry.family {
+        let _ = writeln!(text, "  {:<8} {}", family.pattern, family.meaning);
+    }
+    if entry.kind == materials::MaterialKind::Incompressible {
+        text.push_str("  volumetric   optional: a finite bulk modulus by one of\n");
+        for form in materials::VolumetricForm::ALL {
+            let _ = writeln!(
+                text,
+                "    {{ {}: {{ K }} }}   {}",
+                form.name(),
+                form.energy_text()
+            );
+        }
     }
     let _ = writeln!(text, "\nsource  {}", entry.source);
     text

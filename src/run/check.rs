@@ -166,7 +166,7 @@ fn judge_case(case: &CasePlan, levels: Vec<LevelResult>) -> CaseOutcome {
         reason,
         facts: facts::facts(case),
         declared: declared(case),
-        sketch: Some(facts::sketch(case)),
+        sketch: facts::sketch(case),
         reference: facts::reference(case),
         criteria,
         profile: profile(case, &levels),
@@ -207,12 +207,10 @@ fn judge_one(
 
 /// What the bound of a total is relative to: an axial force that vanishes is a balance of pressures on the section.
 fn reference_size(case: &CasePlan, measure: &str) -> f64 {
-    let p = &case.parameters;
     match measure {
         "axial-force" => {
-            (p.inner_pressure.abs() + p.outer_pressure.abs())
-                * case.exact.body().section_area()
-                * case.share
+            let area = case.exact.body().section_area().unwrap_or(0.0);
+            case.exact.load_stress() * area * case.share
         }
         _ => 0.0,
     }
@@ -345,7 +343,7 @@ fn profile(case: &CasePlan, levels: &[LevelResult]) -> Option<Profile> {
     };
     let level = with().find(readable).or_else(|| with().next())?;
     let data = level.measures.profile.as_ref()?;
-    let crate::exact::Body::Tube { inner, outer } = case.exact.body();
+    let (inner, outer) = case.exact.body().span()?;
     let curve = |name: &str, i: usize| ProfileCurve {
         name: name.to_string(),
         exact: data.exact.iter().map(|(r, s)| (*r, s[i])).collect(),

@@ -24,8 +24,15 @@ pub(super) fn covers_without_mesh(
         return Ok(());
     };
     let place = Place::file(points.file());
+    let body = case.exact.body();
+    let Some(area) = body.section_area() else {
+        let found = "there is no mesh, and the body is what the mesh covers";
+        let finding = Finding::refused("share-of-body", place, found);
+        return Err(vec![finding.hint("export nodes.csv and elements.csv")]);
+    };
     let length = match (set.kind(), case.axial_length) {
         (ModelKind::Planar, _) => 1.0,
+        _ if !body.is_prism() => 1.0,
         (_, Some(length)) => length,
         (_, None) => {
             let found = "there is no mesh, and the axial length is not declared";
@@ -35,7 +42,7 @@ pub(super) fn covers_without_mesh(
             )]);
         }
     };
-    let exact = case.share * case.exact.body().section_area() * length;
+    let exact = case.share * area * length;
     let found = norms.weight.value();
     if (found / exact - 1.0).abs() <= COVER {
         return Ok(());
@@ -146,9 +153,12 @@ pub(super) fn note_axial_origin(
         .iter()
         .map(|p| p[2].abs())
         .fold(f64::INFINITY, f64::min);
-    if nearest > 1e-6 * case.exact.body().thickness()
-        && case.parameters.ends != crate::exact::Ends::PlaneStrain
-    {
+    let body = case.exact.body();
+    let middle = body.middle();
+    let above = crate::mechanics::Point::new(middle.x, middle.y, body.thickness());
+    // where nothing moves axially there is nothing to be shifted
+    let moves = case.exact.at(above).is_ok_and(|s| s.displacement[2] != 0.0);
+    if nearest > 1e-6 * body.thickness() && body.is_prism() && moves {
         let place = Place::file(plan.folder.clone());
         let found = "no node lies at Z = 0, from where the exact axial displacement is counted";
         findings.push(
@@ -166,7 +176,8 @@ pub(super) fn note_axial_stress(case: &CasePlan, set: &ResultSet, findings: &mut
     let lacks = set.kind() == ModelKind::Planar
         && channels.stress.is_available()
         && !channels.components.has(2);
-    if lacks && case.parameters.ends != crate::exact::Ends::PlaneStress {
+    let middle = case.exact.at(case.exact.body().middle());
+    if lacks && middle.is_ok_and(|state| state.stress.zz != 0.0) {
         let place = Place::file(points.file()).field("szz");
         findings.push(
             Finding::new(

@@ -1,4 +1,5 @@
-//! Lists in a case make one case for each combination, the first list varying slowest.
+//! Lists in a case make one case for each combination, the first list varying slowest. A parameter that is a list by
+//! itself (radii of layers) makes cases by a list of lists only.
 
 use crate::suite::tree::{Key, Node, Value};
 
@@ -10,43 +11,80 @@ pub struct Combination {
     pub labels: Vec<String>,
 }
 
-/// Every combination of the lists inside `node`, in file order.
-pub fn expand(node: &Node) -> Vec<Combination> {
+/// Every combination of the lists inside `node`, in file order. `lists` are the keys whose value is a list anyway.
+pub fn expand(node: &Node, lists: &[&str]) -> Vec<Combination> {
     match &node.value {
-        Value::List(items) => items.iter().flat_map(choices_of).collect(),
-        Value::Map(entries) => product(node, entries),
-        _ => vec![Combination {
-            node: node.clone(),
-            labels: Vec::new(),
-        }],
+        Value::List(items) => items
+            .iter()
+            .flat_map(|item| choices_of(item, lists))
+            .collect(),
+        Value::Map(entries) => product(node, entries, lists),
+        _ => vec![whole(node)],
+    }
+}
+
+/// No choice at all.
+fn whole(node: &Node) -> Combination {
+    Combination {
+        node: node.clone(),
+        labels: Vec::new(),
+    }
+}
+
+/// Whether the list under `key` is one value.
+fn is_value(key: &Key, node: &Node, lists: &[&str]) -> bool {
+    let nested = |items: &[Node]| items.iter().any(|i| matches!(i.value, Value::List(_)));
+    lists.contains(&key.name.as_str())
+        && !matches!(&node.value, Value::List(items) if nested(items))
+}
+
+/// The choices under a key. Of a list of lists each inner list is one value.
+fn under(key: &Key, node: &Node, lists: &[&str]) -> Vec<Combination> {
+    if is_value(key, node, lists) {
+        return vec![whole(node)];
+    }
+    match &node.value {
+        Value::List(items) if lists.contains(&key.name.as_str()) => items
+            .iter()
+            .map(|item| Combination {
+                node: item.clone(),
+                labels: vec![label(item)],
+            })
+            .collect(),
+        _ => expand(node, lists),
     }
 }
 
 /// How many combinations there are, without making them; saturates.
-pub fn count(node: &Node) -> usize {
+pub fn count(node: &Node, lists: &[&str]) -> usize {
+    let add = |all: usize, more: usize| all.saturating_add(more);
     match &node.value {
-        Value::List(items) => items.iter().map(count).fold(0, usize::saturating_add),
+        Value::List(items) => items.iter().map(|i| count(i, lists)).fold(0, add),
         Value::Map(entries) => entries
             .iter()
-            .map(|(_, n)| count(n))
+            .map(|(key, node)| match &node.value {
+                _ if is_value(key, node, lists) => 1,
+                Value::List(items) if lists.contains(&key.name.as_str()) => items.len(),
+                _ => count(node, lists),
+            })
             .fold(1, usize::saturating_mul),
         _ => 1,
     }
 }
 
 /// The first empty list inside, which would make no case at all.
-pub fn empty_list(node: &Node) -> Option<&Node> {
+pub fn empty_list<'n>(node: &'n Node, lists: &[&str]) -> Option<&'n Node> {
     match &node.value {
         Value::List(items) if items.is_empty() => Some(node),
-        Value::List(items) => items.iter().find_map(empty_list),
-        Value::Map(entries) => entries.iter().find_map(|(_, n)| empty_list(n)),
+        Value::List(items) => items.iter().find_map(|i| empty_list(i, lists)),
+        Value::Map(entries) => entries.iter().find_map(|(_, n)| empty_list(n, lists)),
         _ => None,
     }
 }
 
 /// One item of a list, with its own lists expanded; its label says the whole choice.
-fn choices_of(item: &Node) -> Vec<Combination> {
-    let inner = expand(item).into_iter();
+fn choices_of(item: &Node, lists: &[&str]) -> Vec<Combination> {
+    let inner = expand(item, lists).into_iter();
     inner
         .map(|c| Combination {
             labels: vec![label(&c.node)],
@@ -58,10 +96,10 @@ fn choices_of(item: &Node) -> Vec<Combination> {
 /// The entries chosen so far, and their labels.
 type Partial = (Vec<(Key, Node)>, Vec<String>);
 
-fn product(node: &Node, entries: &[(Key, Node)]) -> Vec<Combination> {
+fn product(node: &Node, entries: &[(Key, Node)], lists: &[&str]) -> Vec<Combination> {
     let mut partial: Vec<Partial> = vec![(Vec::new(), Vec::new())];
     for (key, value) in entries {
-        let choices = expand(value);
+        let choices = under(key, value, lists);
         let mut next = Vec::with_capacity(partial.len() * choices.len());
         for (map, labels) in &partial {
             for choice in &choices {
@@ -122,8 +160,8 @@ mod tests {
 
     fn labels(text: &str) -> Vec<String> {
         let node = parse(text, "s.yaml").unwrap();
-        let all = expand(&node);
-        assert_eq!(count(&node), all.len());
+        let all = expand(&node, &["radii"]);
+        assert_eq!(count(&node, &["radii"]), all.len());
         all.iter().map(|c| c.labels.join("-")).collect()
     }
 
@@ -144,12 +182,14 @@ mod tests {
         );
         assert_eq!(labels("a: 1\nb: 30 kPa\n"), [""]);
         assert_eq!(labels("b: [30 kPa, 1/4]\n"), ["30kPa", "1_4"]);
+        assert_eq!(labels("radii: [8, 9]\nb: [1, 2]\n"), ["1", "2"]);
+        assert_eq!(labels("radii: [[8, 9], [8, 10, 12]]\n"), ["8-9", "8-10-12"]);
     }
 
     #[test]
     fn an_empty_list_is_found() {
         let node = parse("a: 1\nb: { c: [] }\n", "s.yaml").unwrap();
-        assert_eq!(empty_list(&node).map(|n| n.line), Some(2));
-        assert_eq!(count(&node), 0);
+        assert_eq!(empty_list(&node, &[]).map(|n| n.line), Some(2));
+        assert_eq!(count(&node, &[]), 0);
     }
 }

@@ -1,7 +1,8 @@
 //! A case in words: what it means, for reports and briefs.
 
 use super::plan::CasePlan;
-use crate::exact::{Ends, Kinematics};
+use crate::exact::{Body, Description};
+use crate::materials::{Material, MaterialKind};
 use crate::verdict::outcome::{Fact, ReferenceRecord, Sketch, TotalRecord};
 
 fn fact(label: &str, text: String) -> Fact {
@@ -19,8 +20,11 @@ pub fn facts(case: &CasePlan) -> Vec<Fact> {
     }
     facts.push(fact("Material", material(case)));
     facts.push(fact("Body", body(case)));
-    facts.push(fact("Load", load(case)));
-    facts.push(fact("Ends", ends(case)));
+    let description = description(case);
+    facts.push(fact("Load", description.load));
+    if let Some(ends) = description.ends {
+        facts.push(fact("Ends", ends));
+    }
     facts.push(fact("Exact", exact(case)));
     facts
 }
@@ -36,9 +40,18 @@ fn exact(case: &CasePlan) -> String {
     )
 }
 
-/// Law and constants, with their units.
+/// Laws and constants, with their units.
 pub fn material(case: &CasePlan) -> String {
-    let material = &case.parameters.material;
+    let all: Vec<_> = case
+        .given
+        .materials()
+        .into_iter()
+        .map(|m| one_material(case, m))
+        .collect();
+    all.join("; ")
+}
+
+fn one_material(case: &CasePlan, material: &Material) -> String {
     let constants = material.parameters().into_iter().map(|p| {
         let unit = case.units.name_of(p.dimension);
         let unit = if unit == "1" {
@@ -49,26 +62,32 @@ pub fn material(case: &CasePlan) -> String {
         format!("{} {}{unit}", p.name, p.value)
     });
     let constants: Vec<_> = constants.collect();
-    let tail = match case.exact.kinematics() {
-        Kinematics::Finite => ", incompressible",
-        Kinematics::SmallStrain => ", small strain",
+    let tail = match material.kind() {
+        MaterialKind::Incompressible => ", incompressible",
+        MaterialKind::Compressible => ", compressible",
+        MaterialKind::LinearElastic => ", small strain",
+        MaterialKind::ElasticPlastic => ", small strain, perfectly plastic",
     };
     format!("{}, {}{tail}", material.name(), constants.join(", "))
 }
 
-/// Radii and modelled share.
+/// The body and its modelled share.
 pub fn body(case: &CasePlan) -> String {
-    let unit = case.units.length.name;
-    let p = &case.parameters;
-    let share = if case.share == 1.0 {
-        "whole section".to_string()
-    } else {
-        format!("{} of the section", share_text(case.share))
+    let whole = match case.exact.body() {
+        Body::Sphere { .. } => "sphere",
+        _ => "section",
     };
-    format!(
-        "tube, inner radius {} {unit}, outer radius {} {unit}, {share}",
-        p.inner_radius, p.outer_radius
-    )
+    let share = match case.exact.body() {
+        Body::Free { .. } => return description(case).body,
+        _ if case.share == 1.0 => format!("whole {whole}"),
+        _ => format!("{} of the {whole}", share_text(case.share)),
+    };
+    format!("{}, {share}", description(case).body)
+}
+
+/// The solution in words.
+pub fn description(case: &CasePlan) -> Description {
+    case.exact.description(&case.units)
 }
 
 /// `1/4` where the share is one over a whole number.
@@ -81,67 +100,17 @@ pub fn share_text(share: f64) -> String {
     }
 }
 
-/// Pressures, and whether they follow the wall.
-pub fn load(case: &CasePlan) -> String {
-    let unit = case.units.stress.name;
-    let p = &case.parameters;
-    let follows = match case.exact.kinematics() {
-        Kinematics::Finite => "follows the deformed wall",
-        Kinematics::SmallStrain => "on the undeformed wall",
-    };
-    let walls = [("bore", p.inner_pressure), ("outer wall", p.outer_pressure)];
-    let loaded: Vec<_> = walls
-        .iter()
-        .filter(|(_, pressure)| *pressure != 0.0)
-        .map(|(wall, pressure)| format!("{pressure} {unit} on the {wall}"))
-        .collect();
-    if loaded.is_empty() {
-        "no pressure".to_string()
-    } else {
-        format!("{}, {follows}", loaded.join(" and "))
-    }
-}
-
-/// The end condition in words.
-pub fn ends(case: &CasePlan) -> String {
-    let force_unit = case.units.name_of(crate::mechanics::Dimension::Force);
-    match case.parameters.ends {
-        Ends::PlaneStrain => "held at their length (plane strain)".to_string(),
-        Ends::GeneralizedPlaneStrain { axial_force: 0.0 } => {
-            "free to move axially, staying plane; no net axial force (generalized plane strain)"
-                .to_string()
-        }
-        Ends::GeneralizedPlaneStrain { axial_force } => format!(
-            "free to move axially, staying plane; net axial force {axial_force} {force_unit} on the wall \
-             (generalized plane strain)"
-        ),
-        Ends::Closed => "closed by rigid caps that the pressures push apart".to_string(),
-        Ends::FixedStretch { axial_stretch } => {
-            format!("held at the axial stretch {axial_stretch}")
-        }
-        Ends::PlaneStress => "free of axial stress at every point (plane stress)".to_string(),
-    }
-}
-
-/// What the section sketch needs.
-pub fn sketch(case: &CasePlan) -> Sketch {
-    let p = &case.parameters;
-    Sketch {
-        inner_radius: p.inner_radius,
-        outer_radius: p.outer_radius,
-        inner_pressure: p.inner_pressure,
-        outer_pressure: p.outer_pressure,
+/// What the section sketch needs, where there is a section to sketch.
+pub fn sketch(case: &CasePlan) -> Option<Sketch> {
+    let sketch = description(case).sketch?;
+    Some(Sketch {
+        inner_radius: sketch.inner_radius,
+        outer_radius: sketch.outer_radius,
+        inner_pressure: sketch.inner_pressure,
+        outer_pressure: sketch.outer_pressure,
         share: case.share,
-        ends: match p.ends {
-            Ends::PlaneStrain => "ends held",
-            Ends::GeneralizedPlaneStrain { axial_force: 0.0 } => "ends free",
-            Ends::GeneralizedPlaneStrain { .. } => "axial force given",
-            Ends::Closed => "ends closed",
-            Ends::FixedStretch { .. } => "axial stretch given",
-            Ends::PlaneStress => "plane stress",
-        }
-        .to_string(),
-    }
+        ends: sketch.ends.to_string(),
+    })
 }
 
 /// The exact solution's own record.

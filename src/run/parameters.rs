@@ -1,66 +1,191 @@
-//! From one combination of a problem block to the parameters of its exact solution.
+//! From one combination of a problem block to what its exact solution is given.
 
 use super::materials::{Materials, refuse};
-use crate::exact::{Ends, Parameters, catalogue};
+use crate::exact::given::{Form, ParameterEntry, VariantEntry};
+use crate::exact::{Ends, Given, Value as GivenValue, catalogue};
 use crate::materials::Material;
 use crate::mechanics::{Dimension, UnitSystem};
 use crate::suite::tree::{Node, Value};
-use crate::suite::{Block, Placed, Quantity, Reader, nearest};
+use crate::suite::{Placed, Quantity, Reader, nearest};
 
-/// Reads one combination. What is wrong is reported; `None` then.
+/// What reading a parameter needs besides its node.
+#[derive(Debug, Clone, Copy)]
+pub struct Context<'a> {
+    pub materials: &'a Materials,
+    pub units: &'a UnitSystem,
+}
+
+/// Reads one combination by the entries of its solution. What is wrong is reported; `None` then.
 pub fn read(
     node: &Node,
     path: &str,
-    materials: &Materials,
-    units: &UnitSystem,
+    entries: &'static [ParameterEntry],
+    context: Context,
     reader: &mut Reader,
-) -> Option<Parameters> {
+) -> Option<Given> {
     let before = reader.findings.len();
     let mut block = reader.block(node, path)?;
-    let inner_radius = length(&mut block, "inner-radius", units, reader);
-    let outer_radius = length(&mut block, "outer-radius", units, reader);
-    let ends_path = block.path_of("ends");
-    let ends = block
-        .required(
-            "ends",
-            reader,
-            &format!("one of: {}", Ends::NAMES.join(", ")),
-        )
-        .and_then(|n| ends(n, &ends_path, units, reader));
-    let material_path = block.path_of("material");
-    let material = block
-        .required("material", reader, "the name of a material of this suite")
-        .and_then(|n| material(n, &material_path, materials, reader));
-    let inner_pressure = pressure(&mut block, "inner-pressure", units, reader);
-    let outer_pressure = pressure(&mut block, "outer-pressure", units, reader);
-    block.finish(reader);
-    if reader.findings.len() > before {
-        return None;
+    let mut given = Given::default();
+    for entry in entries {
+        let at = block.path_of(entry.name);
+        let found = if entry.required {
+            block.required(entry.name, reader, &expected(entry))
+        } else {
+            block.optional(entry.name)
+        };
+        let Some(found) = found else { continue };
+        if let Some(value) = value(found, &at, entry.form, context, reader) {
+            given = given.with(entry.name, value);
+        }
     }
-    Some(Parameters {
-        inner_radius: inner_radius?,
-        outer_radius: outer_radius?,
-        ends: ends?,
-        material: material?,
-        inner_pressure: inner_pressure.unwrap_or(0.0),
-        outer_pressure: outer_pressure.unwrap_or(0.0),
-    })
+    block.finish(reader);
+    (reader.findings.len() == before).then_some(given)
 }
 
-fn length(
-    block: &mut Block,
-    key: &'static str,
-    units: &UnitSystem,
+/// What a missing parameter should be.
+fn expected(entry: &ParameterEntry) -> String {
+    match entry.form {
+        Form::Number(Dimension::Length) => "a length".to_string(),
+        Form::Ends(names) => format!("one of: {}", names.join(", ")),
+        Form::Word(names) => format!("one of: {}", names.join(", ")),
+        Form::Variant(variants) => format!("one of: {}", names_of(variants).join(", ")),
+        Form::Material => "the name of a material of this suite".to_string(),
+        _ => entry.meaning.to_string(),
+    }
+}
+
+fn names_of(variants: &[VariantEntry]) -> Vec<&'static str> {
+    variants.iter().map(|v| v.name).collect()
+}
+
+/// One value in the form its entry wants.
+fn value(
+    node: &Node,
+    path: &str,
+    form: Form,
+    context: Context,
     reader: &mut Reader,
-) -> Option<f64> {
-    let path = block.path_of(key);
-    let node = block.required(key, reader, "a length")?;
-    let length = number(node, &path, Dimension::Length, units, reader)?;
-    // zero and negative lengths are refused by the solution, in its own words
+) -> Option<GivenValue> {
+    let Context { materials, units } = context;
+    match form {
+        Form::Number(Dimension::Length) => {
+            length(node, path, units, reader).map(GivenValue::Number)
+        }
+        Form::Number(dimension) => {
+            number(node, path, dimension, units, reader).map(GivenValue::Number)
+        }
+        Form::Numbers(dimension) => {
+            let items = reader.items(node).into_iter().enumerate();
+            let numbers = items.map(|(i, item)| {
+                let at = format!("{path}[{i}]");
+                match dimension {
+                    Dimension::Length => length(item, &at, units, reader),
+                    _ => number(item, &at, dimension, units, reader),
+                }
+            });
+            let numbers: Vec<_> = numbers.collect();
+            let numbers: Option<Vec<f64>> = numbers.into_iter().collect();
+            numbers.map(GivenValue::Numbers)
+        }
+        Form::Word(names) => word(node, path, names, reader).map(GivenValue::Text),
+        Form::Expression => reader.text(node, path).map(GivenValue::Text),
+        Form::Named => named(node, path, units, reader).map(GivenValue::Block),
+        Form::Ends(_) => ends(node, path, units, reader).map(GivenValue::Ends),
+        Form::Material => material(node, path, materials, reader).map(GivenValue::Material),
+        Form::Materials => {
+            let items = reader.items(node).into_iter().enumerate();
+            let all: Vec<_> = items
+                .map(|(i, item)| material(item, &format!("{path}[{i}]"), materials, reader))
+                .collect();
+            let all: Option<Vec<Material>> = all.into_iter().collect();
+            all.map(GivenValue::Materials)
+        }
+        Form::Variant(variants) => variant(node, path, variants, context, reader),
+        Form::Block(entries) => read(node, path, entries, context, reader).map(GivenValue::Block),
+    }
+}
+
+/// One of a few words.
+fn word(node: &Node, path: &str, names: &[&'static str], reader: &mut Reader) -> Option<String> {
+    let text = reader.text(node, path)?;
+    if names.contains(&text.as_str()) {
+        return Some(text);
+    }
+    unknown_word(node, path, &text, names, reader);
+    None
+}
+
+fn unknown_word(node: &Node, path: &str, text: &str, names: &[&'static str], reader: &mut Reader) {
+    let found = format!("unknown word \"{text}\"");
+    let finding = reader.refuse("unknown-word", node, path, found);
+    finding.expected = format!("one of: {}", names.join(", "));
+    if let Some(near) = nearest(text, names.iter().copied()) {
+        finding.hint = format!("did you mean `{near}`?");
+    }
+}
+
+/// Named numbers; a number with a unit is turned into the suite's.
+fn named(node: &Node, path: &str, units: &UnitSystem, reader: &mut Reader) -> Option<Given> {
+    reader.block(node, path)?;
+    let mut given = Given::default();
+    let Value::Map(entries) = &node.value else {
+        return None;
+    };
+    for (key, node) in entries {
+        let at = format!("{path}.{}", key.name);
+        let quantity: Quantity = reader.quantity(node, &at)?;
+        let value = number(node, &at, quantity.dimension(), units, reader)?;
+        given = given.number(&key.name, value);
+    }
+    Some(given)
+}
+
+/// A name with its block.
+fn variant(
+    node: &Node,
+    path: &str,
+    variants: &'static [VariantEntry],
+    context: Context,
+    reader: &mut Reader,
+) -> Option<GivenValue> {
+    let (name, inner) = reader.variant(node, path)?;
+    let names = names_of(variants);
+    let Some(entry) = variants.iter().find(|v| v.name == name) else {
+        unknown_word(node, path, &name, &names, reader);
+        return None;
+    };
+    let at = format!("{path}.{name}");
+    // `power: 2` stands for the block of the one parameter there is
+    let single = match (inner, entry.parameters) {
+        (Some(inner), [only]) if !matches!(inner.value, Value::Map(_)) => Some((inner, only)),
+        _ => None,
+    };
+    if let Some((inner, only)) = single {
+        let value = value(inner, &at, only.form, context, reader)?;
+        let block = Given::default().with(only.name, value);
+        return Some(GivenValue::Variant(name, block));
+    }
+    let block = match inner {
+        Some(inner) => read(inner, &at, entry.parameters, context, reader)?,
+        None if entry.parameters.iter().all(|p| !p.required) => Given::default(),
+        None => {
+            let wanted: Vec<_> = entry.parameters.iter().map(|p| p.name).collect();
+            let found = format!("`{name}` has no block");
+            reader.refuse("missing-key", node, &at, found).expected =
+                format!("a block with {}", wanted.join(", "));
+            return None;
+        }
+    };
+    Some(GivenValue::Variant(name, block))
+}
+
+/// A length that a part can have; zero and negative ones are refused by the solution, in its own words.
+fn length(node: &Node, path: &str, units: &UnitSystem, reader: &mut Reader) -> Option<f64> {
+    let length = number(node, path, Dimension::Length, units, reader)?;
     if length > 0.0 && !(SMALLEST..=LARGEST).contains(&length) {
         let found = format!("{length:e} {} is the length of no part", units.length.name);
         reader
-            .refuse("implausible-length", node, &path, found)
+            .refuse("implausible-length", node, path, found)
             .expected = format!("from {SMALLEST:e} to {LARGEST:e}");
         return None;
     }
@@ -70,17 +195,6 @@ fn length(
 /// Lengths beyond these are slips of the pen, and their ratios leave the range of doubles.
 const SMALLEST: f64 = 1e-12;
 const LARGEST: f64 = 1e12;
-
-fn pressure(
-    block: &mut Block,
-    key: &'static str,
-    units: &UnitSystem,
-    reader: &mut Reader,
-) -> Option<f64> {
-    let path = block.path_of(key);
-    let node = block.optional(key)?;
-    number(node, &path, Dimension::Stress, units, reader)
-}
 
 /// A number in the suite's units.
 pub fn number(

@@ -6,9 +6,9 @@ use super::exports;
 use super::folders::{levels, own_folder};
 use super::materials::Materials;
 use super::pairing::{self, Element};
-use super::parameters;
+use super::parameters::{self, Context};
 use super::refusals::{self, Refusals};
-use crate::exact::{Ends, ExactSolution, Parameters, catalogue};
+use crate::exact::{Body, ExactSolution, Given, catalogue};
 use crate::input::Finding;
 use crate::mechanics::{Dimension, UnitSystem};
 use crate::suite::model::{CaseEntry, ExportEntry, Suite};
@@ -38,7 +38,8 @@ pub struct CasePlan {
     pub place: crate::input::Place,
     /// Catalogue name of the solution.
     pub problem: String,
-    pub parameters: Parameters,
+    /// What the solution was given, at the load factor.
+    pub given: Given,
     pub exact: Arc<dyn ExactSolution>,
     pub element: Option<Element>,
     /// Modelled share of the section.
@@ -47,7 +48,7 @@ pub struct CasePlan {
     pub axial_length: Option<f64>,
     /// Declared geometric tolerance of nodes.
     pub node_tolerance: Option<f64>,
-    /// Share of the stated loads at which the results are judged; already in `parameters`.
+    /// Share of the stated loads at which the results are judged; already in `given`.
     pub load_factor: f64,
     /// Coarsest first.
     pub levels: Vec<LevelPlan>,
@@ -124,7 +125,9 @@ fn plan_case(
     cases: &mut Vec<CasePlan>,
     reader: &mut Reader,
 ) {
-    let Some((problems, elements)) = combinations(entry, reader) else {
+    let solution = catalogue::find(&entry.problem.value);
+    let lists = solution.map_or_else(Vec::new, |s| s.list_names());
+    let Some((problems, elements)) = combinations(entry, &lists, reader) else {
         return;
     };
     exports::check_columns(&entry.export, reader);
@@ -150,22 +153,26 @@ fn plan_case(
     let h = sizes(entry, suite, reader);
     let mut folders = BTreeMap::new();
     let mut refused = Refusals::default();
+    let context = Context {
+        materials,
+        units: &suite.units,
+    };
     'all: for problem in &problems {
         let path = &entry.parameters.path;
-        let Some(parameters) =
-            parameters::read(&problem.node, path, materials, &suite.units, reader)
+        let Some(given) =
+            parameters::read(&problem.node, path, solution.parameters, context, reader)
         else {
             continue;
         };
-        let parameters = at_load(parameters, load_factor);
-        let exact = match catalogue::build(solution.name, &parameters) {
+        let given = given.scaled(solution.parameters, load_factor);
+        let exact: Arc<dyn ExactSolution> = match catalogue::build(solution.name, &given) {
             Ok(exact) => Arc::from(exact),
             Err(refusal) => {
                 refused.note(refusal, problem, path);
                 continue;
             }
         };
-        too_coarse(entry, node_tolerance, &parameters, reader);
+        too_coarse(entry, node_tolerance, &exact.body(), reader);
         for element_choice in &elements {
             let element = element_choice
                 .as_ref()
@@ -205,7 +212,7 @@ fn plan_case(
                 id,
                 place: reader.place(entry.id.line, entry.id.column, &entry.id.path),
                 problem: solution.name.to_string(),
-                parameters: parameters.clone(),
+                given: given.clone(),
                 exact: Arc::clone(&exact),
                 element,
                 share: share.unwrap_or(1.0),
@@ -226,10 +233,10 @@ fn plan_case(
 type Choices = (Vec<Combination>, Vec<Option<Combination>>);
 
 /// All combinations of the problem and of the element.
-fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
+fn combinations(entry: &CaseEntry, lists: &[&str], reader: &mut Reader) -> Option<Choices> {
     let element = entry.element.as_ref();
     for node in [Some(&entry.parameters), element].into_iter().flatten() {
-        if let Some(list) = expand::empty_list(&node.value) {
+        if let Some(list) = expand::empty_list(&node.value, lists) {
             let finding = reader.refuse(
                 "empty-list",
                 list,
@@ -240,8 +247,8 @@ fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
             return None;
         }
     }
-    let count = expand::count(&entry.parameters.value)
-        .saturating_mul(element.map_or(1, |e| expand::count(&e.value)));
+    let count = expand::count(&entry.parameters.value, lists)
+        .saturating_mul(element.map_or(1, |e| expand::count(&e.value, &[])));
     if count > MAX_CASES {
         let node = &entry.parameters;
         let found = format!("the lists make {count} cases");
@@ -252,9 +259,12 @@ fn combinations(entry: &CaseEntry, reader: &mut Reader) -> Option<Choices> {
     }
     let elements = match element {
         None => vec![None],
-        Some(e) => expand::expand(&e.value).into_iter().map(Some).collect(),
+        Some(e) => expand::expand(&e.value, &[])
+            .into_iter()
+            .map(Some)
+            .collect(),
     };
-    Some((expand::expand(&entry.parameters.value), elements))
+    Some((expand::expand(&entry.parameters.value, lists), elements))
 }
 
 /// The declared share of the section, above 0 and at most 1.
@@ -276,10 +286,11 @@ fn share(entry: &CaseEntry, reader: &mut Reader) -> Option<f64> {
 }
 
 /// A declared tolerance of nodes must not hide a wrong wall: at most a hundredth of it.
-fn too_coarse(entry: &CaseEntry, tolerance: Option<f64>, p: &Parameters, reader: &mut Reader) {
-    let most = 0.01 * (p.outer_radius - p.inner_radius);
+fn too_coarse(entry: &CaseEntry, tolerance: Option<f64>, body: &Body, reader: &mut Reader) {
+    let most = 0.01 * body.thickness();
     if let (Some(declared), Some(tolerance)) = (&entry.node_tolerance, tolerance)
         && tolerance > most
+        && most > 0.0
     {
         let found = format!(
             "\"{}\" is more than a hundredth of a wall",
@@ -313,22 +324,6 @@ fn load_factor(entry: &CaseEntry, reader: &mut Reader) -> f64 {
         reader,
     );
     1.0
-}
-
-/// Pressures and given axial force scaled; a given axial stretch is no load and stays.
-fn at_load(parameters: Parameters, factor: f64) -> Parameters {
-    let ends = match parameters.ends {
-        Ends::GeneralizedPlaneStrain { axial_force } => Ends::GeneralizedPlaneStrain {
-            axial_force: factor * axial_force,
-        },
-        other => other,
-    };
-    Parameters {
-        ends,
-        inner_pressure: factor * parameters.inner_pressure,
-        outer_pressure: factor * parameters.outer_pressure,
-        ..parameters
-    }
 }
 
 fn length(declared: &Placed<Quantity>, suite: &Suite, reader: &mut Reader) -> Option<f64> {

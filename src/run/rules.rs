@@ -110,6 +110,10 @@ pub const BODY: &[(&str, &str)] = &[
         "mid-side nodes on a wall lie on it, all of them",
     ),
     (
+        "model-of-body",
+        "a plane, axisymmetric or solid model can stand for the body",
+    ),
+    (
         "node-on-body",
         "every node lies on the body; mid-side nodes may lie on the chord of their corners",
     ),

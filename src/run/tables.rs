@@ -1,7 +1,7 @@
 //! Tables of an exact solution as CSV: stations through the wall, values at given points, totals.
 
 use super::plan::CasePlan;
-use crate::exact::{ExactSolution, State};
+use crate::exact::{ExactSolution, Frame, State};
 use crate::input::{Finding, Place};
 use crate::mechanics::Point;
 
@@ -11,39 +11,81 @@ pub fn digits17(value: f64) -> String {
     format!("{:.16e}", value + 0.0)
 }
 
-/// `stations` points from the inner to the outer wall, evenly spaced in R.
+/// `stations` points along the solution's own line, evenly spaced.
 ///
 /// # Errors
 /// When the solution has no value at a station.
 pub fn stations(case: &CasePlan, stations: usize) -> Result<String, String> {
-    let crate::exact::Body::Tube { inner, outer } = case.exact.body();
-    let mut csv = String::from("R,r,u_r,lambda_r,lambda_t,lambda_z,srr,stt,szz,p,J,W\n");
-    for radius in spaced(inner, outer, stations) {
-        let state = case
-            .exact
-            .at(Point::new(radius, 0.0, 0.0))
-            .map_err(|r| r.to_string())?;
-        let u = state.displacement[0];
-        let [lr, lt, lz] = state.stretches;
-        let s = state.local_stress;
-        let numbers = [
-            radius,
-            radius + u,
-            u,
-            lr,
-            lt,
-            lz,
-            s.xx,
-            s.yy,
-            s.zz,
-            state.pressure,
-            state.volume_ratio,
-            state.energy_density,
-        ];
-        csv.push_str(&numbers.map(digits17).join(","));
+    let line = case.exact.line();
+    let mut csv = line.columns.join(",") + "\n";
+    let (from, to) = (line.from.to_array(), line.to.to_array());
+    let along: Vec<Vec<f64>> = (0..3).map(|i| spaced(from[i], to[i], stations)).collect();
+    for i in 0..stations {
+        let point = Point::new(along[0][i], along[1][i], along[2][i]);
+        let state = case.exact.at(point).map_err(|r| r.to_string())?;
+        let spherical = case.exact.body().frame() == Frame::Spherical;
+        let cells = line
+            .columns
+            .iter()
+            .map(|column| digits17(cell(column, spherical, &point, &state)));
+        csv.push_str(&cells.collect::<Vec<_>>().join(","));
         csv.push('\n');
     }
     Ok(csv)
+}
+
+/// One column of a station; NaN for a name that no solution may list.
+fn cell(column: &str, spherical: bool, point: &Point, state: &State) -> f64 {
+    let (x, u) = (point.to_array(), state.displacement);
+    let dimensions = if spherical { 3 } else { 2 };
+    let square = |v: [f64; 3]| v[..dimensions].iter().map(|c| c * c).sum::<f64>();
+    let radius = square(x).sqrt();
+    let on_axis = x[1] == 0.0 && u[1] == 0.0 && (!spherical || (x[2] == 0.0 && u[2] == 0.0));
+    let deformed = match on_axis {
+        true => x[0] + u[0],
+        false => square([x[0] + u[0], x[1] + u[1], x[2] + u[2]]).sqrt(),
+    };
+    // r - R from r^2 - R^2: no cancellation at small displacements
+    let outward = || {
+        let growth = (0..dimensions)
+            .map(|i| (2.0 * x[i] + u[i]) * u[i])
+            .sum::<f64>();
+        match radius + deformed {
+            _ if on_axis => u[0],
+            0.0 => 0.0,
+            both => growth / both,
+        }
+    };
+    let (s, t) = (state.stress, state.local_stress);
+    match column {
+        "R" => radius,
+        "r" => deformed,
+        "u_r" => outward(),
+        "X" => x[0],
+        "Y" => x[1],
+        "Z" => x[2],
+        "ux" => u[0],
+        "uy" => u[1],
+        "uz" => u[2],
+        "lambda_r" => state.stretches[0],
+        "lambda_t" => state.stretches[1],
+        "lambda_z" => state.stretches[2],
+        "srr" => t.xx,
+        "stt" => t.yy,
+        "szz" => s.zz,
+        "srt" => t.xy,
+        "stz" => t.yz,
+        "szr" => t.zx,
+        "sxx" => s.xx,
+        "syy" => s.yy,
+        "sxy" => s.xy,
+        "syz" => s.yz,
+        "szx" => s.zx,
+        "p" => state.pressure,
+        "J" => state.volume_ratio,
+        "W" => state.energy_density,
+        _ => f64::NAN,
+    }
 }
 
 /// `count` numbers from `from` to `to`, both included exactly; one number is the middle.

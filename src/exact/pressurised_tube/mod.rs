@@ -14,11 +14,14 @@ mod wall_fields;
 pub use solve::Limit;
 
 use super::Ends;
+use super::body::Body;
+use super::description::Description;
 use super::parameters::{Parameters, refuse};
-use super::solution::{Body, ErrorBound, ExactSolution, Kinematics, Refusal, State, Total};
+use super::solution::{ErrorBound, ExactSolution, Kinematics, Refusal, State, Total};
 use super::totals::TubeTotals;
+use super::tube_words::TubeWords;
 use crate::materials::Material;
-use crate::mechanics::Point;
+use crate::mechanics::{Point, UnitSystem};
 use equations::Wall;
 use path::Axial;
 use solve::{Solved, rounded};
@@ -33,6 +36,7 @@ pub struct PressurisedTube {
     body: Body,
     bound: ErrorBound,
     limit: Limit,
+    words: TubeWords,
 }
 
 impl PressurisedTube {
@@ -84,6 +88,15 @@ impl PressurisedTube {
             },
             bound,
             limit: solved.limit,
+            words: TubeWords {
+                inner: given.inner_radius,
+                outer: given.outer_radius,
+                ends: given.ends,
+                inner_pressure: given.inner_pressure,
+                outer_pressure: given.outer_pressure,
+                kinematics: Kinematics::Finite,
+                dead: false,
+            },
         })
     }
 
@@ -199,6 +212,14 @@ impl ExactSolution for PressurisedTube {
 
     fn kinematics(&self) -> Kinematics {
         Kinematics::Finite
+    }
+
+    fn description(&self, units: &UnitSystem) -> Description {
+        self.words.description("tube", units)
+    }
+
+    fn load_stress(&self) -> f64 {
+        self.words.inner_pressure.abs() + self.words.outer_pressure.abs()
     }
 
     fn method(&self) -> String {
