@@ -12,6 +12,7 @@ pub mod profile;
 mod share;
 mod totals;
 pub mod wall;
+mod wall_measures;
 pub mod watched;
 
 pub use level::{Level, LevelMeasures};

@@ -215,7 +215,7 @@ mod tests {
         let at = Point::new(1.0, 0.0, 1.0);
         let half = local_normal_stress(
             &sphere,
-            [0.0, f64::NAN, 0.0, f64::NAN, f64::NAN, 3.0],
+            [0.0, 0.0, 0.0, f64::NAN, f64::NAN, 3.0],
             at,
             &exact,
         );

@@ -26,6 +26,8 @@ pub fn read(
     let before = reader.findings.len();
     let mut block = reader.block(node, path)?;
     let mut given = Given::default();
+    // a material that could not be built was reported at its own place
+    let mut complete = true;
     for entry in entries {
         let at = block.path_of(entry.name);
         let found = if entry.required {
@@ -34,12 +36,13 @@ pub fn read(
             block.optional(entry.name)
         };
         let Some(found) = found else { continue };
-        if let Some(value) = value(found, &at, entry.form, context, reader) {
-            given = given.with(entry.name, value);
+        match value(found, &at, entry.form, context, reader) {
+            Some(value) => given = given.with(entry.name, value),
+            None => complete = false,
         }
     }
     block.finish(reader);
-    (reader.findings.len() == before).then_some(given)
+    (complete && reader.findings.len() == before).then_some(given)
 }
 
 /// What a missing parameter should be.

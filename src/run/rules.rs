@@ -34,6 +34,10 @@ pub const SUITE: &[(&str, &str)] = &[
         "the share of the loads is a number other than zero",
     ),
     (
+        "material-constants",
+        "a law has the constants it needs, within their range",
+    ),
+    (
         "mesh-sizes",
         "declared mesh sizes fall as the meshes do, one a level",
     ),
