@@ -8,6 +8,7 @@ pub mod facts;
 pub mod inspect;
 pub mod level;
 pub mod plan;
+pub mod point_table;
 pub mod rules;
 pub mod tables;
 
