@@ -79,6 +79,7 @@ pub fn reading(case: &CasePlan) -> Reading {
             } else {
                 AngleUnit::Radians
             },
+            turning: case.exact.turns(),
         },
         units_from: units.unwrap_or(case.units),
         units_to: case.units,
