@@ -10,6 +10,7 @@ mod compressible;
 mod constant;
 mod demiray;
 mod elastic_plastic;
+mod general_state;
 mod incompressible;
 mod invariants;
 mod linear_elastic;
@@ -23,6 +24,7 @@ pub use compressible::{Compressible, CompressibleNeoHookean, CompressibleState, 
 pub use constant::{Constant, ConstantForm, Constants, Parameter};
 pub use demiray::Demiray;
 pub use elastic_plastic::ElasticPlastic;
+pub use general_state::{GeneralState, SecondGradient};
 pub use incompressible::{Differences, Formula, Hardening, IncompressibleLaw, Number, Slope};
 pub use linear_elastic::LinearElastic;
 pub use mooney_rivlin::MooneyRivlin;
