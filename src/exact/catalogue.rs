@@ -2,11 +2,16 @@
 
 use super::given::{Form, Given, ParameterEntry, refuse};
 use super::solution::{ExactSolution, Kinematics, Refusal};
-use super::tube_entries;
+use super::{published, tabulated, tube_entries};
 use crate::materials::{MaterialKind, catalogue as materials};
 
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
-const ENTRIES: &[Entry] = &[tube_entries::PRESSURISED_TUBE, tube_entries::LAME_TUBE];
+const ENTRIES: &[Entry] = &[
+    tube_entries::PRESSURISED_TUBE,
+    tube_entries::LAME_TUBE,
+    published::ENTRY,
+    tabulated::ENTRY,
+];
 
 /// One solution as a reader of the catalogue sees it.
 #[derive(Debug, Clone, Copy)]

@@ -6,10 +6,13 @@ pub mod solution;
 
 pub mod ends;
 pub mod given;
+pub mod known_value;
 pub mod parameters;
 
 pub mod lame_tube;
 pub mod pressurised_tube;
+pub mod published;
+pub mod tabulated;
 
 pub mod catalogue;
 
@@ -22,6 +25,7 @@ pub use catalogue::{Entry, build, entries, find};
 pub use description::{Description, Line, Sketch};
 pub use ends::Ends;
 pub use given::{Form, Given, ParameterEntry, Value, VariantEntry};
+pub use known_value::{Known, KnownQuantity, KnownValue};
 pub use lame_tube::LameTube;
 pub use parameters::Parameters;
 pub use pressurised_tube::{Limit, PressurisedTube};

@@ -3,12 +3,14 @@
 
 pub mod chebyshev;
 pub mod line_fit;
+pub mod monotone;
 pub mod quadrature;
 pub mod root;
 pub mod sum;
 
 pub use chebyshev::{Chebyshev, Piecewise};
 pub use line_fit::{LineFit, student_t_quantile};
+pub use monotone::Monotone;
 pub use quadrature::GaussRule;
 pub use root::find_root;
 pub use sum::CompensatedSum;

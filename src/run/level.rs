@@ -162,6 +162,7 @@ pub fn measure(
     let measures = Level {
         set: &set,
         exact: case.exact.as_ref(),
+        known: &case.known,
         body: report.as_ref(),
         points: points.as_ref(),
         share: case.share,

@@ -14,12 +14,15 @@ pub mod tables;
 
 mod checks;
 mod criteria;
+mod declared;
 mod exports;
 mod folders;
 mod format_pages;
+mod known;
 mod materials;
 mod pairing;
 mod parameters;
 mod refusals;
 mod series;
+mod table_file;
 mod template;
