@@ -3,7 +3,7 @@
 use super::{format_pages, rules};
 use crate::elements::{STANDARD_RULES, Shape};
 use crate::exact;
-use crate::materials;
+use crate::materials::{self, ConstantForm};
 use crate::mechanics::Dimension;
 use crate::mechanics::units::Unit;
 use crate::norms::catalogue::{MEASURES, Measure};
@@ -72,12 +72,11 @@ fn everything() -> String {
     }
     text.push_str("\nmaterials\n");
     for entry in materials::entries() {
-        let constants: Vec<_> = entry.parameters.iter().map(|p| p.name).collect();
         let _ = writeln!(
             text,
-            "  {:<18} {{ {} }}   {}",
+            "  {:<19} {{ {} }}   {}",
             entry.name,
-            constants.join(", "),
+            entry.constant_names(),
             entry.formula
         );
     }
@@ -148,7 +147,14 @@ fn material(entry: &materials::Entry) -> String {
         entry.name, entry.formula, entry.convention
     );
     for p in entry.parameters {
-        let _ = writeln!(text, "  {:<8} {} ({})", p.name, p.meaning, p.range);
+        let form = match p.form {
+            ConstantForm::Number => String::new(),
+            form => format!(", {}", form.words()),
+        };
+        let _ = writeln!(text, "  {:<8} {}{form} ({})", p.name, p.meaning, p.range);
+    }
+    if let Some(family) = entry.family {
+        let _ = writeln!(text, "  {:<8} {}", family.pattern, family.meaning);
     }
     let _ = writeln!(text, "\nsource  {}", entry.source);
     text
