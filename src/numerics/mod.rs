@@ -1,7 +1,9 @@
 //! Mathematics without mechanics: sums that lose nothing, Gauss rules, Chebyshev interpolants, bracketed
-//! roots, straight-line fits with their uncertainty. Imports nothing of ours.
+//! roots, straight-line fits with their uncertainty, the inverse Langevin function, the sign of sums of exponentials. Imports nothing of ours.
 
 pub mod chebyshev;
+pub mod exponential_sum;
+pub mod langevin;
 pub mod line_fit;
 pub mod monotone;
 pub mod quadrature;
