@@ -16,5 +16,5 @@ pub use catalogue::{Entry, ParameterEntry, build, entries, find};
 pub use ends::Ends;
 pub use lame_tube::LameTube;
 pub use parameters::Parameters;
-pub use pressurised_tube::{Limit, PressurisedTube};
+pub use pressurised_tube::{Drive, Grading, Layer, Limit, PressurisedTube, TubeProblem};
 pub use solution::{Body, ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};
