@@ -28,5 +28,5 @@ pub use given::{Form, Given, ParameterEntry, Value, VariantEntry};
 pub use known_value::{Known, KnownQuantity, KnownValue};
 pub use lame_tube::LameTube;
 pub use parameters::Parameters;
-pub use pressurised_tube::{Limit, PressurisedTube};
+pub use pressurised_tube::{Drive, Grading, Layer, Limit, PressurisedTube, TubeProblem};
 pub use solution::{ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};
