@@ -8,6 +8,8 @@ use crate::materials::{MaterialKind, catalogue as materials};
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
 const ENTRIES: &[Entry] = &[
     tube_entries::PRESSURISED_TUBE,
+    tube_entries::LAYERED_TUBE,
+    tube_entries::GRADED_TUBE,
     tube_entries::LAME_TUBE,
     published::ENTRY,
     tabulated::ENTRY,
