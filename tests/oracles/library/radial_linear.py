@@ -4,8 +4,9 @@
     s_i = lam tr(e) + 2 mu e_i - (3 lam + 2 mu) alpha T,   err = u', ett = u/r,   ezz uniform, or szz = 0
     (r T')' = 0                                         integrated with the rest
 
-The equation for u'' is integrated by collocation (../gauss_ode.py); the unknowns (u, u' at the inner end of each layer, ezz, the heat
-flux) enter linearly, so the state is found by superposition. No closed solution (C - D/r^2, logarithms) is used.
+The equation for u'' is integrated by collocation (gauss_ode.py); the unknowns (u, u' at the inner end of each layer,
+ezz, the heat flux) enter linearly, so the state is found by superposition. No closed solution (C - D/r^2, logarithms)
+is used.
 """
 
 from mpmath import mp, mpf, pi, matrix, lu_solve, sqrt
@@ -87,7 +88,10 @@ class Problem:
             inside = [layer.lo] + ([layer.hi / 4] if self.solid else []) + [r for r in stops if layer.lo < r < layer.hi] + [layer.hi]
             for p, q in zip(inside, inside[1:]):
                 out.append((layer, p, *y[:2], y[2] if self.heated() else T, F, W))
-                y, (dF, dW) = self.centre(layer, q, v, extra, order) if p == 0 else integrate(f, p, q, y, *order, extra)
+                if p == 0:
+                    y, (dF, dW) = self.centre(layer, q, v, extra, order)
+                else:
+                    y, (dF, dW) = integrate(f, p, q, y, *order, extra)
                 F, W = F + dF, W + dW
                 out.append((layer, q, *y[:2], y[2] if self.heated() else T, F, W))
             T = y[2] if self.heated() else T

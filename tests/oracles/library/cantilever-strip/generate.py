@@ -66,7 +66,8 @@ if __name__ == "__main__":
         load = 2 * c * gauss(lambda t: strip.stress(L, c * (2 * t - 1))[2]) + F
         energy = strip.energy(mpf(0), L, c)
         off = abs(work(strip, L, c) / energy - 1)
-        print(f"{case.id}: field equations {small(left)}, root {small(held)}, work {small(off)}, tip {mp.nstr(strip.displacement(L, mpf(0))[1], 8)}")
+        tip = mp.nstr(strip.displacement(L, mpf(0))[1], 8)
+        print(f"{case.id}: field equations {small(left)}, root {small(held)}, work {small(off)}, tip {tip}")
         assert max(left, held, abs(load), off) < mpf(10) ** -26, case.id
         values.add(case.id, "strain_energy", energy)
         for fx, fy in ((0, 0), (0, 1), (0, -0.5), (0.25, 0.4), (0.5, -1), (0.75, 0), (1, 0), (1, 1), (1, -0.6)):

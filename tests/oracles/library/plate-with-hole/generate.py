@@ -125,6 +125,7 @@ if __name__ == "__main__":
         left = plate.check(plate.a * mpf("1.3"), plate.a * mpf("0.9"))
         print(f"{case.id}: field equations {small(left)}", flush=True)
         assert left < mpf(10) ** -30
-        for point in ((a, 0.0, 0.0), (0.0, a, 0.0), (0.7072 * a, 0.7072 * a, 0.0), (-1.3 * a, 0.9 * a, 0.0), (2.5 * a, -4.1 * a, 0.0), (0.01 * a, 1.001 * a, 0.0)):
+        for x, y in ((1, 0), (0, 1), (0.7072, 0.7072), (-1.3, 0.9), (2.5, -4.1), (0.01, 1.001)):
+            point = (x * a, y * a, 0.0)
             values.add_all(case.id, plate.rows(point), point)
     values.write(HERE)
