@@ -62,7 +62,8 @@ class Values:
 
     def add(self, case, quantity, value, point=None):
         place = ["", "", ""] if point is None else [repr(float(x)) for x in point]
-        text = "0" if abs(value) < mpf(10) ** -28 else nstr(mpf(value), DIGITS)
+        with mp.workdps(60):  # whatever the caller works with: mpf() and nstr() round to the working precision
+            text = "0" if abs(value) < mpf(10) ** -28 else nstr(mpf(value), DIGITS)
         self.rows.append([case, quantity, *place, text])
 
     def add_all(self, case, named, point=None):

@@ -3,7 +3,7 @@
 The energy uses det F and the invariants of C = F^T F (Ogden: its eigenvalues); no stress formula is typed in anywhere.
 """
 
-from mpmath import mp, mpf, matrix, log, sqrt, eye
+from mpmath import mp, matrix, log, eye
 
 from case_values import number
 

@@ -11,7 +11,7 @@ force, by quadrature).
 import sys
 from pathlib import Path
 
-from mpmath import mp, mpf, eye, matrix, sqrt, atan2, quad
+from mpmath import mp, mpf, eye, matrix, sqrt, atan2
 
 HERE = Path(__file__).parent
 sys.path.insert(0, str(HERE.parent))
@@ -70,7 +70,7 @@ class Field:
         so of order side^6 (b varies over the cell)."""
         g = sqrt(mpf(3) / 5) * side / 2
         rule = [(-g, mpf(5) / 18), (mpf(0), mpf(8) / 18), (g, mpf(5) / 18)]
-        total, size = [mpf(0)] * 3, mpf(0)
+        total = [mpf(0)] * 3
         for axis in range(3):
             others = [k for k in range(3) if k != axis]
             for sign in (1, -1):
