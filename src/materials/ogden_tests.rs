@@ -1,3 +1,5 @@
+//! Tests of the Ogden law.
+
 use super::*;
 use crate::materials::{Constant, MooneyRivlin, NeoHookean, build};
 
