@@ -258,6 +258,21 @@ mod tests {
         }
     }
 
+    // The derivatives written out by hand, against differences. Red when a term of the chain rule is wrong.
+    #[test]
+    fn slopes_of_the_stiffness() {
+        for (n, j) in [(26.5, 0.1), (26.5, 60.0), (1.3, 0.5), (5.0, 2.0)] {
+            let law = ArrudaBoyce { mu: 0.7, n };
+            let h = 1e-4 * (law.range() - j);
+            let (_, by_j, by_j2) = law.stiffness(j);
+            let [below, above] = [j - h, j + h].map(|j| law.stiffness(j));
+            let slope = (above.0 - below.0) / (2.0 * h);
+            let bend = (above.1 - below.1) / (2.0 * h);
+            assert!((by_j / slope - 1.0).abs() < 1e-6, "{n} {j}: {by_j} {slope}");
+            assert!((by_j2 / bend - 1.0).abs() < 1e-6, "{n} {j}: {by_j2} {bend}");
+        }
+    }
+
     // Red when W changes its route with a jump.
     #[test]
     fn both_routes_to_the_energy_meet() {

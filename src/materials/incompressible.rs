@@ -241,7 +241,7 @@ mod tests {
                 prop_assert!(form.energy >= 0.0);
                 let small = law.shear_modulus() * (0.5 * d * d + 1.5 * e * e);
                 // taut fibres add to the modulus
-                if strain < 1e-3 && law.isotropic() {
+                if strain < 1e-3 && small > 0.0 && law.isotropic() {
                     prop_assert!((form.energy / small - 1.0).abs() < 4.0 * strain, "{law:?} small-strain energy");
                 }
             }

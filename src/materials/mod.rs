@@ -23,8 +23,6 @@ mod neo_hookean;
 mod ogden;
 mod polynomial;
 mod power_series;
-#[cfg(test)]
-pub(crate) mod samples;
 mod two_fibre;
 mod volumetric;
 mod yeoh;
@@ -207,3 +205,7 @@ impl PartialEq for Material {
         self.name() == other.name() && self.parameters() == other.parameters()
     }
 }
+
+#[cfg(test)]
+#[path = "samples_tests.rs"]
+pub(crate) mod samples;

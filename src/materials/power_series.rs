@@ -78,7 +78,7 @@ impl PowerSeries {
         };
         let place = match j {
             f64::INFINITY => format!("as {strain} grows"),
-            j if j == 0.0 => format!("at {strain} = 0"),
+            0.0 => format!("at {strain} = 0"),
             j => format!("about {strain} = {j:.4}"),
         };
         Problem {

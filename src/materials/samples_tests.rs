@@ -1,6 +1,6 @@
 //! Sound examples of every incompressible law, for the tests that hold for all of them.
 
-use super::{Constant, IncompressibleLaw, Material, MaterialKind, build, entries};
+use super::{Constant, IncompressibleLaw, Material, MaterialKind, build, entries, find};
 use std::sync::Arc;
 
 type Constants = &'static [(&'static str, f64)];
@@ -113,10 +113,24 @@ pub(crate) fn incompressible_laws() -> Vec<Arc<dyn IncompressibleLaw>> {
     built.collect()
 }
 
+/// A sound material of any law of the catalogue.
+pub(crate) fn example(name: &str) -> Material {
+    let found = incompressible_laws()
+        .into_iter()
+        .find(|law| law.name() == name);
+    if let Some(law) = found {
+        return Material::Incompressible(law);
+    }
+    let entry = find(name).unwrap();
+    let values = entry.parameters.iter().map(|p| (p.name.to_string(), 0.4));
+    build(name, &values.collect::<Vec<_>>()).unwrap()
+}
+
 #[test]
 fn every_law_has_samples() {
     let laws = incompressible_laws();
     for entry in entries() {
+        assert_eq!(example(entry.name).kind(), entry.kind);
         let count = laws.iter().filter(|law| law.name() == entry.name).count();
         let wanted = entry.kind == MaterialKind::Incompressible;
         assert!(!wanted || count >= 2, "{} has {count} samples", entry.name);
