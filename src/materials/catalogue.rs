@@ -9,6 +9,7 @@ const ENTRIES: &[Entry] = &[
     super::mooney_rivlin::ENTRY,
     super::yeoh::ENTRY,
     super::demiray::ENTRY,
+    super::stated::ENTRY,
     super::compressible::ENTRY,
     super::linear_elastic::ENTRY,
     super::elastic_plastic::ENTRY,

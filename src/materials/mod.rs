@@ -15,6 +15,7 @@ mod invariants;
 mod linear_elastic;
 mod mooney_rivlin;
 mod neo_hookean;
+mod stated;
 mod volumetric;
 mod yeoh;
 
@@ -27,6 +28,7 @@ pub use incompressible::{Differences, Formula, Hardening, IncompressibleLaw, Num
 pub use linear_elastic::LinearElastic;
 pub use mooney_rivlin::MooneyRivlin;
 pub use neo_hookean::NeoHookean;
+pub use stated::Stated;
 pub use volumetric::{Volumetric, VolumetricForm};
 pub use yeoh::Yeoh;
 
