@@ -16,6 +16,7 @@ const ENTRIES: &[Entry] = &[
     super::arruda_boyce_series::ENTRY,
     super::demiray::ENTRY,
     super::two_fibre::ENTRY,
+    super::stated::ENTRY,
     super::compressible::ENTRY,
     super::linear_elastic::ENTRY,
     super::elastic_plastic::ENTRY,

@@ -62,6 +62,11 @@ pub trait Formula: std::fmt::Debug + Send + Sync + 'static {
     /// Whether no direction of the material differs from another; false for fibres in the hoop-axial plane.
     const ISOTROPIC: bool = true;
 
+    /// Whether no direction differs from another, where constants decide it.
+    fn isotropic(&self) -> bool {
+        Self::ISOTROPIC
+    }
+
     /// W as text, where it is not the same for every set of constants.
     fn energy_text(&self) -> String {
         Self::ENERGY.to_string()
@@ -147,7 +152,7 @@ impl<F: Formula> IncompressibleLaw for F {
     }
 
     fn isotropic(&self) -> bool {
-        F::ISOTROPIC
+        Formula::isotropic(self)
     }
 
     fn kinks(&self, e: f64) -> Vec<f64> {

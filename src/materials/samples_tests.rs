@@ -64,6 +64,14 @@ const NUMBERS: &[(&str, &[Constants])] = &[
     ),
 ];
 
+/// Energies of the law `stated`.
+const STATED: &[&str] = &[
+    "0.2*(I1 - 3) + 0.01*(I2 - 3)^2",
+    "0.1*I1 - 0.3 + 0.05*(I2 - 3)",
+    "0.4/0.9*(exp(0.45*(I1 - 3)) - 1)",
+    "0.3/1.7*(l1^1.7 + l2^1.7 + l3^1.7 - 3) + 0.1*(l1^-2 + l2^-2 + l3^-2 - 3)",
+];
+
 type Lists = (&'static [f64], &'static [f64]);
 
 /// (law, sets of mu and alpha).
@@ -104,8 +112,13 @@ pub(crate) fn incompressible_laws() -> Vec<Arc<dyn IncompressibleLaw>> {
             (name, values.to_vec())
         })
     });
+    let stated = STATED.iter().map(|&energy| {
+        let values = vec![("energy".to_string(), Constant::from(energy))];
+        ("stated", values)
+    });
     let built = numbers
         .chain(lists)
+        .chain(stated)
         .map(|(name, values)| match build(name, &values) {
             Ok(Material::Incompressible(law)) => law,
             other => panic!("{name} {values:?}: {other:?}"),

@@ -1,8 +1,10 @@
 //! Mathematics without mechanics: sums that lose nothing, Gauss rules, Chebyshev interpolants, bracketed
-//! roots, straight-line fits with their uncertainty, the inverse Langevin function, the sign of sums of exponentials. Imports nothing of ours.
+//! roots, straight-line fits with their uncertainty, monotone tables, the inverse Langevin function, the sign of sums of
+//! exponentials, expressions typed by users. Imports nothing of ours.
 
 pub mod chebyshev;
 pub mod exponential_sum;
+pub mod expression;
 pub mod langevin;
 pub mod line_fit;
 pub mod monotone;
@@ -11,6 +13,7 @@ pub mod root;
 pub mod sum;
 
 pub use chebyshev::{Chebyshev, Piecewise};
+pub use expression::{Expression, ExpressionError};
 pub use line_fit::{LineFit, student_t_quantile};
 pub use monotone::Monotone;
 pub use quadrature::GaussRule;

@@ -23,6 +23,7 @@ pub fn text(name: Option<&str>) -> Result<String, String> {
     match name {
         "columns" => return Ok(format_pages::COLUMNS.to_string()),
         "suite" => return Ok(format_pages::SUITE.to_string()),
+        "expressions" => return Ok(format_pages::EXPRESSIONS.to_string()),
         _ => {}
     }
     if let Some(entry) = exact::find(name) {
@@ -53,7 +54,7 @@ fn names() -> impl Iterator<Item = &'static str> {
     let materials = materials::entries().iter().map(|e| e.name);
     let shapes = Shape::ALL.into_iter().map(Shape::name);
     let measures = MEASURES.iter().map(|m| m.name);
-    ["columns", "suite"]
+    ["columns", "suite", "expressions"]
         .into_iter()
         .chain(solutions)
         .chain(materials)
@@ -116,6 +117,7 @@ fn everything() -> String {
         }
     }
     text.push_str("\npages\n  columns            columns of the tables\n  suite              keys of a suite\n");
+    text.push_str("  expressions        what a typed energy is written of\n");
     text.push_str("\n`truebore catalogue NAME` tells more\n");
     text
 }
