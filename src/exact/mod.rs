@@ -10,6 +10,7 @@ pub mod parameters;
 
 pub mod lame_tube;
 pub mod pressurised_tube;
+mod small_strain;
 
 pub mod catalogue;
 
