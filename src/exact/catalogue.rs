@@ -6,12 +6,14 @@ use super::small_strain::{
     shrink_fit_tube, strip,
 };
 use super::solution::{ExactSolution, Kinematics, Refusal};
-use super::tube_entries;
+use super::{published, tabulated, tube_entries};
 use crate::materials::{MaterialKind, catalogue as materials};
 
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
 const ENTRIES: &[Entry] = &[
     tube_entries::PRESSURISED_TUBE,
+    tube_entries::LAYERED_TUBE,
+    tube_entries::GRADED_TUBE,
     tube_entries::LAME_TUBE,
     lame_sphere::ENTRY,
     shrink_fit_tube::ENTRY,
@@ -23,6 +25,8 @@ const ENTRIES: &[Entry] = &[
     strip::PURE_BENDING,
     bar_torsion::ENTRY,
     elastic_plastic_tube::ENTRY,
+    published::ENTRY,
+    tabulated::ENTRY,
 ];
 
 /// One solution as a reader of the catalogue sees it.

@@ -6,11 +6,14 @@ pub mod solution;
 
 pub mod ends;
 pub mod given;
+pub mod known_value;
 pub mod parameters;
 
 pub mod lame_tube;
 pub mod pressurised_tube;
+pub mod published;
 mod small_strain;
+pub mod tabulated;
 
 pub mod catalogue;
 
@@ -23,7 +26,8 @@ pub use catalogue::{Entry, build, entries, find};
 pub use description::{Description, Line, Sketch};
 pub use ends::Ends;
 pub use given::{Form, Given, ParameterEntry, Value, VariantEntry};
+pub use known_value::{Known, KnownQuantity, KnownValue};
 pub use lame_tube::LameTube;
 pub use parameters::Parameters;
-pub use pressurised_tube::{Limit, PressurisedTube};
+pub use pressurised_tube::{Drive, Grading, Layer, Limit, PressurisedTube, TubeProblem};
 pub use solution::{ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};

@@ -4,7 +4,7 @@ use super::{format_pages, rules};
 use crate::elements::{STANDARD_RULES, Shape};
 use crate::exact;
 use crate::exact::given::{Form, ParameterEntry};
-use crate::materials;
+use crate::materials::{self, ConstantForm};
 use crate::mechanics::Dimension;
 use crate::mechanics::units::Unit;
 use crate::norms::catalogue::{MEASURES, Measure};
@@ -75,7 +75,7 @@ fn everything() -> String {
     for entry in materials::entries() {
         let _ = writeln!(
             text,
-            "  {:<18} {{ {} }}   {}",
+            "  {:<19} {{ {} }}   {}",
             entry.name,
             entry.constant_names(),
             entry.formula
@@ -178,7 +178,11 @@ fn material(entry: &materials::Entry) -> String {
         entry.name, entry.formula, entry.convention
     );
     for p in entry.parameters {
-        let _ = writeln!(text, "  {:<8} {} ({})", p.name, p.meaning, p.range);
+        let form = match p.form {
+            ConstantForm::Number => String::new(),
+            form => format!(", {}", form.words()),
+        };
+        let _ = writeln!(text, "  {:<8} {}{form} ({})", p.name, p.meaning, p.range);
     }
     if let Some(family) = entry.family {
         let _ = writeln!(text, "  {:<8} {}", family.pattern, family.meaning);

@@ -48,6 +48,7 @@ keys of a suite
 keys of a case
   id, title
   problem          an exact solution with its parameters; a list where a value stands makes cases
+  reference        exact (without it), or published: also the published values of this very problem, by known-value
   element          quad4, or { displacement: quad9, pressure: quad4 | constant | linear | quadratic }
   section          modelled share of the section, e.g. 1/4
   axial-length     of a solid; checked against the mesh

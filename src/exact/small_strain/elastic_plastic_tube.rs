@@ -19,7 +19,7 @@ use crate::exact::solution::{
     ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total,
 };
 use crate::exact::tube_entries::{INNER_RADIUS, MATERIAL, OUTER_RADIUS};
-use crate::exact::tube_words::TubeWords;
+use crate::exact::tube_words::{Bore, TubeWords};
 use crate::exact::{Body, Ends};
 use crate::materials::{ElasticPlastic, LinearElastic, Material, MaterialKind};
 use crate::mechanics::{Dimension, Point, SymTensor, UnitSystem};
@@ -339,6 +339,7 @@ impl ExactSolution for PlasticTube {
             inner: self.inner,
             outer: self.outer,
             ends: Ends::PlaneStrain,
+            bore: Bore::Pressure,
             inner_pressure: self.pressure,
             outer_pressure: 0.0,
             kinematics: Kinematics::SmallStrain,

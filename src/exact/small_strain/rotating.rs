@@ -15,7 +15,7 @@ use crate::exact::description::Description;
 use crate::exact::given::{Form, Given, ParameterEntry, refuse};
 use crate::exact::solution::{ErrorBound, ExactSolution, Kinematics, Refusal, State, Total};
 use crate::exact::tube_entries::{MATERIAL, OUTER_RADIUS, ends};
-use crate::exact::tube_words::TubeWords;
+use crate::exact::tube_words::{Bore, TubeWords};
 use crate::exact::{Body, Ends};
 use crate::materials::{LinearElastic, MaterialKind};
 use crate::mechanics::{Dimension, Point, UnitSystem};
@@ -127,6 +127,7 @@ impl Rotating {
                 inner: a,
                 outer: b,
                 ends,
+                bore: Bore::Pressure,
                 inner_pressure: 0.0,
                 outer_pressure: 0.0,
                 kinematics: Kinematics::SmallStrain,

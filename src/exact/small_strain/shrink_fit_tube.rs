@@ -19,7 +19,7 @@ use crate::exact::solution::{
     ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total,
 };
 use crate::exact::tube_entries::{INNER_PRESSURE, OUTER_PRESSURE, ends};
-use crate::exact::tube_words::TubeWords;
+use crate::exact::tube_words::{Bore, TubeWords};
 use crate::exact::{Body, Ends};
 use crate::materials::{LinearElastic, MaterialKind};
 use crate::mechanics::{Dimension, Point, UnitSystem};
@@ -203,6 +203,7 @@ impl ShrinkFit {
                 inner: fit.radii[0],
                 outer: fit.radii[2],
                 ends: fit.ends,
+                bore: Bore::Pressure,
                 inner_pressure: fit.inner_pressure,
                 outer_pressure: fit.outer_pressure,
                 kinematics: Kinematics::SmallStrain,
