@@ -125,14 +125,16 @@ impl Grading {
                 return wrong(message, "");
             }
         }
+        let mut start = from;
         for (end, factor) in self.parts(from, to, bore) {
-            for radius in [from, end] {
+            for radius in [start, end] {
                 let value = factor.at((radius / bore).ln(), bore);
                 if !(value > 0.0 && value.is_finite()) {
                     let message = format!("the factor on the moduli is {value} at radius {radius}");
                     return wrong(message, "choose a weaker grading");
                 }
             }
+            start = end;
         }
         Ok(())
     }

@@ -97,7 +97,8 @@ impl PressurisedTube {
         let fields = Fields::new(wall.clone(), solved.g, solved.e, solved.outer)?;
         let totals = bound::totals_of(problem, &wall, &solved);
         let bound = bound::bound_of(problem, &wall, &fields, &solved, &totals)?;
-        if !(bound.displacement.max(bound.stress).max(bound.totals) < USELESS) {
+        let worst = bound.displacement.max(bound.stress).max(bound.totals);
+        if worst.is_nan() || worst >= USELESS {
             let message =
                 "this state is within round-off of a limit or of a lock: no digit of it is sure";
             let hint = "stay further below it";

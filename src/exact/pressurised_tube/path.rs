@@ -63,6 +63,10 @@ const MOST_LOSS: f64 = 1e10;
 /// cos 18 degrees: a sharper turn of the path in one step is tried again in smaller ones.
 const MOST_TURN: f64 = 0.95;
 
+/// A step this short may turn the path by any acute angle: where fibres of a whole wall begin to act at once (in the
+/// unloaded state all do) the path has a corner.
+const CORNER: f64 = 1e-5;
+
 /// The path at given loads.
 pub(super) struct Path<'a> {
     pub wall: &'a Wall,
@@ -153,7 +157,7 @@ impl Path<'_> {
                 return (trail, Some(end));
             }
             let next = self.station(&here, step);
-            let Some(next) = next.filter(|s| here.turn(s) >= MOST_TURN) else {
+            let Some(next) = next.filter(|s| here.turn(s) >= MOST_TURN || step < CORNER) else {
                 step *= 0.5;
                 if step < SHORTEST {
                     let end = if self.hardened(&here) {

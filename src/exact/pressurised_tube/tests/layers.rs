@@ -87,6 +87,18 @@ fn gradings_are_the_factors_they_say() {
         let off = apart(&solve(Grading::Table(table)), &solve(grading));
         assert!(off < 4e-7 && off > 1e-12, "{off:e}");
     }
+    // a table whose lines, continued, would leave the positive numbers elsewhere in the wall
+    let zigzag = vec![(1.0, 1.0), (1.2, 1.8), (1.5, 0.6), (2.0, 2.2)];
+    near(
+        -solve(Grading::Table(zigzag))
+            .fields
+            .at_radius(1.0)
+            .unwrap()
+            .stress
+            .xx,
+        0.3,
+        1e-14,
+    );
     // far beyond what one panel can hold: (R/A)^60
     let steep = PressurisedTube::solve(&problem(
         vec![graded(2.0, soft(1.0), Grading::Power(60.0))],
