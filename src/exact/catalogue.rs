@@ -1,6 +1,10 @@
 //! Every exact solution a suite can name: parameters, materials, range, sources, checks.
 
 use super::given::{Form, Given, ParameterEntry, refuse};
+use super::small_strain::{
+    bar_torsion, elastic_plastic_tube, heated_tube, lame_sphere, plate_with_hole, rotating,
+    shrink_fit_tube, strip,
+};
 use super::solution::{ExactSolution, Kinematics, Refusal};
 use super::{published, tabulated, tube_entries};
 use crate::materials::{MaterialKind, catalogue as materials};
@@ -11,6 +15,16 @@ const ENTRIES: &[Entry] = &[
     tube_entries::LAYERED_TUBE,
     tube_entries::GRADED_TUBE,
     tube_entries::LAME_TUBE,
+    lame_sphere::ENTRY,
+    shrink_fit_tube::ENTRY,
+    heated_tube::ENTRY,
+    rotating::DISK,
+    rotating::CYLINDER,
+    plate_with_hole::ENTRY,
+    strip::CANTILEVER,
+    strip::PURE_BENDING,
+    bar_torsion::ENTRY,
+    elastic_plastic_tube::ENTRY,
     published::ENTRY,
     tabulated::ENTRY,
 ];

@@ -12,6 +12,7 @@ pub mod parameters;
 pub mod lame_tube;
 pub mod pressurised_tube;
 pub mod published;
+mod small_strain;
 pub mod tabulated;
 
 pub mod catalogue;
