@@ -13,6 +13,7 @@ pub mod lame_tube;
 pub mod pressurised_tube;
 pub mod published;
 mod small_strain;
+mod stated_field;
 pub mod tabulated;
 
 pub mod catalogue;
