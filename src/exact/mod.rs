@@ -5,6 +5,7 @@ pub mod solution;
 pub mod ends;
 pub mod parameters;
 
+pub mod compressible;
 pub mod lame_tube;
 pub mod pressurised_tube;
 
