@@ -223,10 +223,8 @@ impl Mesh {
         self.rule.value(self.part(values, found), t)
     }
 
-    /// How well nodal values are resolved in panel `p`, against their largest in the wall.
+    /// The last Legendre coefficients of nodal values in panel `p`.
     pub fn tail(&self, values: &[f64], p: usize) -> f64 {
-        let largest = values.iter().fold(0.0_f64, |m, v| m.max(v.abs()));
-        let tail = self.rule.tail(self.part(values, p));
-        if largest == 0.0 { 0.0 } else { tail / largest }
+        self.rule.tail(self.part(values, p))
     }
 }

@@ -5,7 +5,7 @@
 //! round-off of each equation carried through the inverse of its derivatives.
 
 use super::fields::Fields;
-use super::integrals::{BORE, EXTRA, INNER, Integrals, OUTER, STRETCH};
+use super::integrals::{Axial, BORE, EXTRA, INNER, Integrals, OUTER, STRETCH};
 use super::mesh::{Mesh, Shape};
 use super::path::{Path, Station};
 use super::refine::transfer;
@@ -14,6 +14,7 @@ use super::system::{newton, states, system};
 use crate::exact::solution::ErrorBound;
 use crate::numerics::{Collocation, CompensatedSum};
 use nalgebra::DVector;
+use std::f64::consts::PI;
 use std::sync::Arc;
 
 /// What is printed of a solved state.
@@ -36,7 +37,7 @@ pub(super) struct Numbers {
 }
 
 impl Numbers {
-    pub fn of(station: &Station) -> Option<Self> {
+    pub fn of(path: &Path, station: &Station) -> Option<Self> {
         let (mesh, y) = (&station.mesh, &station.y);
         let n = mesh.len();
         let (wall, power) = (&mesh.wall, mesh.wall.shape.power());
@@ -71,10 +72,7 @@ impl Numbers {
             inner_radius: wall.inner * along(g).exp(),
             outer_radius: wall.outer * along(outer).exp(),
             axial_stretch: e.exp(),
-            axial_force: match wall.shape {
-                Shape::Tube => all.force().value,
-                Shape::Sphere => 0.0,
-            },
+            axial_force: axial_force(path, &all),
             strain_energy: shape_volume(wall.shape, wall.inner) * energy.value(),
             enclosed_volume: shape_volume(wall.shape, wall.inner) * g.exp(),
             volume_change: grown.value() / section,
@@ -99,6 +97,23 @@ impl Numbers {
     }
 }
 
+/// The net axial force on the wall: as prescribed, or the integral of szz.
+fn axial_force(path: &Path, all: &Integrals) -> f64 {
+    let wall = &path.wall;
+    let square = PI * wall.inner * wall.inner;
+    match (wall.shape, path.axial) {
+        (Shape::Sphere, _) => 0.0,
+        (_, Axial::Fixed(_)) => all.force().value,
+        (_, Axial::Force(force)) => force,
+        (_, Axial::Closed) => {
+            let per_length = square * (-all.extra(STRETCH)).exp();
+            let caps = (all.extra(INNER) - all.extra(OUTER)) * all.extra(BORE).exp();
+            per_length * (caps - all.extra(OUTER) * all.measure().value)
+        }
+        (_, Axial::DeadCaps) => square * all.load(true).value - PI * wall.outer * wall.outer * path.outer,
+    }
+}
+
 /// The solved state, its tables, its numbers and how sure they are.
 pub(super) struct Judged {
     pub fields: Fields,
@@ -112,9 +127,9 @@ pub(super) struct Judged {
 pub(super) fn judge(path: &Path, solved: &Solved) -> Option<Judged> {
     let station = &solved.station;
     let fields = Fields::new(station)?;
-    let numbers = Numbers::of(station)?;
+    let numbers = Numbers::of(path, station)?;
     let check = checked(path, solved);
-    let other = check.as_ref().and_then(|c| Some((Fields::new(c)?, Numbers::of(c)?)));
+    let other = check.as_ref().and_then(|c| Some((Fields::new(c)?, Numbers::of(path, c)?)));
     let force_size = force_size(station)?.max(numbers.axial_force.abs());
     let compared = match &other {
         Some((tables, totals)) => {
@@ -220,12 +235,15 @@ fn round_off(
     let work = numbers.inner_pressure.abs() * numbers.enclosed_volume * g
         + numbers.outer_pressure.abs() * shape_volume(wall.shape, numbers.outer_radius) * numbers.axial_stretch * g
         + numbers.axial_force.abs() * numbers.axial_stretch * e;
-    let force = match wall.shape {
-        Shape::Tube => {
+    let force = match path.axial {
+        Axial::Fixed(_) if wall.shape == Shape::Tube => {
             let row = all.force();
             EACH * row.size + row.by.abs().dot(&error)
         }
-        Shape::Sphere => 0.0,
+        Axial::Closed | Axial::DeadCaps => {
+            numbers.axial_force.abs() * (g + e) + shape_volume(wall.shape, numbers.inner_radius) * error[n + INNER]
+        }
+        Axial::Fixed(_) | Axial::Force(_) => 0.0,
     };
     let own = 8.0 * f64::EPSILON;
     let totals = (g + e).max(ratio(work, numbers.strain_energy)).max(ratio(force, force_size));

@@ -158,7 +158,7 @@ impl Path {
 
     /// The station on a mesh that resolves it as well as the path needs.
     fn resolved(&self, station: Station) -> Option<Station> {
-        let bad = super::refine::coarse_panels(&station.mesh, &station.y, TAIL);
+        let (bad, _) = super::refine::coarse_panels(&station.mesh, &station.y, TAIL);
         if bad.is_empty() || station.mesh.panels.len() + bad.len() > MOST_PANELS {
             return Some(station);
         }

@@ -18,10 +18,11 @@ pub(super) fn transfer(from: &Mesh, y: &DVector<f64>, to: &Mesh) -> DVector<f64>
     })
 }
 
-/// Panels whose last Legendre coefficients of Lam, stt-srr, szz-srr or f are not below `tail`.
-pub(super) fn coarse_panels(mesh: &Mesh, y: &DVector<f64>, tail: f64) -> Vec<usize> {
+/// Panels whose last Legendre coefficients of Lam, stt-srr, szz-srr or f are not below `tail` of the largest of them all,
+/// and the worst share.
+pub(super) fn coarse_panels(mesh: &Mesh, y: &DVector<f64>, tail: f64) -> (Vec<usize>, f64) {
     let Some(states) = states(mesh, y) else {
-        return Vec::new();
+        return (Vec::new(), f64::INFINITY);
     };
     let list = |pick: fn(&NodeState) -> f64| states.iter().map(pick).collect::<Vec<_>>();
     let all = [
@@ -31,9 +32,15 @@ pub(super) fn coarse_panels(mesh: &Mesh, y: &DVector<f64>, tail: f64) -> Vec<usi
         list(|s| s.push.value),
     ];
     let loss = states.iter().fold(0.0_f64, |m, s| m.max(s.loss));
-    let allowed = tail * (1.0 + loss);
-    let coarse = |p: &usize| all.iter().any(|values| mesh.tail(values, *p) > allowed);
-    (0..mesh.panels.len()).filter(coarse).collect()
+    let largest = all.iter().flatten().fold(0.0_f64, |m, v| m.max(v.abs()));
+    if largest == 0.0 {
+        return (Vec::new(), 0.0);
+    }
+    let share = |p: usize| all.iter().fold(0.0_f64, |m, values| m.max(mesh.tail(values, p))) / largest;
+    let shares: Vec<f64> = (0..mesh.panels.len()).map(share).collect();
+    let coarse = |p: &usize| shares[*p] > tail * (1.0 + loss);
+    let worst = shares.iter().fold(0.0_f64, |m, s| m.max(*s));
+    ((0..shares.len()).filter(coarse).collect(), worst)
 }
 
 /// The panels with those of the list cut in the middle.

@@ -155,6 +155,7 @@ pub(super) fn fine(path: &Path, from: &Station, control: Control, nodes: usize) 
     let mut base = from.mesh.panels.clone();
     let mut cuts: Vec<(usize, f64)> = Vec::new();
     let (mut mesh, mut y) = (from.mesh.clone(), from.y.clone());
+    let mut last = f64::INFINITY;
     for round in 0..ROUNDS {
         let next = Arc::new(Mesh::new(&path.wall, &rule, cut_at(&base, &cuts)));
         let guess = transfer(&mesh, &y, &next);
@@ -162,11 +163,19 @@ pub(super) fn fine(path: &Path, from: &Station, control: Control, nodes: usize) 
         y = found.y.clone();
         mesh = next;
         let placed = kinks(&mesh, &y);
-        let settled = placed.len() == cuts.len() && placed.iter().zip(&cuts).all(|(a, b)| (a.1 - b.1).abs() < 1e-14);
-        let near = placed.len() == cuts.len() && placed.iter().zip(&cuts).all(|(a, b)| (a.1 - b.1).abs() < 1e-6);
-        let wide = if near { coarse_panels(&mesh, &y, TAIL) } else { Vec::new() };
+        let moved = moved(&placed, &cuts);
+        let (mut wide, tail) = if moved < 1e-6 {
+            coarse_panels(&mesh, &y, TAIL)
+        } else {
+            (Vec::new(), f64::INFINITY)
+        };
+        // what halving does not make smaller is round-off
+        if tail < 1e-10 && tail > 0.5 * last {
+            wide.clear();
+        }
+        last = tail;
         let full = mesh.panels.len() + wide.len() > MOST_PANELS;
-        if (settled && wide.is_empty()) || full || round + 1 == ROUNDS {
+        if (moved < 1e-14 && wide.is_empty()) || full || round + 1 == ROUNDS {
             return path.station(&mesh, found);
         }
         let middles = wide.iter().map(|p| {
@@ -177,6 +186,15 @@ pub(super) fn fine(path: &Path, from: &Station, control: Control, nodes: usize) 
         cuts = placed;
     }
     None
+}
+
+/// How far the kinks moved; infinitely when there are others than before.
+fn moved(placed: &[(usize, f64)], cuts: &[(usize, f64)]) -> f64 {
+    if placed.len() != cuts.len() {
+        return f64::INFINITY;
+    }
+    let pairs = placed.iter().zip(cuts);
+    pairs.fold(0.0, |m, (a, b)| m.max((a.1 - b.1).abs()))
 }
 
 /// The limit, and the station at a maximum.

@@ -119,18 +119,20 @@ pub(super) struct Found {
     pub steps: usize,
 }
 
-/// A step against the unknowns: pressures and Lam together, g and e together, so that a zero among them is no trouble.
+/// A step against the unknowns: pressures and Lam together, g and e together, each no smaller than what the strain of the
+/// wall makes of the modulus, so that a zero among them is no trouble.
 fn relative(mesh: &Mesh, step: &DVector<f64>, y: &DVector<f64>) -> f64 {
     let n = mesh.len();
+    let (modulus, thin) = (mesh.wall.modulus(), mesh.wall.pressure_scale());
     let largest = |v: &DVector<f64>, places: std::ops::Range<usize>| places.fold(0.0_f64, |m, i| m.max(v[i].abs()));
-    let strains = n + BORE..n + INNER;
-    let pressures = largest(y, n + INNER..n + EXTRA);
-    let strain = largest(y, strains.clone()).max(pressures / mesh.wall.modulus());
-    let stress = largest(y, 0..n).max(pressures);
+    let [nodes, strains, loads] = [0..n, n + BORE..n + INNER, n + INNER..n + EXTRA];
+    let load = largest(y, loads.clone());
+    let strain = largest(y, strains.clone()).max(load / modulus);
+    let stress = largest(y, nodes.clone()).max(modulus * strain);
     let ratio = |a: f64, b: f64| if a == 0.0 { 0.0 } else { a / b };
     ratio(largest(step, strains), strain)
-        .max(ratio(largest(step, 0..n), stress))
-        .max(ratio(largest(step, n + INNER..n + EXTRA), pressures))
+        .max(ratio(largest(step, nodes), stress))
+        .max(ratio(largest(step, loads), load.max(thin * strain)))
 }
 
 /// Newton's method from `y`, full steps, until a step is below `tolerance` of the unknowns, or, with a tolerance of zero,
