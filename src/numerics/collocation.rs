@@ -130,15 +130,27 @@ mod tests {
                     };
                     let forward = sum(&|j| rule.forward(i, j));
                     let backward = sum(&|j| rule.backward(i, j));
-                    assert!((forward - (integral(*x) - integral(-1.0))).abs() < 4e-15, "{n} {degree} {i}");
-                    assert!((backward - (integral(1.0) - integral(*x))).abs() < 4e-15, "{n} {degree} {i}");
+                    assert!(
+                        (forward - (integral(*x) - integral(-1.0))).abs() < 4e-15,
+                        "{n} {degree} {i}"
+                    );
+                    assert!(
+                        (backward - (integral(1.0) - integral(*x))).abs() < 4e-15,
+                        "{n} {degree} {i}"
+                    );
                 }
                 for x in [-1.0_f64, -0.3, 0.0, 0.77, 1.0] {
-                    assert!((rule.value(&values, x) - x.powi(power)).abs() < 4e-15, "{n} {degree} {x}");
+                    assert!(
+                        (rule.value(&values, x) - x.powi(power)).abs() < 4e-15,
+                        "{n} {degree} {x}"
+                    );
                 }
                 // the leading coefficient of x^m falls like 2^-m
                 let resolved = degree + 2 < n;
-                assert!(n > 20 || (rule.tail(&values) < 1e-14) == resolved, "{n} {degree}");
+                assert!(
+                    n > 20 || (rule.tail(&values) < 1e-14) == resolved,
+                    "{n} {degree}"
+                );
             }
         }
     }

@@ -75,7 +75,8 @@ impl<'a> Integrals<'a> {
     pub fn new(mesh: &'a Mesh, y: &'a DVector<f64>, states: &'a [NodeState]) -> Self {
         let power = mesh.wall.shape.power();
         let growth = mesh.nodes.iter().zip(states);
-        let growth = growth.map(|(node, s)| power * node.s * s.volume / mesh.law(node).volume_modulus());
+        let growth =
+            growth.map(|(node, s)| power * node.s * s.volume / mesh.law(node).volume_modulus());
         Self {
             mesh,
             y,
@@ -103,7 +104,11 @@ impl<'a> Integrals<'a> {
             by[n + BORE] += w * h.by_kap * self.extra(BORE).exp();
             by[n + STRETCH] += w * h.by_e;
         }
-        let through = self.mesh.forward.tr_mul(&by_sum).component_mul(&self.growth);
+        let through = self
+            .mesh
+            .forward
+            .tr_mul(&by_sum)
+            .component_mul(&self.growth);
         for i in 0..n {
             by[i] += through[i];
         }
@@ -112,7 +117,10 @@ impl<'a> Integrals<'a> {
 
     /// int f dX.
     pub fn balance(&self) -> Row {
-        let terms = self.states.iter().map(|s| (s.push, 0.0, s.push.value * (1.0 + s.loss)));
+        let terms = self
+            .states
+            .iter()
+            .map(|s| (s.push, 0.0, s.push.value * (1.0 + s.loss)));
         self.over_wall(&terms.collect::<Vec<_>>())
     }
 
@@ -302,4 +310,3 @@ impl Row {
         self
     }
 }
-

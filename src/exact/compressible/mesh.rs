@@ -168,7 +168,8 @@ impl Mesh {
                 });
             }
         }
-        let matrix = |within: &dyn Fn(usize, usize) -> f64, whole: &dyn Fn(usize, usize) -> bool| {
+        let matrix = |within: &dyn Fn(usize, usize) -> f64,
+                      whole: &dyn Fn(usize, usize) -> bool| {
             DMatrix::from_fn(nodes.len(), nodes.len(), |i, j| {
                 let (here, there) = (i / n, j / n);
                 if here == there {
@@ -211,7 +212,11 @@ impl Mesh {
 
     /// The interpolant of nodal values at `x` of a layer.
     pub fn value(&self, values: &[f64], x: f64, layer: usize) -> f64 {
-        let of_layer = self.panels.iter().enumerate().filter(|(_, p)| p.layer == layer);
+        let of_layer = self
+            .panels
+            .iter()
+            .enumerate()
+            .filter(|(_, p)| p.layer == layer);
         let mut found = 0;
         for (i, panel) in of_layer {
             found = i;

@@ -41,34 +41,64 @@ pub fn incompressible_layer(law: Arc<dyn IncompressibleLaw>) -> Compressible {
 const MOST_RATIO: f64 = 1e4;
 
 /// Refuses radii out of order and numbers that are not finite.
-fn check(inner: f64, layers: &[(f64, Compressible)], drive: Drive, outer_pressure: f64) -> Result<(), Refusal> {
+fn check(
+    inner: f64,
+    layers: &[(f64, Compressible)],
+    drive: Drive,
+    outer_pressure: f64,
+) -> Result<(), Refusal> {
     let (name, value) = match drive {
         Drive::InnerPressure(p) => ("inner-pressure", p),
         Drive::InnerWallStretch(stretch) => ("inner-wall-stretch", stretch),
         Drive::EnclosedVolume(volume) => ("enclosed-volume", volume),
     };
-    let given = [("inner-radius", inner), (name, value), ("outer-pressure", outer_pressure)];
+    let given = [
+        ("inner-radius", inner),
+        (name, value),
+        ("outer-pressure", outer_pressure),
+    ];
     for (name, value) in given {
         if !value.is_finite() {
-            return Err(refuse(name, format!("{name} = {value} is not a finite number"), ""));
+            return Err(refuse(
+                name,
+                format!("{name} = {value} is not a finite number"),
+                "",
+            ));
         }
     }
     let positive = !matches!(drive, Drive::InnerPressure(_));
-    for (name, value) in [("inner-radius", inner), (name, if positive { value } else { 1.0 })] {
+    for (name, value) in [
+        ("inner-radius", inner),
+        (name, if positive { value } else { 1.0 }),
+    ] {
         if value <= 0.0 {
-            return Err(refuse(name, format!("{name} = {value} must be positive"), ""));
+            return Err(refuse(
+                name,
+                format!("{name} = {value} must be positive"),
+                "",
+            ));
         }
     }
     let mut before = inner;
     for (radius, _) in layers {
         if !(*radius > before && radius.is_finite()) {
-            let message = format!("an outer radius of {radius} must be larger than the radius {before} inside it");
-            return Err(refuse("outer-radius", message, "radii ascend from the bore outwards"));
+            let message = format!(
+                "an outer radius of {radius} must be larger than the radius {before} inside it"
+            );
+            return Err(refuse(
+                "outer-radius",
+                message,
+                "radii ascend from the bore outwards",
+            ));
         }
         before = *radius;
     }
     if layers.is_empty() {
-        return Err(refuse("material", "a wall needs at least one layer".to_string(), ""));
+        return Err(refuse(
+            "material",
+            "a wall needs at least one layer".to_string(),
+            "",
+        ));
     }
     if before / inner > MOST_RATIO {
         let message = format!("outer-radius is {:.3e} times inner-radius", before / inner);
@@ -82,10 +112,16 @@ fn check(inner: f64, layers: &[(f64, Compressible)], drive: Drive, outer_pressur
 fn method(bound: &ErrorBound, residual: f64, nodes: usize, limit: &Limit) -> String {
     let limit = match limit {
         Limit::Maximum { inner_pressure, .. } => {
-            format!("maximum of the inner pressure {}", solve::rounded(*inner_pressure, 10))
+            format!(
+                "maximum of the inner pressure {}",
+                solve::rounded(*inner_pressure, 10)
+            )
         }
         Limit::Asymptote { inner_pressure } => {
-            format!("asymptote of the inner pressure {}", solve::rounded(*inner_pressure, 10))
+            format!(
+                "asymptote of the inner pressure {}",
+                solve::rounded(*inner_pressure, 10)
+            )
         }
         Limit::None { .. } | Limit::NotFound { .. } => limit.pressure().err().unwrap_or_default(),
     };
@@ -103,5 +139,7 @@ fn out_of_range() -> Refusal {
     refuse("", message, "choose other units or a smaller load")
 }
 
+#[cfg(test)]
+mod limit_tests;
 #[cfg(test)]
 mod tests;

@@ -10,10 +10,11 @@ use super::mesh::{Mesh, Shape};
 use super::path::{Path, Station};
 use super::refine::transfer;
 use super::solve::{CHECK_NODES, Solved, shape_volume};
+use super::states::{Local, NodeState};
 use super::system::{newton, states, system};
 use crate::exact::solution::ErrorBound;
 use crate::numerics::{Collocation, CompensatedSum};
-use nalgebra::DVector;
+use nalgebra::DMatrix;
 use std::f64::consts::PI;
 use std::sync::Arc;
 
@@ -110,7 +111,9 @@ fn axial_force(path: &Path, all: &Integrals) -> f64 {
             let caps = (all.extra(INNER) - all.extra(OUTER)) * all.extra(BORE).exp();
             per_length * (caps - all.extra(OUTER) * all.measure().value)
         }
-        (_, Axial::DeadCaps) => square * all.load(true).value - PI * wall.outer * wall.outer * path.outer,
+        (_, Axial::DeadCaps) => {
+            square * all.load(true).value - PI * wall.outer * wall.outer * path.outer
+        }
     }
 }
 
@@ -129,7 +132,9 @@ pub(super) fn judge(path: &Path, solved: &Solved) -> Option<Judged> {
     let fields = Fields::new(station)?;
     let numbers = Numbers::of(path, station)?;
     let check = checked(path, solved);
-    let other = check.as_ref().and_then(|c| Some((Fields::new(c)?, Numbers::of(path, c)?)));
+    let other = check
+        .as_ref()
+        .and_then(|c| Some((Fields::new(c)?, Numbers::of(path, c)?)));
     let force_size = force_size(station)?.max(numbers.axial_force.abs());
     let compared = match &other {
         Some((tables, totals)) => {
@@ -168,7 +173,11 @@ fn force_size(station: &Station) -> Option<f64> {
         return Some(1.0);
     }
     let all_states = states(&station.mesh, &station.y)?;
-    Some(Integrals::new(&station.mesh, &station.y, &all_states).force().size)
+    Some(
+        Integrals::new(&station.mesh, &station.y, &all_states)
+            .force()
+            .size,
+    )
 }
 
 /// Differences of displacement and stress between two tables, relative to the largest of the wall.
@@ -180,7 +189,9 @@ fn compared(mesh: &Mesh, ours: &Fields, other: &Fields) -> Option<[f64; 2]> {
             let radius = mesh.wall.inner * x.exp();
             let [a, b] = [ours, other].map(|f| f.at_radius(radius, Some(panel.layer)));
             let (a, b) = (a.ok()?, b.ok()?);
-            displacement.0 = displacement.0.max(radius * (a.strains[1] - b.strains[1]).abs());
+            displacement.0 = displacement
+                .0
+                .max(radius * (a.strains[1] - b.strains[1]).abs());
             displacement.1 = displacement.1.max(radius * a.strains[1].abs());
             for (s, t) in a.stress.to_array().iter().zip(b.stress.to_array()) {
                 stress.0 = stress.0.max((s - t).abs());
@@ -192,7 +203,54 @@ fn compared(mesh: &Mesh, ours: &Fields, other: &Fields) -> Option<[f64; 2]> {
     Some([ratio(displacement), ratio(stress)])
 }
 
-/// Round-off of displacement, stress and totals, and the largest residual.
+/// How positions and stresses at the nodes follow the unknowns: a row a node.
+struct Sensitivity {
+    /// ln q: twice (three times) ln lt but for e.
+    stretch: DMatrix<f64>,
+    /// srr, stt, szz.
+    stresses: [DMatrix<f64>; 3],
+}
+
+impl Sensitivity {
+    fn of(all: &Integrals, g: f64) -> Self {
+        let mesh = all.mesh;
+        let (n, shape) = (mesh.len(), mesh.wall.shape);
+        let kap = DMatrix::from_fn(n, n + EXTRA, |i, j| match j.checked_sub(n) {
+            None => mesh.forward[(i, j)] * all.growth[j],
+            Some(BORE) => g.exp(),
+            Some(_) => 0.0,
+        });
+        let local = |pick: &dyn Fn(&NodeState) -> Local| {
+            let list: Vec<Local> = all.states.iter().map(pick).collect();
+            DMatrix::from_fn(n, n + EXTRA, |i, j| {
+                let own = match j.checked_sub(n) {
+                    None if i == j => list[i].by_lam,
+                    Some(STRETCH) => list[i].by_e,
+                    _ => 0.0,
+                };
+                list[i].by_kap * kap[(i, j)] + own
+            })
+        };
+        let mut radial = -(&mesh.backward * local(&|s| s.push));
+        radial.column_mut(n + OUTER).add_scalar_mut(-1.0);
+        let hoop = &radial + local(&|s| s.hoop);
+        let third = match shape {
+            Shape::Tube => &radial + local(&|s| s.axial),
+            Shape::Sphere => hoop.clone(),
+        };
+        let stretch = DMatrix::from_fn(n, n + EXTRA, |i, j| {
+            kap[(i, j)] * all.states[i].stretch_by_kap
+        });
+        Self {
+            stretch,
+            stresses: [radial, hoop, third],
+        }
+    }
+}
+
+/// Round-off of displacement, stress and totals, and the largest residual: that of each equation, carried through the
+/// inverse of its derivatives to what is printed. What is correlated stays so: at a large bore g and Lam are uncertain
+/// together, and positions much less than either.
 fn round_off(
     path: &Path,
     solved: &Solved,
@@ -205,56 +263,61 @@ fn round_off(
     let (mesh, wall) = (&station.mesh, &station.mesh.wall);
     let n = mesh.len();
     let at = system(mesh, &path.conditions(solved.control), &station.y)?;
-    let inverse = at.jacobian.clone().try_inverse()?.abs();
-    let left = DVector::from_fn(n + EXTRA, |i, _| EACH * at.size[i]);
-    let error = &inverse * left;
+    let inverse = at.jacobian.clone().try_inverse()?;
+    let left = &at.size * EACH;
+    let error = inverse.abs() * &left;
     let (g, e) = (error[n + BORE], error[n + STRETCH]);
     let all = Integrals::new(mesh, &station.y, &at.states);
-    let growth = error.rows(0, n).component_mul(&all.growth);
-    let kap = (&mesh.forward.abs() * growth).add_scalar(station.y[n + BORE].exp() * g);
-    let local = |x: &super::states::Local, i: usize| {
-        x.by_kap.abs() * kap[i] + x.by_lam.abs() * error[i] + x.by_e.abs() * e
-    };
-    let push = DVector::from_fn(n, |i, _| local(&at.states[i].push, i));
-    let behind = &mesh.backward.abs() * push;
+    let by = Sensitivity::of(&all, station.g);
+    let carried = |rows: &DMatrix<f64>| (rows * &inverse).abs() * &left;
+    let stretch = carried(&by.stretch);
+    let stresses = by.stresses.each_ref().map(carried);
     let (mut displacement, mut stress) = (0.0_f64, 0.0_f64);
-    let (mut most, mut longest) = (0.0_f64, numbers.inner_displacement.abs().max(numbers.outer_displacement.abs()));
+    let (mut most, mut longest) = (
+        0.0_f64,
+        numbers
+            .inner_displacement
+            .abs()
+            .max(numbers.outer_displacement.abs()),
+    );
     for (i, (node, s)) in mesh.nodes.iter().zip(&at.states).enumerate() {
         let radius = wall.inner * node.x.exp();
         let here = fields.at_radius(radius, Some(node.layer)).ok()?;
         longest = longest.max(radius * here.strains[1].abs());
-        let log_q = kap[i] / node.s * s.volume / (1.0 + here.strains[0]) / (1.0 + here.strains[1]);
-        displacement = displacement.max(radius * (1.0 + here.strains[1]) * (log_q + e) / wall.shape.power());
-        let law = EACH * s.loss * (s.hoop.value.abs() + s.axial.value.abs());
-        let differences = local(&s.hoop, i).max(local(&s.axial, i)) + law;
-        stress = stress.max(behind[i] + error[n + OUTER] + differences);
-        most = here.stress.to_array().iter().fold(most, |m, c| m.max(c.abs()));
+        displacement = displacement
+            .max(radius * (1.0 + here.strains[1]) * (stretch[i] + e) / wall.shape.power());
+        let carried = stresses.iter().fold(0.0_f64, |m, v| m.max(v[i]));
+        stress = stress.max(carried + EACH * s.size());
+        most = here
+            .stress
+            .to_array()
+            .iter()
+            .fold(most, |m, c| m.max(c.abs()));
     }
     let ratio = |a: f64, b: f64| if a == 0.0 { 0.0 } else { a / b };
     // a first-order change of the energy is the work of the loads
     let work = numbers.inner_pressure.abs() * numbers.enclosed_volume * g
-        + numbers.outer_pressure.abs() * shape_volume(wall.shape, numbers.outer_radius) * numbers.axial_stretch * g
+        + numbers.outer_pressure.abs()
+            * shape_volume(wall.shape, numbers.outer_radius)
+            * numbers.axial_stretch
+            * g
         + numbers.axial_force.abs() * numbers.axial_stretch * e;
     let force = match path.axial {
         Axial::Fixed(_) if wall.shape == Shape::Tube => {
             let row = all.force();
-            EACH * row.size + row.by.abs().dot(&error)
+            EACH * row.size + (row.by.transpose() * &inverse).abs().transpose().dot(&left)
         }
         Axial::Closed | Axial::DeadCaps => {
-            numbers.axial_force.abs() * (g + e) + shape_volume(wall.shape, numbers.inner_radius) * error[n + INNER]
+            numbers.axial_force.abs() * (g + e)
+                + shape_volume(wall.shape, numbers.inner_radius) * error[n + INNER]
         }
         Axial::Fixed(_) | Axial::Force(_) => 0.0,
     };
     let own = 8.0 * f64::EPSILON;
-    let totals = (g + e).max(ratio(work, numbers.strain_energy)).max(ratio(force, force_size));
+    let totals = (g + e)
+        .max(ratio(work, numbers.strain_energy))
+        .max(ratio(force, force_size));
     let largest = at.residual.iter().fold(0.0_f64, |m, r| m.max(r.abs()));
-    Some((
-        [
-            own + ratio(displacement, longest),
-            own + ratio(stress, most),
-            own + totals,
-        ],
-        largest,
-    ))
+    let bounds = [ratio(displacement, longest), ratio(stress, most), totals].map(|b| own + b);
+    Some((bounds, largest))
 }
-

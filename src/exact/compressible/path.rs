@@ -120,7 +120,12 @@ impl Path {
     /// The state at `g` from a neighbouring one, and how many steps it took.
     pub fn at(&self, from: &Station, g: f64, tolerance: f64) -> Option<(Station, usize)> {
         let guess = &from.y + &from.tangent * (g - from.g);
-        let found = newton(&from.mesh, &self.conditions(Control::Swell(g)), guess, tolerance)?;
+        let found = newton(
+            &from.mesh,
+            &self.conditions(Control::Swell(g)),
+            guess,
+            tolerance,
+        )?;
         let steps = found.steps;
         Some((self.station(&from.mesh, found)?, steps))
     }
@@ -153,7 +158,13 @@ impl Path {
         let g = y[mesh.len() + BORE];
         newton(&mesh, &self.conditions(Control::Swell(g)), y, CLOSE)
             .and_then(|found| self.station(&mesh, found))
-            .ok_or_else(|| refuse("", "the wall cannot be solved at its own outer load".to_string(), ""))
+            .ok_or_else(|| {
+                refuse(
+                    "",
+                    "the wall cannot be solved at its own outer load".to_string(),
+                    "",
+                )
+            })
     }
 
     /// The station on a mesh that resolves it as well as the path needs.

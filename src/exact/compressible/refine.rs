@@ -2,7 +2,7 @@
 
 use super::integrals::{BORE, EXTRA, STRETCH};
 use super::mesh::{Mesh, Panel};
-use super::states::{NodeState, Place};
+use super::states::{Bore, NodeState, Place};
 use super::system::states;
 use crate::materials::Compressible;
 use crate::numerics::find_root;
@@ -36,7 +36,11 @@ pub(super) fn coarse_panels(mesh: &Mesh, y: &DVector<f64>, tail: f64) -> (Vec<us
     if largest == 0.0 {
         return (Vec::new(), 0.0);
     }
-    let share = |p: usize| all.iter().fold(0.0_f64, |m, values| m.max(mesh.tail(values, p))) / largest;
+    let share = |p: usize| {
+        all.iter()
+            .fold(0.0_f64, |m, values| m.max(mesh.tail(values, p)))
+            / largest
+    };
     let shares: Vec<f64> = (0..mesh.panels.len()).map(share).collect();
     let coarse = |p: &usize| shares[*p] > tail * (1.0 + loss);
     let worst = shares.iter().fold(0.0_f64, |m, s| m.max(*s));
@@ -84,7 +88,11 @@ pub(super) fn kinks(mesh: &Mesh, y: &DVector<f64>) -> Vec<(usize, f64)> {
         let count = law.kinks(y[mesh.len() + STRETCH]).len();
         let first = found.len();
         for which in 0..count {
-            found.extend(crossings(mesh, y, layer, which).into_iter().map(|x| (layer, x)));
+            found.extend(
+                crossings(mesh, y, layer, which)
+                    .into_iter()
+                    .map(|x| (layer, x)),
+            );
         }
         found[first..].sort_by(|a, b| a.1.total_cmp(&b.1));
     }
@@ -102,7 +110,11 @@ fn crossings(mesh: &Mesh, y: &DVector<f64>, layer: usize, which: usize) -> Vec<f
     let law = &wall.layers[layer].law;
     let mut places = Vec::new();
     let mut before: Option<(f64, f64)> = None;
-    let of_layer = mesh.panels.iter().enumerate().filter(|(_, p)| p.layer == layer);
+    let of_layer = mesh
+        .panels
+        .iter()
+        .enumerate()
+        .filter(|(_, p)| p.layer == layer);
     for (p, panel) in of_layer {
         let above = |x: f64| {
             let t = panel.local(x);
@@ -111,7 +123,7 @@ fn crossings(mesh: &Mesh, y: &DVector<f64>, layer: usize, which: usize) -> Vec<f
                 s: 1.0 + swell,
                 swell,
                 grown: mesh.rule.value(mesh.part(&grown, p), t),
-                g: y[mesh.len() + BORE],
+                bore: Bore::of(y[mesh.len() + BORE]),
                 e: y[mesh.len() + STRETCH],
                 lam: mesh.rule.value(mesh.part(lam, p), t),
             };
@@ -127,12 +139,20 @@ fn crossings(mesh: &Mesh, y: &DVector<f64>, layer: usize, which: usize) -> Vec<f
         let width = panel.to - panel.from;
         let steps = 24;
         for i in 0..=steps {
-            let x = if i == steps { panel.to } else { panel.from + width * f64::from(i) / f64::from(steps) };
+            let x = if i == steps {
+                panel.to
+            } else {
+                panel.from + width * f64::from(i) / f64::from(steps)
+            };
             let value = above(x);
             match before {
                 // both sides of a panel's end: the kink is there
-                Some((b, v)) if b == x && v * value <= 0.0 && (v != 0.0 || value != 0.0) => places.push(x),
-                Some((b, v)) if b < x && v * value < 0.0 => places.extend(find_root(b, x, above).ok()),
+                Some((b, v)) if b == x && v * value <= 0.0 && (v != 0.0 || value != 0.0) => {
+                    places.push(x)
+                }
+                Some((b, v)) if b < x && v * value < 0.0 => {
+                    places.extend(find_root(b, x, above).ok())
+                }
                 _ => {}
             }
             before = Some((x, value));

@@ -85,17 +85,26 @@ impl Limit {
                 format!("stay below {}", rounded(*top, 9)),
             ),
             Self::None { .. } | Self::NotFound { .. } => (
-                format!("what could be followed; {}", self.pressure().err().unwrap_or_default()),
+                format!(
+                    "what could be followed; {}",
+                    self.pressure().err().unwrap_or_default()
+                ),
                 "reduce the pressure".to_string(),
             ),
         };
-        refuse("inner-pressure", format!("inner-pressure = {given} is beyond {reason}"), hint)
+        refuse(
+            "inner-pressure",
+            format!("inner-pressure = {given} is beyond {reason}"),
+            hint,
+        )
     }
 }
 
 /// `x` to a number of significant digits, for messages.
 pub(super) fn rounded(x: f64, digits: usize) -> f64 {
-    format!("{x:.*e}", digits.saturating_sub(1)).parse().unwrap_or(x)
+    format!("{x:.*e}", digits.saturating_sub(1))
+        .parse()
+        .unwrap_or(x)
 }
 
 /// The solved state.
@@ -253,7 +262,13 @@ fn maximum(path: &Path, before: &Station, after: &Station) -> Option<Station> {
 }
 
 /// The state at an inner load, near enough for Newton's method.
-fn at_load(path: &Path, start: &Station, outward: &[Station], load: f64, limit: &Limit) -> Result<Station, Refusal> {
+fn at_load(
+    path: &Path,
+    start: &Station,
+    outward: &[Station],
+    load: f64,
+    limit: &Limit,
+) -> Result<Station, Refusal> {
     if load == start.load {
         return Ok(start.clone());
     }
@@ -292,7 +307,13 @@ fn between(path: &Path, low: &Station, high: &Station, load: f64) -> Option<Stat
 }
 
 /// Newton's method on the load in g, kept inside a bracket on which the load is monotone.
-fn searched(path: &Path, mut here: Station, (mut low, mut high): (f64, f64), load: f64, close: f64) -> Option<Station> {
+fn searched(
+    path: &Path,
+    mut here: Station,
+    (mut low, mut high): (f64, f64),
+    load: f64,
+    close: f64,
+) -> Option<Station> {
     let rising = low < high;
     let mut last = f64::INFINITY;
     for _ in 0..60 {
@@ -336,7 +357,12 @@ fn at_bore(path: &Path, start: &Station, control: Control) -> Result<Station, Re
         let share = miss(low) / (miss(low) - miss(high));
         let (guess, _) = path.at(low, low.g + share * (high.g - low.g), 1e-9)?;
         let n = guess.mesh.len();
-        let found = newton(&guess.mesh, &path.conditions(control), guess.y.clone(), 1e-9)?;
+        let found = newton(
+            &guess.mesh,
+            &path.conditions(control),
+            guess.y.clone(),
+            1e-9,
+        )?;
         debug_assert!(found.y[n + BORE].is_finite());
         path.station(&guess.mesh, found)
     });

@@ -41,9 +41,17 @@ pub struct CompressibleSphere {
 impl CompressibleSphere {
     /// Solves the sphere; refuses loads beyond the limit of the first branch.
     pub fn solve(given: &CompressibleSphereProblem) -> Result<Self, Refusal> {
-        check(given.inner_radius, &given.layers, given.drive, given.outer_pressure)?;
+        check(
+            given.inner_radius,
+            &given.layers,
+            given.drive,
+            given.outer_pressure,
+        )?;
         if let Some((_, law)) = given.layers.iter().find(|(_, law)| !law.isotropic()) {
-            let message = format!("a sphere cannot be made of {}: its fibres would have to cover the sphere alike", law.name());
+            let message = format!(
+                "a sphere cannot be made of {}: its fibres would have to cover the sphere alike",
+                law.name()
+            );
             return Err(refuse("material", message, "use an isotropic law"));
         }
         let wall = Arc::new(Wall::new(Shape::Sphere, given.inner_radius, &given.layers));
@@ -57,7 +65,10 @@ impl CompressibleSphere {
         let solved = solve(&path, given.drive)?;
         let judged = judge(&path, &solved).ok_or_else(out_of_range)?;
         let totals = totals_of(&judged.numbers, &solved.limit);
-        if totals.iter().any(|t| matches!(t.value, Ok(v) if !v.is_finite())) {
+        if totals
+            .iter()
+            .any(|t| matches!(t.value, Ok(v) if !v.is_finite()))
+        {
             return Err(out_of_range());
         }
         Ok(Self {
@@ -67,7 +78,12 @@ impl CompressibleSphere {
             radii,
             bound: judged.bound,
             limit: solved.limit,
-            method: method(&judged.bound, judged.residual, solved.station.mesh.len(), &solved.limit),
+            method: method(
+                &judged.bound,
+                judged.residual,
+                solved.station.mesh.len(),
+                &solved.limit,
+            ),
         })
     }
 
@@ -145,11 +161,41 @@ fn totals_of(numbers: &Numbers, limit: &Limit) -> Vec<Total> {
         extent,
     };
     vec![
-        total("inner_radius", Ok(numbers.inner_radius), Dimension::Length, Extent::Whole),
-        total("outer_radius", Ok(numbers.outer_radius), Dimension::Length, Extent::Whole),
-        total("strain_energy", Ok(numbers.strain_energy), Dimension::Energy, Extent::SectionAndLength),
-        total("enclosed_volume", Ok(numbers.enclosed_volume), Dimension::Volume, Extent::SectionAndLength),
-        total("limit_pressure", limit.pressure(), Dimension::Stress, Extent::Whole),
-        total("volume_change", Ok(numbers.volume_change), Dimension::None, Extent::Whole),
+        total(
+            "inner_radius",
+            Ok(numbers.inner_radius),
+            Dimension::Length,
+            Extent::Whole,
+        ),
+        total(
+            "outer_radius",
+            Ok(numbers.outer_radius),
+            Dimension::Length,
+            Extent::Whole,
+        ),
+        total(
+            "strain_energy",
+            Ok(numbers.strain_energy),
+            Dimension::Energy,
+            Extent::SectionAndLength,
+        ),
+        total(
+            "enclosed_volume",
+            Ok(numbers.enclosed_volume),
+            Dimension::Volume,
+            Extent::SectionAndLength,
+        ),
+        total(
+            "limit_pressure",
+            limit.pressure(),
+            Dimension::Stress,
+            Extent::Whole,
+        ),
+        total(
+            "volume_change",
+            Ok(numbers.volume_change),
+            Dimension::None,
+            Extent::Whole,
+        ),
     ]
 }

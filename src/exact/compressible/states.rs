@@ -19,6 +19,22 @@ pub(super) struct Local {
     pub by_e: f64,
 }
 
+/// k of the header, and 1 + k: both from g, so that neither is a difference.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Bore {
+    pub k: f64,
+    pub square: f64,
+}
+
+impl Bore {
+    pub fn of(g: f64) -> Self {
+        Self {
+            k: g.exp_m1(),
+            square: g.exp(),
+        }
+    }
+}
+
 /// Where a node is: reference place and unknowns.
 #[derive(Debug, Clone, Copy)]
 pub(super) struct Place {
@@ -27,7 +43,7 @@ pub(super) struct Place {
     pub swell: f64,
     /// m of the header.
     pub grown: f64,
-    pub g: f64,
+    pub bore: Bore,
     pub e: f64,
     pub lam: f64,
 }
@@ -57,6 +73,8 @@ pub(super) struct NodeState {
     /// d srr/dX.
     pub push: Local,
     pub energy: f64,
+    /// d ln q/dkap.
+    pub stretch_by_kap: f64,
     /// Factor by which round-off of the strain is magnified in the stress.
     pub loss: f64,
 }
@@ -64,11 +82,11 @@ pub(super) struct NodeState {
 impl Place {
     /// q, by the form that does not cancel: near the closing of the bore kap is close to -s.
     fn q(&self) -> (f64, f64) {
-        let share = (self.g.exp_m1() + self.grown) / self.s;
+        let share = (self.bore.k + self.grown) / self.s;
         if share > -0.5 {
             (1.0 + share, share.ln_1p())
         } else {
-            let q = (self.swell + self.grown + self.g.exp()) / self.s;
+            let q = (self.swell + self.grown + self.bore.square) / self.s;
             (q, q.ln())
         }
     }
@@ -126,6 +144,7 @@ impl Place {
             axial: chain(found.axial),
             push,
             energy: found.energy.value,
+            stretch_by_kap: d_by_kap,
             loss: loss(law, motion.d, motion.e - motion.log_volume / 3.0),
         };
         state.is_finite().then_some(state)
@@ -142,8 +161,16 @@ fn loss(law: &Compressible, d: f64, e: f64) -> f64 {
 
 impl NodeState {
     fn is_finite(&self) -> bool {
-        let numbers = |x: &Local| x.value.is_finite() && x.by_kap.is_finite() && x.by_lam.is_finite() && x.by_e.is_finite();
-        [self.radial, self.hoop, self.axial, self.push].iter().all(numbers) && self.volume.is_finite()
+        let numbers = |x: &Local| {
+            x.value.is_finite()
+                && x.by_kap.is_finite()
+                && x.by_lam.is_finite()
+                && x.by_e.is_finite()
+        };
+        [self.radial, self.hoop, self.axial, self.push]
+            .iter()
+            .all(numbers)
+            && self.volume.is_finite()
     }
 
     /// What round-off of a stress is measured against.

@@ -11,7 +11,7 @@
 
 use super::integrals::{BORE, Conditions, EXTRA, INNER, Integrals, OUTER, STRETCH};
 use super::mesh::Mesh;
-use super::states::{NodeState, Place};
+use super::states::{Bore, NodeState, Place};
 use nalgebra::{DMatrix, DVector, Dyn, LU};
 
 /// Residuals, derivatives and node states at given unknowns.
@@ -32,15 +32,18 @@ pub(super) fn states(mesh: &Mesh, y: &DVector<f64>) -> Option<Vec<NodeState>> {
         shape.power() * node.s * (y[i] / modulus).exp_m1()
     });
     let grown = &mesh.forward * DVector::from_iterator(n, growth);
+    let bore = Bore::of(y[n + BORE]);
     let place = |i: usize| Place {
         s: mesh.nodes[i].s,
         swell: mesh.nodes[i].swell,
         grown: grown[i],
-        g: y[n + BORE],
+        bore,
         e: y[n + STRETCH],
         lam: y[i],
     };
-    (0..n).map(|i| place(i).state(shape, mesh.law(&mesh.nodes[i]))).collect()
+    (0..n)
+        .map(|i| place(i).state(shape, mesh.law(&mesh.nodes[i])))
+        .collect()
 }
 
 /// All equations at `y`; `None` where a state is not finite.
@@ -61,7 +64,10 @@ pub(super) fn system(mesh: &Mesh, given: &Conditions, y: &DVector<f64>) -> Optio
         balance.size += y[n + INNER].abs() + y[n + OUTER].abs();
         balance.by[n + INNER] -= 1.0;
         balance.by[n + OUTER] += 1.0;
-        let outer = (all.outer_load(given.dead).less(given.outer), mesh.wall.modulus());
+        let outer = (
+            all.outer_load(given.dead).less(given.outer),
+            mesh.wall.modulus(),
+        );
         let rows = [
             (balance, mesh.wall.pressure_scale()),
             all.axial(given),
@@ -83,7 +89,8 @@ fn node_rows(all: &Integrals, out: &mut System) {
     let mesh = all.mesh;
     let n = mesh.len();
     let scale = 1.0 / mesh.wall.modulus();
-    let list = |pick: &dyn Fn(&NodeState) -> f64| DVector::from_iterator(n, all.states.iter().map(pick));
+    let list =
+        |pick: &dyn Fn(&NodeState) -> f64| DVector::from_iterator(n, all.states.iter().map(pick));
     let by_kap = list(&|s| s.push.by_kap);
     let outer = all.extra(OUTER);
     let behind = &mesh.backward * list(&|s| s.push.value);
@@ -124,7 +131,9 @@ pub(super) struct Found {
 fn relative(mesh: &Mesh, step: &DVector<f64>, y: &DVector<f64>) -> f64 {
     let n = mesh.len();
     let (modulus, thin) = (mesh.wall.modulus(), mesh.wall.pressure_scale());
-    let largest = |v: &DVector<f64>, places: std::ops::Range<usize>| places.fold(0.0_f64, |m, i| m.max(v[i].abs()));
+    let largest = |v: &DVector<f64>, places: std::ops::Range<usize>| {
+        places.fold(0.0_f64, |m, i| m.max(v[i].abs()))
+    };
     let [nodes, strains, loads] = [0..n, n + BORE..n + INNER, n + INNER..n + EXTRA];
     let load = largest(y, loads.clone());
     let strain = largest(y, strains.clone()).max(load / modulus);
@@ -137,7 +146,12 @@ fn relative(mesh: &Mesh, step: &DVector<f64>, y: &DVector<f64>) -> f64 {
 
 /// Newton's method from `y`, full steps, until a step is below `tolerance` of the unknowns, or, with a tolerance of zero,
 /// until steps stop shrinking. `None` when it does not settle in a few steps or leaves the range of the law.
-pub(super) fn newton(mesh: &Mesh, given: &Conditions, mut y: DVector<f64>, tolerance: f64) -> Option<Found> {
+pub(super) fn newton(
+    mesh: &Mesh,
+    given: &Conditions,
+    mut y: DVector<f64>,
+    tolerance: f64,
+) -> Option<Found> {
     const MOST_STEPS: usize = 9;
     let n = mesh.len();
     let mut last = f64::INFINITY;
@@ -145,7 +159,9 @@ pub(super) fn newton(mesh: &Mesh, given: &Conditions, mut y: DVector<f64>, toler
         let system = system(mesh, given, &y)?;
         let lu = system.jacobian.clone().lu();
         let step = lu.solve(&system.residual)?;
-        if !step.iter().all(|v| v.is_finite()) || step[n + BORE].abs() + step[n + STRETCH].abs() > 1.0 {
+        if !step.iter().all(|v| v.is_finite())
+            || step[n + BORE].abs() + step[n + STRETCH].abs() > 1.0
+        {
             return None;
         }
         let next = &y - &step;
@@ -155,7 +171,12 @@ pub(super) fn newton(mesh: &Mesh, given: &Conditions, mut y: DVector<f64>, toler
             y = next;
         }
         if size <= tolerance || stalled {
-            return Some(Found { y, system, lu, steps });
+            return Some(Found {
+                y,
+                system,
+                lu,
+                steps,
+            });
         }
         last = size;
     }

@@ -3,14 +3,12 @@
 use super::*;
 use crate::exact::solution::{ExactSolution, Total};
 use crate::exact::{Ends, LameTube, Parameters, PressurisedTube};
-use crate::materials::{
-    CompressibleNeoHookean, Differences, Formula, LinearElastic, Material, MooneyRivlin, NeoHookean, Number, Parameter,
-};
+use crate::materials::{CompressibleNeoHookean, LinearElastic, Material, MooneyRivlin, NeoHookean};
 use crate::mechanics::Point;
 use proptest::prelude::*;
 use std::f64::consts::PI;
 
-fn split(law: impl IncompressibleLaw, form: VolumetricForm, bulk: f64) -> Compressible {
+pub(super) fn split(law: impl IncompressibleLaw, form: VolumetricForm, bulk: f64) -> Compressible {
     let volumetric = Volumetric { form, bulk };
     Compressible::Split {
         law: Arc::new(law),
@@ -18,20 +16,25 @@ fn split(law: impl IncompressibleLaw, form: VolumetricForm, bulk: f64) -> Compre
     }
 }
 
-fn soft(bulk: f64) -> Compressible {
+pub(super) fn soft(bulk: f64) -> Compressible {
     split(NeoHookean { mu: 1.0 }, VolumetricForm::Quadratic, bulk)
 }
 
-fn mooney(bulk: f64) -> Compressible {
+pub(super) fn mooney(bulk: f64) -> Compressible {
     let law = MooneyRivlin { c10: 0.4, c01: 0.1 };
     split(law, VolumetricForm::QuadraticLog, bulk)
 }
 
-fn coupled(lambda: f64) -> Compressible {
+pub(super) fn coupled(lambda: f64) -> Compressible {
     Compressible::Coupled(CompressibleNeoHookean { mu: 1.0, lambda })
 }
 
-fn tube(radii: (f64, f64), ends: Ends, law: Compressible, p: f64) -> CompressibleTubeProblem {
+pub(super) fn tube(
+    radii: (f64, f64),
+    ends: Ends,
+    law: Compressible,
+    p: f64,
+) -> CompressibleTubeProblem {
     CompressibleTubeProblem {
         inner_radius: radii.0,
         layers: vec![(radii.1, law)],
@@ -42,7 +45,11 @@ fn tube(radii: (f64, f64), ends: Ends, law: Compressible, p: f64) -> Compressibl
     }
 }
 
-fn sphere(radii: (f64, f64), law: Compressible, drive: Drive) -> CompressibleSphereProblem {
+pub(super) fn sphere(
+    radii: (f64, f64),
+    law: Compressible,
+    drive: Drive,
+) -> CompressibleSphereProblem {
     CompressibleSphereProblem {
         inner_radius: radii.0,
         layers: vec![(radii.1, law)],
@@ -51,22 +58,22 @@ fn sphere(radii: (f64, f64), law: Compressible, drive: Drive) -> CompressibleSph
     }
 }
 
-fn solved(given: &CompressibleTubeProblem) -> CompressibleTube {
+pub(super) fn solved(given: &CompressibleTubeProblem) -> CompressibleTube {
     CompressibleTube::solve(given).unwrap()
 }
 
-fn of(totals: &[Total], name: &str) -> f64 {
+pub(super) fn of(totals: &[Total], name: &str) -> f64 {
     let found = totals.iter().find(|t| t.name == name).unwrap();
     found.value.clone().unwrap()
 }
 
 #[track_caller]
-fn near(got: f64, expected: f64, relative: f64) {
+pub(super) fn near(got: f64, expected: f64, relative: f64) {
     let error = (got / expected - 1.0).abs();
     assert!(error < relative, "{got} is not {expected}: {error:e}");
 }
 
-const FREE: Ends = Ends::GeneralizedPlaneStrain { axial_force: 0.0 };
+pub(super) const FREE: Ends = Ends::GeneralizedPlaneStrain { axial_force: 0.0 };
 const PULLED: Ends = Ends::GeneralizedPlaneStrain { axial_force: 0.7 };
 
 // The bias of a penalised tube, and its first-order constant. Red when any factor of J is lost.
@@ -78,7 +85,12 @@ fn the_bore_of_a_penalised_tube_differs_by_a_constant_over_the_bulk_modulus() {
         assert!(tube.bound().displacement < 3e-14 && tube.bound().stress < 3e-14);
         (of(tube.totals(), "inner_radius") - 1.5) / 0.5
     };
-    for (bulk, known) in [(10.0, 7.86e-2), (1e2, 7.87e-3), (1e3, 7.88e-4), (1e4, 7.88e-5)] {
+    for (bulk, known) in [
+        (10.0, 7.86e-2),
+        (1e2, 7.87e-3),
+        (1e3, 7.88e-4),
+        (1e4, 7.88e-5),
+    ] {
         near(bias(soft(bulk)), known, 1e-3);
     }
     let log = |bulk| split(NeoHookean { mu: 1.0 }, VolumetricForm::LogSquared, bulk);
@@ -95,7 +107,13 @@ fn the_bore_of_a_penalised_tube_differs_by_a_constant_over_the_bulk_modulus() {
 #[test]
 fn an_infinite_bulk_modulus_is_the_incompressible_tube() {
     for ratio in [1.0001, 1.5, 10.0] {
-        for ends in [Ends::PlaneStrain, Ends::Closed, FREE, PULLED, Ends::FixedStretch { axial_stretch: 1.2 }] {
+        for ends in [
+            Ends::PlaneStrain,
+            Ends::Closed,
+            FREE,
+            PULLED,
+            Ends::FixedStretch { axial_stretch: 1.2 },
+        ] {
             let law = MooneyRivlin { c10: 0.4, c01: 0.1 };
             let (p, q) = (0.3 * f64::ln(ratio), 0.01);
             let ends = match ends {
@@ -118,20 +136,38 @@ fn an_infinite_bulk_modulus_is_the_incompressible_tube() {
                 let mut given = tube((1.0, ratio), ends, law, p + q);
                 given.outer_pressure = q;
                 let tube = solved(&given);
-                for name in ["inner_radius", "outer_radius", "axial_stretch", "strain_energy", "enclosed_volume"] {
+                for name in [
+                    "inner_radius",
+                    "outer_radius",
+                    "axial_stretch",
+                    "strain_energy",
+                    "enclosed_volume",
+                ] {
                     near(of(tube.totals(), name), of(known.totals(), name), 3e-13);
                 }
-                let (force, expected) = (of(tube.totals(), "axial_force"), of(known.totals(), "axial_force"));
-                assert!((force - expected).abs() < 1e-12 * (ratio * ratio - 1.0), "{ratio} {ends:?} {force} {expected}");
+                let (force, expected) = (
+                    of(tube.totals(), "axial_force"),
+                    of(known.totals(), "axial_force"),
+                );
+                assert!(
+                    (force - expected).abs() < 1e-12 * (ratio * ratio - 1.0),
+                    "{ratio} {ends:?} {force} {expected}"
+                );
                 for share in [0.0, 0.3, 1.0] {
                     let radius = 1.0 + (ratio - 1.0) * share;
                     let point = Point::from_cylindrical(radius, 0.7, 0.4);
                     let (a, b) = (tube.at(point).unwrap(), known.at(point).unwrap());
-                    let size = b.stress.to_array().iter().fold(0.0_f64, |m, s| m.max(s.abs()));
+                    let size = b
+                        .stress
+                        .to_array()
+                        .iter()
+                        .fold(0.0_f64, |m, s| m.max(s.abs()));
                     for (s, t) in a.stress.to_array().iter().zip(b.stress.to_array()) {
                         assert!((s - t).abs() < 1e-12 * size, "{ratio} {ends:?} {s} {t}");
                     }
-                    assert!((a.displacement - b.displacement).amax() < 1e-12 * b.displacement.amax());
+                    assert!(
+                        (a.displacement - b.displacement).amax() < 1e-12 * b.displacement.amax()
+                    );
                     assert!((a.displacement_gradient - b.displacement_gradient).amax() < 1e-12);
                 }
             }
@@ -142,7 +178,11 @@ fn an_infinite_bulk_modulus_is_the_incompressible_tube() {
 // Lame at small load: the difference is of the second order. Red when a constant of the law is wrong.
 #[test]
 fn a_small_load_is_the_lame_tube() {
-    for (law, bulk) in [(soft(3.0), 3.0), (mooney(3.0), 3.0), (coupled(3.0), 3.0 + 1.0 / 1.5)] {
+    for (law, bulk) in [
+        (soft(3.0), 3.0),
+        (mooney(3.0), 3.0),
+        (coupled(3.0), 3.0 + 1.0 / 1.5),
+    ] {
         let nu = (3.0 * bulk - 2.0) / (6.0 * bulk + 2.0);
         let hooke = LinearElastic {
             e: 2.0 * (1.0 + nu),
@@ -189,7 +229,11 @@ fn tube_holds(ratio: f64, ends: Ends, law: &Compressible, share: f64) {
     // a fixed length does no work, and neither do caps whose pressure is the bore's
     near(slope, tube.inner_pressure(), 1e-9);
     let local = |r: f64| tube.at(Point::new(r, 0.0, 0.0)).unwrap();
-    let size = local(1.0).stress.to_array().iter().fold(0.0_f64, |m, s| m.max(s.abs()));
+    let size = local(1.0)
+        .stress
+        .to_array()
+        .iter()
+        .fold(0.0_f64, |m, s| m.max(s.abs()));
     assert!((local(1.0).stress.xx + tube.inner_pressure()).abs() < 1e-13 * size);
     assert!(local(ratio).stress.xx.abs() < 1e-13 * size);
     // d(srr r)/dR = stt dr/dR, srr and r as they are printed
@@ -198,14 +242,16 @@ fn tube_holds(ratio: f64, ends: Ends, law: &Compressible, share: f64) {
         let s = local(r);
         s.stress.xx * (r + s.displacement.x)
     };
-    let left = (8.0 * (carried(middle + h) - carried(middle - h)) - carried(middle + 2.0 * h) + carried(middle - 2.0 * h)) / (12.0 * h);
+    let left = (8.0 * (carried(middle + h) - carried(middle - h)) - carried(middle + 2.0 * h)
+        + carried(middle - 2.0 * h))
+        / (12.0 * h);
     let here = local(middle);
     let right = here.stress.yy * here.stretches[0];
-    assert!((left - right).abs() < 1e-9 * size / (ratio - 1.0).min(1.0), "{left} {right}");
+    assert!(
+        (left - right).abs() < 1e-9 * size / (ratio - 1.0).min(1.0),
+        "{left} {right}"
+    );
     near(here.volume_ratio, here.deformation().determinant(), 1e-14);
-    // the printed stress is the law's, from the printed deformation: 1/J dW/dl_i l_i by the state's own energy
-    let inside = tube.at(Point::new(0.9, 0.0, 0.0)).unwrap();
-    assert!(inside.stress.is_finite());
 }
 
 proptest! {
@@ -264,11 +310,18 @@ fn a_stiff_sphere_is_the_closed_form() {
 fn equal_layers_are_one_layer() {
     let whole = tube((1.0, 2.5), Ends::Closed, mooney(20.0), 0.3);
     let mut parts = whole.clone();
-    parts.layers = vec![(1.3, mooney(20.0)), (1.31, mooney(20.0)), (2.5, mooney(20.0))];
+    parts.layers = vec![
+        (1.3, mooney(20.0)),
+        (1.31, mooney(20.0)),
+        (2.5, mooney(20.0)),
+    ];
     let (one, three) = (solved(&whole), solved(&parts));
     for (a, b) in one.totals().iter().zip(three.totals()) {
         near(a.value.clone().unwrap(), b.value.clone().unwrap(), 1e-13);
     }
-    let (a, b) = (one.at(Point::new(1.3, 0.0, 0.0)).unwrap(), three.at(Point::new(1.3, 0.0, 0.0)).unwrap());
+    let (a, b) = (
+        one.at(Point::new(1.3, 0.0, 0.0)).unwrap(),
+        three.at(Point::new(1.3, 0.0, 0.0)).unwrap(),
+    );
     near(a.stress.yy, b.stress.yy, 1e-13);
 }

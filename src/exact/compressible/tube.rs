@@ -9,7 +9,9 @@ use super::solve::{Drive, Limit, solve};
 use super::{check, method, out_of_range};
 use crate::exact::Ends;
 use crate::exact::parameters::refuse;
-use crate::exact::solution::{Body, ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};
+use crate::exact::solution::{
+    Body, ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total,
+};
 use crate::exact::totals::TubeTotals;
 use crate::materials::Compressible;
 use crate::mechanics::{Dimension, Point, SymTensor};
@@ -56,7 +58,9 @@ pub struct CompressibleTube {
 fn axial_of(ends: Ends, load: Load) -> Result<Axial, Refusal> {
     match ends {
         Ends::PlaneStrain => Ok(Axial::Fixed(0.0)),
-        Ends::FixedStretch { axial_stretch } if axial_stretch > 0.0 && axial_stretch.is_finite() => {
+        Ends::FixedStretch { axial_stretch }
+            if axial_stretch > 0.0 && axial_stretch.is_finite() =>
+        {
             Ok(Axial::Fixed(axial_stretch.ln()))
         }
         Ends::FixedStretch { axial_stretch } => {
@@ -65,7 +69,9 @@ fn axial_of(ends: Ends, load: Load) -> Result<Axial, Refusal> {
         }
         Ends::Closed if load == Load::Dead => Ok(Axial::DeadCaps),
         Ends::Closed => Ok(Axial::Closed),
-        Ends::GeneralizedPlaneStrain { axial_force } if axial_force.is_finite() => Ok(Axial::Force(axial_force)),
+        Ends::GeneralizedPlaneStrain { axial_force } if axial_force.is_finite() => {
+            Ok(Axial::Force(axial_force))
+        }
         Ends::GeneralizedPlaneStrain { axial_force } => {
             let message = format!("axial-force = {axial_force} is not a finite number");
             Err(refuse("axial-force", message, ""))
@@ -81,7 +87,12 @@ fn axial_of(ends: Ends, load: Load) -> Result<Axial, Refusal> {
 impl CompressibleTube {
     /// Solves the tube; refuses loads beyond the limit of the first branch.
     pub fn solve(given: &CompressibleTubeProblem) -> Result<Self, Refusal> {
-        check(given.inner_radius, &given.layers, given.drive, given.outer_pressure)?;
+        check(
+            given.inner_radius,
+            &given.layers,
+            given.drive,
+            given.outer_pressure,
+        )?;
         let axial = axial_of(given.ends, given.load)?;
         let wall = Arc::new(Wall::new(Shape::Tube, given.inner_radius, &given.layers));
         let outer = wall.outer;
@@ -100,7 +111,10 @@ impl CompressibleTube {
             _ => {}
         }
         let totals = totals_of(&numbers, &solved.limit);
-        if totals.iter().any(|t| matches!(t.value, Ok(v) if !v.is_finite())) {
+        if totals
+            .iter()
+            .any(|t| matches!(t.value, Ok(v) if !v.is_finite()))
+        {
             return Err(out_of_range());
         }
         Ok(Self {
@@ -113,7 +127,12 @@ impl CompressibleTube {
             },
             bound: judged.bound,
             limit: solved.limit,
-            method: method(&judged.bound, judged.residual, solved.station.mesh.len(), &solved.limit),
+            method: method(
+                &judged.bound,
+                judged.residual,
+                solved.station.mesh.len(),
+                &solved.limit,
+            ),
         })
     }
 
@@ -140,7 +159,11 @@ impl CompressibleTube {
 
     fn state(&self, point: Point, layer: Option<usize>) -> Result<State, Refusal> {
         if !point.z.is_finite() {
-            return Err(refuse("", format!("Z = {} is not a finite number", point.z), ""));
+            return Err(refuse(
+                "",
+                format!("Z = {} is not a finite number", point.z),
+                "",
+            ));
         }
         let local = self.fields.at_radius(point.radius(), layer)?;
         let [radial, hoop, axial] = local.strains;
