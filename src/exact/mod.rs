@@ -9,6 +9,7 @@ pub mod given;
 pub mod known_value;
 pub mod parameters;
 
+pub mod compressible;
 pub mod lame_tube;
 pub mod pressurised_tube;
 pub mod published;
