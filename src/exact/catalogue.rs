@@ -6,7 +6,17 @@ use super::tube_entries;
 use crate::materials::{MaterialKind, catalogue as materials};
 
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
-const ENTRIES: &[Entry] = &[tube_entries::PRESSURISED_TUBE, tube_entries::LAME_TUBE];
+const ENTRIES: &[Entry] = &[
+    tube_entries::PRESSURISED_TUBE,
+    tube_entries::LAME_TUBE,
+    super::pressurised_sphere::ENTRY,
+    super::torsion_extension::ENTRY,
+    super::tube_shear::AZIMUTHAL_SHEAR,
+    super::tube_shear::AXIAL_SHEAR,
+    super::bending::BENT_BLOCK,
+    super::bending::STRAIGHTENED_SECTOR,
+    super::homogeneous::ENTRY,
+];
 
 /// One solution as a reader of the catalogue sees it.
 #[derive(Debug, Clone, Copy)]

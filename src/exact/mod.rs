@@ -8,21 +8,32 @@ pub mod ends;
 pub mod given;
 pub mod parameters;
 
+pub mod bending;
+pub mod homogeneous;
 pub mod lame_tube;
+pub mod pressurised_sphere;
 pub mod pressurised_tube;
+pub mod torsion_extension;
+pub mod tube_shear;
 
 pub mod catalogue;
 
+mod demands;
 mod totals;
 mod tube_entries;
 mod tube_words;
 
+pub use bending::{BentBlock, StraightenedSector};
 pub use body::{Body, Frame};
 pub use catalogue::{Entry, build, entries, find};
 pub use description::{Description, Line, Sketch};
 pub use ends::Ends;
 pub use given::{Form, Given, ParameterEntry, Value, VariantEntry};
+pub use homogeneous::Homogeneous;
 pub use lame_tube::LameTube;
 pub use parameters::Parameters;
+pub use pressurised_sphere::PressurisedSphere;
 pub use pressurised_tube::{Limit, PressurisedTube};
 pub use solution::{ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};
+pub use torsion_extension::TorsionExtension;
+pub use tube_shear::TubeShear;

@@ -23,6 +23,10 @@ pub enum Dimension {
     Energy,
     Area,
     Volume,
+    /// One over a length: an angle per length.
+    PerLength,
+    /// Force of the model: stress times length (per unit length) in two dimensions, stress times area in three.
+    ForcePerLength,
 }
 
 /// A unit: `value in base unit = value * numerator / denominator`; base units are m, Pa and rad.
@@ -159,6 +163,8 @@ impl UnitSystem {
             Dimension::Volume => length * length * length,
             Dimension::Force | Dimension::EnergyPerLength => stress * length * length,
             Dimension::Energy => stress * length * length * length,
+            Dimension::PerLength => 1.0 / length,
+            Dimension::ForcePerLength => stress * length,
         }
     }
 
@@ -189,6 +195,8 @@ impl UnitSystem {
             // joule per metre of length, which is a newton
             Dimension::EnergyPerLength => self.product(dimension, "J/m", 2),
             Dimension::Energy => self.product(dimension, "J", 3),
+            Dimension::PerLength => format!("1/{l}"),
+            Dimension::ForcePerLength => format!("{s} {l}"),
         }
     }
 }

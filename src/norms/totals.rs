@@ -24,6 +24,7 @@ impl Level<'_> {
         };
         let dimension = match exact.dimension {
             Dimension::EnergyPerLength if !planar => Dimension::Energy,
+            Dimension::ForcePerLength if !planar => Dimension::Force,
             other => other,
         };
         let unit = self.unit(dimension);
