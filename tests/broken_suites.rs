@@ -99,6 +99,61 @@ const BROKEN: &[(&str, &str, &str)] = &[
         "neo-Hookean needs mu (shear modulus)",
     ),
     (
+        "energy-unknown-name",
+        ":4:29: materials.soft.stated.energy",
+        "energy: unknown name \"k9\" at character 17, after \"mu/2*(I1 - 3) + \"; expected one of I1, I2, I4, l1, l2, l3, mu, k1, pi",
+    ),
+    (
+        "energy-open-parenthesis",
+        ":4:29: materials.soft.stated.energy",
+        "energy: the text ends at character 12, after \"0.2*(I1 - 3\"; expected an operator, or \")\" for the \"(\" at character 5",
+    ),
+    (
+        "energy-implied-product",
+        ":4:29: materials.soft.stated.energy",
+        "hint: multiplication is written `*`",
+    ),
+    (
+        "energy-not-zero-at-rest",
+        ":4:29: materials.soft.stated.energy",
+        "the energy of the unstrained material is 0.2, it must be zero",
+    ),
+    (
+        "energy-without-stiffness",
+        ":4:29: materials.soft.stated.energy",
+        "the shear modulus of the unstrained material is 0, it must be positive",
+    ),
+    (
+        "energy-not-symmetric",
+        ":4:29: materials.soft.stated.energy",
+        "an isotropic energy does not depend on the order of l1, l2, l3",
+    ),
+    (
+        "energy-fibres-without-angle",
+        ":4:29: materials.soft.stated.energy",
+        "I4 needs the angle of the fibres: beta is not among the constants",
+    ),
+    (
+        "energy-angle-in-degrees",
+        ":4:74: materials.soft.stated.constants.beta",
+        "beta = 40 is outside 0 <= beta <= pi/2 (90 deg)",
+    ),
+    (
+        "energy-unused-constant",
+        ":4:62: materials.soft.stated.constants.mu",
+        "the constant mu does not occur in the energy",
+    ),
+    (
+        "energy-is-a-list",
+        ":4:29: materials.soft.stated.energy",
+        "found a list",
+    ),
+    (
+        "energy-missing",
+        ":4:9: materials.soft.stated",
+        "stated needs energy",
+    ),
+    (
         "unknown-law",
         ":4:9: materials.soft.Neo-Hooke",
         "hint: did you mean `neo-Hookean`?",

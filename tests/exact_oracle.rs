@@ -140,7 +140,7 @@ fn compare(name: &str, states: &str, points: &str) -> (Worst, Worst, f64) {
         let energy = largest(&["W"]);
         let mut errors: Vec<(&'static str, f64)> = Vec::new();
         let small = name == "lame-tube";
-        let (a, area) = (given.inner_radius, tube.body().section_area());
+        let (a, area) = (given.inner_radius, tube.body().section_area().unwrap());
         let u_a = tube.at(Point::new(a, 0.0, 1.0)).unwrap().displacement;
         errors.push(("u_a", error(u_a.x, number(&row, "u_a"), displacement)));
         if small {

@@ -4,7 +4,11 @@
 
 use std::panic::{AssertUnwindSafe, catch_unwind};
 use std::time::{Duration, Instant};
-use truebore::run::{brief, plan, tables};
+use truebore::run::{
+    brief, plan,
+    point_table::{self, Wanted},
+    tables,
+};
 
 /// A small generator of our own: the same numbers on every machine.
 struct Dice(u64);
@@ -303,7 +307,7 @@ fn a_random_table_of_points_is_answered_or_refused() {
             bytes[at] = dice.roll(256) as u8;
         }
         survives(seed, &text, || {
-            match tables::at_points(exact.as_ref(), &bytes, "points.csv") {
+            match point_table::at_points(exact.as_ref(), Wanted::Fields, &bytes, "points.csv") {
                 Ok(table) => {
                     answered += 1;
                     assert!(table.outside_distance.is_finite());

@@ -219,3 +219,60 @@ fn every_published_value_is_reproduced_to_its_last_digit() {
         );
     }
 }
+
+/// A suite of one case with the problem of a row.
+fn suite_of(row: &truebore::exact::published::Row, length: &str, stress: &str) -> String {
+    format!(
+        "suite: row\nunits: {{ length: {length}, stress: {stress} }}\nmaterials: {}\ncases: [ {{ id: row, problem: {}, reference: published }} ]\n",
+        row.materials, row.problem
+    )
+}
+
+// Every published reference of a problem that has an exact solution is found by `reference: published` and lies within its
+// stated half width of that solution. Red when a row, a unit or the comparison of problems is wrong.
+#[test]
+fn published_references_belong_to_their_problem_and_agree_with_it() {
+    use truebore::exact::known_value::{Known, KnownQuantity};
+    let rows = truebore::exact::published::rows();
+    let with_problem = rows.iter().filter(|row| row.solution().is_some());
+    let mut seen = 0;
+    for row in with_problem {
+        let text = suite_of(row, "mm", "MPa");
+        let plan = truebore::run::plan::read(&text, "row.yaml")
+            .unwrap_or_else(|f| panic!("{}: {f:?}", row.id));
+        let case = &plan.cases[0];
+        let known = case.known.iter().find(|k| k.id == row.id);
+        let known = known.unwrap_or_else(|| panic!("{} is not found", row.id));
+        let Known::Number { value, half_width } = known.known else {
+            panic!("{}", row.id)
+        };
+        let exact = match &known.quantity {
+            KnownQuantity::Total(name) => total(case.exact.as_ref(), name),
+            KnownQuantity::Displacement(i, p) => case.exact.at(*p).unwrap().displacement[*i],
+            KnownQuantity::Stress(i, p) => case.exact.at(*p).unwrap().stress.to_array()[*i],
+        };
+        assert!(
+            (exact - value).abs() <= 1.01 * half_width,
+            "{}: {exact:e}, published {value:e} +- {half_width:e}",
+            row.id
+        );
+        seen += 1;
+    }
+    assert!(seen >= 25, "{seen}");
+}
+
+#[test]
+fn a_published_value_of_another_problem_is_not_taken() {
+    let oden = truebore::exact::published::rows()
+        .iter()
+        .find(|r| r.id == "oden-u-bore")
+        .unwrap();
+    let text = suite_of(oden, "in", "psi").replace("150 psi", "151 psi");
+    let findings = truebore::run::plan::read(&text, "row.yaml").unwrap_err();
+    assert_eq!(findings[0].rule, "no-published-value");
+    assert!(
+        findings[0].expected.contains("oden-u-bore"),
+        "{}",
+        findings[0]
+    );
+}

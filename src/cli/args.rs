@@ -80,12 +80,15 @@ pub struct Exact {
 #[derive(Debug, Args)]
 #[group(required = true, multiple = false)]
 pub struct ExactTable {
-    /// N stations from the inner to the outer wall
+    /// N stations along the solution's own line: from the inner to the outer wall
     #[arg(long, value_name = "N", value_parser = parse_stations)]
     pub stations: Option<usize>,
     /// At the X,Y[,Z] of a CSV file
     #[arg(long, value_name = "FILE")]
     pub points: Option<PathBuf>,
+    /// Body force at the X,Y[,Z] of a CSV file; with NX,NY[,NZ] also the traction on that face, both per reference measure
+    #[arg(long, value_name = "FILE")]
+    pub loads: Option<PathBuf>,
     /// Numbers of the whole part
     #[arg(long)]
     pub totals: bool,

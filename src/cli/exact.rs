@@ -4,6 +4,7 @@ use super::args;
 use super::files;
 use super::{Exit, check};
 use crate::run::plan::{CasePlan, Plan};
+use crate::run::point_table::{Wanted, at_points};
 use crate::run::{brief as briefs, tables};
 use crate::suite::nearest;
 use std::io::Write;
@@ -35,18 +36,28 @@ pub fn run(options: &args::Exact) -> Exit {
             Err(message) => check::complain(&format!("{}: {message}", case.id)),
         };
     }
-    if let Some(path) = &options.what.points {
-        return points(case, path);
+    for (file, wanted) in [
+        (&options.what.points, Wanted::Fields),
+        (&options.what.loads, Wanted::Loads),
+    ] {
+        if let Some(path) = file {
+            return points(case, path, wanted);
+        }
     }
     done(&tables::totals(case))
 }
 
-fn points(case: &CasePlan, path: &std::path::Path) -> Exit {
+fn points(case: &CasePlan, path: &std::path::Path, wanted: Wanted) -> Exit {
     let bytes = match files::read_bytes(path) {
         Ok(bytes) => bytes,
         Err(finding) => return check::refuse(&[finding]),
     };
-    match tables::at_points(case.exact.as_ref(), &bytes, &path.display().to_string()) {
+    match at_points(
+        case.exact.as_ref(),
+        wanted,
+        &bytes,
+        &path.display().to_string(),
+    ) {
         Ok(table) => {
             if table.outside > 0 {
                 check::eprint(&format!(

@@ -1,21 +1,40 @@
 //! Every exact solution a suite can name: parameters, materials, range, sources, checks.
 
 use super::given::{Form, Given, ParameterEntry, refuse};
+use super::small_strain::{
+    bar_torsion, elastic_plastic_tube, heated_tube, lame_sphere, plate_with_hole, rotating,
+    shrink_fit_tube, strip,
+};
 use super::solution::{ExactSolution, Kinematics, Refusal};
-use super::tube_entries;
+use super::{bending, homogeneous, pressurised_sphere, published, stated_field, tabulated, torsion_extension, tube_entries, tube_shear};
 use crate::materials::{MaterialKind, catalogue as materials};
 
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
 const ENTRIES: &[Entry] = &[
     tube_entries::PRESSURISED_TUBE,
+tube_entries::LAYERED_TUBE,
+    tube_entries::GRADED_TUBE,
+    pressurised_sphere::ENTRY,
+    torsion_extension::ENTRY,
+    tube_shear::AZIMUTHAL_SHEAR,
+    tube_shear::AXIAL_SHEAR,
+    bending::BENT_BLOCK,
+    bending::STRAIGHTENED_SECTOR,
+    homogeneous::ENTRY,
     tube_entries::LAME_TUBE,
-    super::pressurised_sphere::ENTRY,
-    super::torsion_extension::ENTRY,
-    super::tube_shear::AZIMUTHAL_SHEAR,
-    super::tube_shear::AXIAL_SHEAR,
-    super::bending::BENT_BLOCK,
-    super::bending::STRAIGHTENED_SECTOR,
-    super::homogeneous::ENTRY,
+    lame_sphere::ENTRY,
+    shrink_fit_tube::ENTRY,
+    heated_tube::ENTRY,
+    rotating::DISK,
+    rotating::CYLINDER,
+    plate_with_hole::ENTRY,
+    strip::CANTILEVER,
+    strip::PURE_BENDING,
+    bar_torsion::ENTRY,
+    elastic_plastic_tube::ENTRY,
+    stated_field::ENTRY,
+    published::ENTRY,
+    tabulated::ENTRY,
 ];
 
 /// One solution as a reader of the catalogue sees it.

@@ -19,6 +19,29 @@ pub enum Value {
     Variant(String, Given),
     /// A block of its own.
     Block(Given),
+    /// The numbers of a CSV file.
+    Table(TableData),
+}
+
+/// The numbers of a CSV file that a case names.
+#[derive(Debug, Clone, PartialEq, Default)]
+pub struct TableData {
+    /// As the suite names it.
+    pub file: String,
+    /// Lower-case hexadecimal SHA-256 of its bytes.
+    pub sha256: String,
+    pub bytes: u64,
+    pub rows: usize,
+    /// Header and numbers of each column.
+    pub columns: Vec<(String, Vec<f64>)>,
+}
+
+impl TableData {
+    /// The numbers under a header.
+    pub fn column(&self, name: &str) -> Option<&[f64]> {
+        let found = self.columns.iter().find(|(header, _)| header == name);
+        found.map(|(_, numbers)| numbers.as_slice())
+    }
 }
 
 /// Everything that was given, in file order.
@@ -37,6 +60,10 @@ pub enum Form {
     Word(&'static [&'static str]),
     /// An expression in coordinates and named constants.
     Expression,
+    /// A free text: a name or a source.
+    Name,
+    /// A CSV file beside the suite, all numbers.
+    Table,
     /// Named numbers, as many as wanted.
     Named,
     /// One of these end conditions.
@@ -225,6 +252,14 @@ impl Given {
         match self.get("materials") {
             Some(Value::Materials(materials)) => Ok(materials),
             _ => Err(refuse("materials", "materials is missing".to_string(), "")),
+        }
+    }
+
+    /// The numbers of a file.
+    pub fn table(&self, name: &str) -> Option<&TableData> {
+        match self.get(name) {
+            Some(Value::Table(table)) => Some(table),
+            _ => None,
         }
     }
 

@@ -17,7 +17,7 @@ use super::description::Description;
 use super::parameters::{Parameters, refuse};
 use super::solution::{ErrorBound, ExactSolution, Kinematics, Refusal, State, Total};
 use super::totals::TubeTotals;
-use super::tube_words::TubeWords;
+use super::tube_words::{Bore, TubeWords};
 use crate::materials::{LinearElastic, Material};
 use crate::mechanics::{Point, SymTensor, UnitSystem};
 use nalgebra::Vector3;
@@ -96,6 +96,7 @@ impl LameTube {
                 inner: given.inner_radius,
                 outer: given.outer_radius,
                 ends: given.ends,
+                bore: Bore::Pressure,
                 inner_pressure: given.inner_pressure,
                 outer_pressure: given.outer_pressure,
                 kinematics: Kinematics::SmallStrain,

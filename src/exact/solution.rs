@@ -2,6 +2,7 @@
 
 use super::body::{Body, Frame};
 use super::description::{Description, Line};
+use super::known_value::KnownValue;
 use crate::mechanics::{Dimension, Point, SymTensor, UnitSystem};
 use nalgebra::{Matrix3, Vector3};
 
@@ -124,6 +125,11 @@ pub trait ExactSolution: Send + Sync + std::fmt::Debug {
     /// Size of the loads as stresses: what a force that is their balance is measured against.
     fn load_stress(&self) -> f64 {
         0.0
+    }
+
+    /// Single numbers known beside, or instead of, the fields.
+    fn known_values(&self) -> &[KnownValue] {
+        &[]
     }
 
     /// Body force per reference volume that equilibrium needs, in X, Y, Z.

@@ -1,12 +1,14 @@
 //! The pressurised tubes as a suite names them.
 
 use super::catalogue::Entry;
-use super::given::{Form, ParameterEntry};
+use super::given::{Form, Given, ParameterEntry, VariantEntry, refuse};
 use super::parameters::Parameters;
-use super::solution::Kinematics;
+use super::pressurised_tube::{Drive, Grading, Layer, TubeProblem};
+use super::solution::{ExactSolution, Kinematics, Refusal};
 use super::{Ends, LameTube, PressurisedTube};
-use crate::materials::MaterialKind;
+use crate::materials::{IncompressibleLaw, Material, MaterialKind};
 use crate::mechanics::Dimension;
+use std::sync::Arc;
 
 /// Ends of a tube at finite strain.
 const FINITE_ENDS: &[&str] = &[
@@ -58,16 +60,247 @@ pub(super) const OUTER_PRESSURE: ParameterEntry = ParameterEntry::optional(
 )
 .load();
 
+pub(super) const INNER_WALL_STRETCH: ParameterEntry = ParameterEntry::optional(
+    "inner-wall-stretch",
+    Form::Number(Dimension::None),
+    "",
+    "a/A of the bore, in place of inner-pressure",
+);
+
+pub(super) const ENCLOSED_VOLUME: ParameterEntry = ParameterEntry::optional(
+    "enclosed-volume",
+    Form::Number(Dimension::Area),
+    "",
+    "pi a^2 lz, deformed volume of the bore per unit reference length, in place of inner-pressure",
+);
+
+pub(super) const LOAD: ParameterEntry = ParameterEntry::optional(
+    "load",
+    Form::Word(&["follower", "dead"]),
+    "follower",
+    "dead: pressures per reference area that keep their size and direction",
+);
+
+const MATERIALS: ParameterEntry = ParameterEntry::required(
+    "materials",
+    Form::Materials,
+    "one material for each layer, from the bore outwards",
+);
+
+const GRADINGS: &[VariantEntry] = &[
+    VariantEntry {
+        name: "power",
+        parameters: &[ParameterEntry::required(
+            "exponent",
+            Form::Number(Dimension::None),
+            "n of (R/A)^n",
+        )],
+        meaning: "moduli times (R/A)^n, A the radius of the bore; `power: n` is enough",
+    },
+    VariantEntry {
+        name: "exponential",
+        parameters: &[ParameterEntry::required(
+            "rate",
+            Form::Number(Dimension::PerLength),
+            "k of exp(k (R - A))",
+        )],
+        meaning: "moduli times exp(k (R - A)); `exponential: k` is enough",
+    },
+    VariantEntry {
+        name: "table",
+        parameters: &[
+            ParameterEntry::required("R", Form::Numbers(Dimension::Length), "rising radii"),
+            ParameterEntry::required(
+                "factor",
+                Form::Numbers(Dimension::None),
+                "factor on the moduli at each of them",
+            ),
+        ],
+        meaning: "moduli times a factor that is piecewise linear in R",
+    },
+];
+
+/// The tube of layers that a suite gives, less its layers.
+fn problem(given: &Given, inner_radius: f64, layers: Vec<Layer>) -> Result<TubeProblem, Refusal> {
+    Ok(TubeProblem {
+        inner_radius,
+        layers,
+        ends: given.ends()?,
+        drive: drive(given)?,
+        outer_pressure: given.finite_or("outer-pressure", 0.0)?,
+        dead: given.text("load") == Some("dead"),
+    })
+}
+
+/// What is prescribed at the bore: one of three.
+pub(super) fn drive(given: &Given) -> Result<Drive, Refusal> {
+    let names = ["inner-pressure", "inner-wall-stretch", "enclosed-volume"];
+    let there: Vec<&'static str> = names
+        .into_iter()
+        .filter(|name| given.get(name).is_some())
+        .collect();
+    if let [_, second, ..] = there.as_slice() {
+        let message = format!(
+            "{} are given, and one fixes the others",
+            there.join(" and ")
+        );
+        return Err(refuse(second, message, "keep one of them"));
+    }
+    match there.first() {
+        Some(&"inner-wall-stretch") => given
+            .positive("inner-wall-stretch")
+            .map(Drive::InnerWallStretch),
+        Some(&"enclosed-volume") => given.positive("enclosed-volume").map(Drive::EnclosedVolume),
+        _ => given
+            .finite_or("inner-pressure", 0.0)
+            .map(Drive::InnerPressure),
+    }
+}
+
+/// The law of an incompressible material.
+fn incompressible(material: &Material) -> Result<Arc<dyn IncompressibleLaw>, Refusal> {
+    match material {
+        Material::Incompressible(law) => Ok(law.clone()),
+        other => {
+            let message = format!("{} is not incompressible", other.in_words());
+            Err(refuse("material", message, "use laws of one kind"))
+        }
+    }
+}
+
+fn pressurised_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
+    let layer = Layer {
+        outer_radius: given.finite("outer-radius")?,
+        law: incompressible(given.material()?)?,
+        grading: Grading::None,
+    };
+    let problem = problem(given, given.finite("inner-radius")?, vec![layer])?;
+    Ok(Box::new(PressurisedTube::solve(&problem)?))
+}
+
+fn layered_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
+    let (radii, materials) = (given.numbers("radii")?, given.material_list()?);
+    if radii.len() != materials.len() + 1 || materials.is_empty() {
+        let message = format!(
+            "{} radii and {} materials: each layer has one material and lies between two radii",
+            radii.len(),
+            materials.len()
+        );
+        return Err(refuse(
+            "radii",
+            message,
+            "radii: [A, C, B], materials: [inner, outer]",
+        ));
+    }
+    let layers = radii[1..].iter().zip(materials).map(|(radius, material)| {
+        Ok(Layer {
+            outer_radius: *radius,
+            law: incompressible(material)?,
+            grading: Grading::None,
+        })
+    });
+    let layers = layers.collect::<Result<Vec<_>, Refusal>>()?;
+    let problem = problem(given, radii[0], layers)?;
+    Ok(Box::new(PressurisedTube::solve(&problem)?))
+}
+
+fn graded_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
+    let missing = || refuse("grading", "grading is missing".to_string(), "");
+    let (name, block) = given.variant("grading").ok_or_else(missing)?;
+    let grading = match name {
+        "power" => Grading::Power(block.finite("exponent")?),
+        "exponential" => Grading::Exponential(block.finite("rate")?),
+        _ => {
+            let (radii, factors) = (block.numbers("R")?, block.numbers("factor")?);
+            if radii.len() != factors.len() {
+                let message = format!("{} radii and {} factors", radii.len(), factors.len());
+                return Err(refuse("factor", message, "one factor for each radius"));
+            }
+            let rows = radii.iter().copied().zip(factors.iter().copied());
+            Grading::Table(rows.collect())
+        }
+    };
+    let layer = Layer {
+        outer_radius: given.finite("outer-radius")?,
+        law: incompressible(given.material()?)?,
+        grading,
+    };
+    let problem = problem(given, given.finite("inner-radius")?, vec![layer])?;
+    Ok(Box::new(PressurisedTube::solve(&problem)?))
+}
+
+/// How every tube of this wall was checked.
+const WALL_CHECKS: &[&str] = &[
+    "many-digit integration of equilibrium in the deformed radius, tests/oracles/library",
+    "energy derivatives: dE/dg = pi lz a^2 (Pi - Po), dE/de = N lz - pi lz a^2 (Pi - Po) at Po = 0",
+    "equal layers and a grading of power 0 are the homogeneous tube; equilibrium and tractions of random walls",
+];
+
+pub(super) const LAYERED_TUBE: Entry = Entry {
+    name: "layered-tube",
+    title: "Tube of bonded incompressible layers under pressure, finite strain",
+    parameters: &[
+        ParameterEntry::required(
+            "radii",
+            Form::Numbers(Dimension::Length),
+            "bore, interfaces and outer wall before loading, rising",
+        ),
+        MATERIALS,
+        ends(FINITE_ENDS),
+        INNER_PRESSURE,
+        INNER_WALL_STRETCH,
+        ENCLOSED_VOLUME,
+        OUTER_PRESSURE,
+        LOAD,
+    ],
+    kinematics: Kinematics::Finite,
+    material_kinds: &[MaterialKind::Incompressible],
+    range: "any number of layers; otherwise as pressurised-tube; at an interface the stresses are those of the inner layer",
+    sources: &["Ogden, Non-Linear Elastic Deformations (1984), section 5.3, layer by layer"],
+    checks: WALL_CHECKS,
+    build: layered_tube,
+};
+
+pub(super) const GRADED_TUBE: Entry = Entry {
+    name: "graded-tube",
+    title: "Incompressible tube whose moduli vary with the radius, finite strain",
+    parameters: &[
+        INNER_RADIUS,
+        OUTER_RADIUS,
+        MATERIAL,
+        ParameterEntry::required(
+            "grading",
+            Form::Variant(GRADINGS),
+            "factor on every modulus of the law; exponents and locking constants stay",
+        ),
+        ends(FINITE_ENDS),
+        INNER_PRESSURE,
+        INNER_WALL_STRETCH,
+        ENCLOSED_VOLUME,
+        OUTER_PRESSURE,
+        LOAD,
+    ],
+    kinematics: Kinematics::Finite,
+    material_kinds: &[MaterialKind::Incompressible],
+    range: "factors above zero in the whole wall; otherwise as pressurised-tube",
+    sources: &["Ogden, Non-Linear Elastic Deformations (1984), section 5.3, with moduli of R"],
+    checks: WALL_CHECKS,
+    build: graded_tube,
+};
+
 pub(super) const PRESSURISED_TUBE: Entry = Entry {
     name: "pressurised-tube",
-    title: "Incompressible tube under inner and outer pressure, finite strain",
+    title: "Tube under inner and outer pressure, finite strain",
     parameters: &[
         INNER_RADIUS,
         OUTER_RADIUS,
         ends(FINITE_ENDS),
         MATERIAL,
         INNER_PRESSURE,
+        INNER_WALL_STRETCH,
+        ENCLOSED_VOLUME,
         OUTER_PRESSURE,
+        LOAD,
     ],
     kinematics: Kinematics::Finite,
     material_kinds: &[MaterialKind::Incompressible],
@@ -83,7 +316,7 @@ pub(super) const PRESSURISED_TUBE: Entry = Entry {
         "energy derivatives: dE/dg = pi lz a^2 (Pi - Po), dE/de = N lz - pi lz a^2 (Pi - Po) at Po = 0",
         "equilibrium, boundary tractions and axial force of random tubes",
     ],
-    build: |given| Ok(Box::new(PressurisedTube::new(&Parameters::of(given)?)?)),
+    build: pressurised_tube,
 };
 
 pub(super) const LAME_TUBE: Entry = Entry {

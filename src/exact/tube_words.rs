@@ -5,12 +5,24 @@ use super::description::{Description, Sketch};
 use super::solution::Kinematics;
 use crate::mechanics::{Dimension, UnitSystem};
 
+/// What is prescribed at the bore.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(super) enum Bore {
+    Pressure,
+    /// a/A.
+    Stretch(f64),
+    /// pi a^2 lz.
+    Volume(f64),
+}
+
 /// What the words are made of.
 #[derive(Debug, Clone, Copy)]
 pub(super) struct TubeWords {
     pub inner: f64,
     pub outer: f64,
     pub ends: Ends,
+    pub bore: Bore,
+    /// The pressure in the bore, given or found.
     pub inner_pressure: f64,
     pub outer_pressure: f64,
     pub kinematics: Kinematics,
@@ -57,10 +69,27 @@ impl TubeWords {
     }
 
     fn load(&self, units: &UnitSystem) -> String {
-        let walls = [
-            ("bore", self.inner_pressure),
-            ("outer wall", self.outer_pressure),
-        ];
+        let bore = match self.bore {
+            Bore::Pressure => None,
+            Bore::Stretch(stretch) => Some(format!("bore moved to {stretch} times its radius")),
+            Bore::Volume(volume) => {
+                let unit = units.name_of(Dimension::Area);
+                Some(format!(
+                    "bore filled to {volume} {unit} per reference length"
+                ))
+            }
+        };
+        let pressures = self.pressures(units, bore.is_none());
+        match bore {
+            None => pressures,
+            Some(bore) if self.outer_pressure == 0.0 => bore,
+            Some(bore) => format!("{bore}; {pressures}"),
+        }
+    }
+
+    fn pressures(&self, units: &UnitSystem, both: bool) -> String {
+        let inner = if both { self.inner_pressure } else { 0.0 };
+        let walls = [("bore", inner), ("outer wall", self.outer_pressure)];
         let follows = match (self.kinematics, self.dead) {
             (Kinematics::Finite, false) => "follows the deformed wall",
             (Kinematics::Finite, true) => "per reference area, a dead load",

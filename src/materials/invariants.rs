@@ -9,7 +9,7 @@
 //! 2Tz - Tt - Tr = 2 W1 (2 z3/lz - q2) + 2 W2 (2 z3/lz^2 + lz^2 q2)
 //! ```
 
-use super::incompressible::{Hardening, Number};
+use super::incompressible::{Differences, Hardening, Number};
 
 /// Invariants at one state, none by subtracting nearly equal numbers.
 #[derive(Debug, Clone, Copy)]
@@ -65,6 +65,21 @@ impl<D: Number> Invariants<D> {
         let first = self.z3 * 2.0 / self.lz - self.q2;
         let second = self.z3 * 2.0 / self.lz2 + self.lz2 * self.q2;
         (w1 * first + w2 * second) * 2.0
+    }
+
+    /// All three and W.
+    pub fn of_both(&self, w1: D, w2: D, energy: D) -> Differences<D> {
+        Differences {
+            hoop: self.hoop(w1, w2),
+            axial: self.axial(w1, w2),
+            reduced: self.reduced(w1, w2),
+            energy,
+        }
+    }
+
+    /// All three and W for a law of I1 alone.
+    pub fn of_first(&self, w1: D, energy: D) -> Differences<D> {
+        self.of_both(w1, D::from(0.0), energy)
     }
 }
 

@@ -5,28 +5,47 @@
 //! strain. Both are generic over [`Number`], so that derivatives are exact (dual numbers) and the plain energy
 //! can check the difference form. To add a law: one file, and one line in [`catalogue`].
 
+mod arruda_boyce;
+mod arruda_boyce_series;
 pub mod catalogue;
 mod compressible;
 mod constant;
 mod demiray;
 mod elastic_plastic;
+mod general_state;
+mod gent;
 mod incompressible;
 mod invariants;
 mod linear_elastic;
+mod locking;
 mod mooney_rivlin;
 mod neo_hookean;
+mod ogden;
+mod polynomial;
+mod power_series;
+mod stated;
+mod two_fibre;
 mod volumetric;
 mod yeoh;
 
+pub use arruda_boyce::ArrudaBoyce;
+pub use arruda_boyce_series::ArrudaBoyceSeries;
 pub use catalogue::{Entry, ParameterEntry, Problem, build, entries, find};
 pub use compressible::{Compressible, CompressibleNeoHookean, CompressibleState, VolumeSlope};
 pub use constant::{Constant, ConstantForm, Constants, Parameter};
 pub use demiray::Demiray;
 pub use elastic_plastic::ElasticPlastic;
+pub use general_state::{GeneralState, SecondGradient};
+pub use gent::Gent;
 pub use incompressible::{Differences, Formula, Hardening, IncompressibleLaw, Number, Slope};
 pub use linear_elastic::LinearElastic;
+pub use locking::LockStretches;
 pub use mooney_rivlin::MooneyRivlin;
 pub use neo_hookean::NeoHookean;
+pub use ogden::{Ogden, OgdenModuli, OgdenTerm};
+pub use polynomial::{Polynomial, PolynomialTerm};
+pub use stated::Stated;
+pub use two_fibre::TwoFibre;
 pub use volumetric::{Volumetric, VolumetricForm};
 pub use yeoh::Yeoh;
 
@@ -188,3 +207,7 @@ impl PartialEq for Material {
         self.name() == other.name() && self.parameters() == other.parameters()
     }
 }
+
+#[cfg(test)]
+#[path = "samples_tests.rs"]
+pub(crate) mod samples;

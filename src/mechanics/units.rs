@@ -23,10 +23,16 @@ pub enum Dimension {
     Energy,
     Area,
     Volume,
-    /// One over a length: an angle per length.
+    /// Of a twist or a curvature: angle over length.
     PerLength,
-    /// Force of the model: stress times length (per unit length) in two dimensions, stress times area in three.
+    /// Stress times length: a force per unit thickness.
     ForcePerLength,
+    /// Stress times area: a moment per unit thickness.
+    MomentPerLength,
+    /// Stress times volume: a moment.
+    Torque,
+    /// A body force that grows with the distance.
+    StressPerLengthSquared,
 }
 
 /// A unit: `value in base unit = value * numerator / denominator`; base units are m, Pa and rad.
@@ -161,10 +167,13 @@ impl UnitSystem {
             Dimension::Angle | Dimension::None => 1.0,
             Dimension::Area => length * length,
             Dimension::Volume => length * length * length,
-            Dimension::Force | Dimension::EnergyPerLength => stress * length * length,
-            Dimension::Energy => stress * length * length * length,
+            Dimension::Force | Dimension::EnergyPerLength | Dimension::MomentPerLength => {
+                stress * length * length
+            }
+            Dimension::Energy | Dimension::Torque => stress * length * length * length,
             Dimension::PerLength => 1.0 / length,
             Dimension::ForcePerLength => stress * length,
+            Dimension::StressPerLengthSquared => stress / (length * length),
         }
     }
 
@@ -195,8 +204,11 @@ impl UnitSystem {
             // joule per metre of length, which is a newton
             Dimension::EnergyPerLength => self.product(dimension, "J/m", 2),
             Dimension::Energy => self.product(dimension, "J", 3),
-            Dimension::PerLength => format!("1/{l}"),
-            Dimension::ForcePerLength => format!("{s} {l}"),
+            Dimension::PerLength => format!("rad/{l}"),
+            Dimension::ForcePerLength => format!("{}/{l}", self.name_of(Dimension::Force)),
+            Dimension::MomentPerLength => format!("{} {l}/{l}", self.name_of(Dimension::Force)),
+            Dimension::Torque => format!("{} {l}", self.name_of(Dimension::Force)),
+            Dimension::StressPerLengthSquared => format!("{s}/{l}^2"),
         }
     }
 }
@@ -256,6 +268,17 @@ mod tests {
         assert_eq!(suite.name_of(Dimension::Force), "N");
         assert_eq!(suite.name_of(Dimension::EnergyPerLength), "J/m");
         assert_eq!(suite.name_of(Dimension::Energy), "mJ");
+        assert!((suite.factor_to(&si, Dimension::Torque) - 1e-3).abs() < 1e-18);
+        assert!((suite.factor_to(&si, Dimension::PerLength) - 1e3).abs() < 1e-12);
+        assert!((suite.factor_to(&si, Dimension::ForcePerLength) / 1e3 - 1.0).abs() < 1e-15);
+        assert!(
+            (suite.factor_to(&si, Dimension::StressPerLengthSquared) / 1e12 - 1.0).abs() < 1e-15
+        );
+        assert_eq!(suite.name_of(Dimension::Torque), "N mm");
+        assert_eq!(suite.name_of(Dimension::ForcePerLength), "N/mm");
+        assert_eq!(suite.name_of(Dimension::MomentPerLength), "N mm/mm");
+        assert_eq!(suite.name_of(Dimension::PerLength), "rad/mm");
+        assert_eq!(suite.name_of(Dimension::StressPerLengthSquared), "MPa/mm^2");
         let inches = UnitSystem::of("in", "psi").unwrap();
         assert_eq!(inches.name_of(Dimension::Force), "psi in^2");
         assert!(UnitSystem::of("MPa", "mm").is_none());

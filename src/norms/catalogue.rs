@@ -160,6 +160,18 @@ pub const MEASURES: &[Measure] = measures! {
     "axial-force" "Axial force" "axial force" Functional Force
         "net axial force on the modelled share of the wall; where the exact one is zero, give the limit as a force"
         "totals: axial_force";
+    "torque" "Torque" "torque" Functional Energy
+        "torque about the axis on the modelled share of the section (of a slice: per unit length)"
+        "totals: torque";
+    "bending-moment" "Bending moment" "moment" Functional Force
+        "moment per unit width on the modelled share of the section"
+        "totals: bending_moment";
+    "enclosed-volume" "Enclosed volume" "volume" Functional Area
+        "deformed volume of the bore of the modelled share (of a slice: per unit reference length)"
+        "totals: enclosed_volume";
+    "known-value" "Published or tabulated value" "known value" Functional None
+        "the number the case names, by a total or at a node; of several the one farthest off"
+        "totals or nodes, as the value says";
 };
 
 /// The measure of that name.

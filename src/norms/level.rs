@@ -8,7 +8,7 @@ use super::model::Mesh;
 use super::points::{self, PointNorms};
 use super::profile::{self, StressProfile};
 use super::wall::{self, AtPlace};
-use crate::exact::ExactSolution;
+use crate::exact::{ExactSolution, KnownValue};
 use crate::mechanics::{Dimension, UnitSystem};
 use crate::results::{Channel, ModelKind, ResultSet};
 
@@ -20,6 +20,8 @@ pub struct LevelMeasures {
     pub outside: u64,
     pub outside_distance: f64,
     pub profile: Option<StressProfile>,
+    /// Largest half width of the known values against their size.
+    pub known_bound: f64,
 }
 
 /// What the measures are taken from.
@@ -27,6 +29,8 @@ pub struct LevelMeasures {
 pub struct Level<'a> {
     pub set: &'a ResultSet,
     pub exact: &'a dyn ExactSolution,
+    /// Published or tabulated values of the case.
+    pub known: &'a [KnownValue],
     /// `None` without nodes and elements.
     pub body: Option<&'a BodyReport>,
     /// Norms over the integration points, `None` without points.csv.
@@ -66,6 +70,7 @@ impl<'a> Level<'a> {
         self.fields(&mut level);
         self.wall_stresses(&mut level);
         self.totals(&mut level);
+        self.known_values(&mut level);
         if let (Some(mesh), Some(points)) = (self.mesh(), self.points) {
             let column = profile::column(mesh, &self.exact.body());
             level.profile = profile::profile(mesh, &points.kept, &column, self.exact);

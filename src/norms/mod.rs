@@ -4,6 +4,7 @@ pub mod accumulate;
 pub mod body;
 pub mod catalogue;
 pub mod displacement;
+pub mod known;
 pub mod level;
 pub mod measured;
 pub mod model;

@@ -12,6 +12,9 @@ impl Level<'_> {
             ("strain-energy", "strain_energy"),
             ("axial-stretch", "axial_stretch"),
             ("axial-force", "axial_force"),
+            ("torque", "torque"),
+            ("bending-moment", "bending_moment"),
+            ("enclosed-volume", "enclosed_volume"),
         ] {
             level.measured.push(self.total(name, quantity));
         }
@@ -24,7 +27,7 @@ impl Level<'_> {
         };
         let dimension = match exact.dimension {
             Dimension::EnergyPerLength if !planar => Dimension::Energy,
-            Dimension::ForcePerLength if !planar => Dimension::Force,
+            Dimension::Area if !planar => Dimension::Volume,
             other => other,
         };
         let unit = self.unit(dimension);

@@ -48,6 +48,9 @@ pub struct Conventions {
     pub pressure_sign: PressureSign,
     pub shear: Shear,
     pub angle: AngleUnit,
+    /// Particles turn about the axis: cylindrical stress components could be along axes that turn with them or not, and
+    /// are refused.
+    pub turning: bool,
 }
 
 impl Conventions {

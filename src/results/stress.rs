@@ -179,6 +179,14 @@ impl StressPlan {
         if !any(header, names) {
             return Err(NoStress::NotGiven(header.missing_reason(names[0])));
         }
+        if conventions.turning && cylindrical {
+            let why = format!(
+                "{}: particles of this case turn about the axis, so that srr and stt could be along axes that turn with them or \
+                 not; export sxx syy szz sxy syz szx",
+                header.file
+            );
+            return Err(NoStress::NotConvertible(why));
+        }
         if kind == ModelKind::Axisymmetric && !piola && !cylindrical {
             let why = format!(
                 "{}: stresses of an axisymmetric model must be named srr stt szz srt stz szr; map the columns",

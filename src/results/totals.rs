@@ -38,9 +38,11 @@ impl Totals {
 pub fn dimension_of(quantity: &str, kind: ModelKind) -> Option<Dimension> {
     let planar = kind == ModelKind::Planar;
     match quantity {
-        "strain_energy" | "external_work" if planar => Some(Dimension::EnergyPerLength),
+        "strain_energy" | "external_work" | "torque" if planar => Some(Dimension::EnergyPerLength),
         "strain_energy" | "external_work" | "torque" => Some(Dimension::Energy),
-        "axial_force" => Some(Dimension::Force),
+        "axial_force" | "bending_moment" => Some(Dimension::Force),
+        "enclosed_volume" if planar => Some(Dimension::Area),
+        "enclosed_volume" => Some(Dimension::Volume),
         "volume_reference" | "volume_current" if planar => Some(Dimension::Area),
         "volume_reference" | "volume_current" => Some(Dimension::Volume),
         "axial_stretch" | "load_factor" | "iterations" => Some(Dimension::None),

@@ -4,7 +4,7 @@ use super::{format_pages, rules};
 use crate::elements::{STANDARD_RULES, Shape};
 use crate::exact;
 use crate::exact::given::{Form, ParameterEntry};
-use crate::materials;
+use crate::materials::{self, ConstantForm};
 use crate::mechanics::Dimension;
 use crate::mechanics::units::Unit;
 use crate::norms::catalogue::{MEASURES, Measure};
@@ -23,6 +23,7 @@ pub fn text(name: Option<&str>) -> Result<String, String> {
     match name {
         "columns" => return Ok(format_pages::COLUMNS.to_string()),
         "suite" => return Ok(format_pages::SUITE.to_string()),
+        "expressions" => return Ok(format_pages::EXPRESSIONS.to_string()),
         _ => {}
     }
     if let Some(entry) = exact::find(name) {
@@ -53,7 +54,7 @@ fn names() -> impl Iterator<Item = &'static str> {
     let materials = materials::entries().iter().map(|e| e.name);
     let shapes = Shape::ALL.into_iter().map(Shape::name);
     let measures = MEASURES.iter().map(|m| m.name);
-    ["columns", "suite"]
+    ["columns", "suite", "expressions"]
         .into_iter()
         .chain(solutions)
         .chain(materials)
@@ -75,7 +76,7 @@ fn everything() -> String {
     for entry in materials::entries() {
         let _ = writeln!(
             text,
-            "  {:<18} {{ {} }}   {}",
+            "  {:<19} {{ {} }}   {}",
             entry.name,
             entry.constant_names(),
             entry.formula
@@ -116,6 +117,7 @@ fn everything() -> String {
         }
     }
     text.push_str("\npages\n  columns            columns of the tables\n  suite              keys of a suite\n");
+    text.push_str("  expressions        what a typed energy is written of\n");
     text.push_str("\n`truebore catalogue NAME` tells more\n");
     text
 }
@@ -178,7 +180,11 @@ fn material(entry: &materials::Entry) -> String {
         entry.name, entry.formula, entry.convention
     );
     for p in entry.parameters {
-        let _ = writeln!(text, "  {:<8} {} ({})", p.name, p.meaning, p.range);
+        let form = match p.form {
+            ConstantForm::Number => String::new(),
+            form => format!(", {}", form.words()),
+        };
+        let _ = writeln!(text, "  {:<8} {}{form} ({})", p.name, p.meaning, p.range);
     }
     if let Some(family) = entry.family {
         let _ = writeln!(text, "  {:<8} {}", family.pattern, family.meaning);

@@ -79,6 +79,8 @@ pub fn check(
         rows: None,
     };
     let mut inputs = vec![suite.clone()];
+    inputs.extend(plan.cases.iter().flat_map(|case| &case.tables).cloned());
+    inputs.dedup();
     let mut seen = BTreeSet::new();
     for level in by_case.iter().flatten() {
         for input in &level.inputs {
@@ -147,10 +149,14 @@ fn judge_case(case: &CasePlan, levels: Vec<LevelResult>) -> CaseOutcome {
     let straight = levels
         .iter()
         .any(|l| matches!(l.sides, WallSides::Straight | WallSides::Mixed));
+    let known_bound = levels
+        .iter()
+        .map(|level| level.measures.known_bound)
+        .fold(0.0, f64::max);
     let criteria: Vec<CriterionOutcome> = case
         .criteria
         .iter()
-        .map(|criterion| judge_one(case, criterion, &measures, straight))
+        .map(|criterion| judge_one(case, criterion, &measures, straight, known_bound))
         .collect();
     let (verdict, reason) = case_verdict(case, &levels, &criteria);
     let mut findings: Vec<Finding> = levels
@@ -181,6 +187,7 @@ fn judge_one(
     criterion: &Criterion,
     measures: &[MeasureSeries],
     straight: bool,
+    known_bound: f64,
 ) -> CriterionOutcome {
     let series = measures
         .iter()
@@ -190,6 +197,7 @@ fn judge_one(
     let reference_bound = match class {
         Some(Class::Displacement | Class::Gradient) => bound.displacement,
         Some(Class::Stress | Class::Pressure) => bound.stress,
+        _ if criterion.measure == crate::norms::known::NAME => known_bound,
         Some(Class::Functional) | None => bound.totals,
     };
     let suspicion =

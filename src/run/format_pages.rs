@@ -48,6 +48,7 @@ keys of a suite
 keys of a case
   id, title
   problem          an exact solution with its parameters; a list where a value stands makes cases
+  reference        exact (without it), or published: also the published values of this very problem, by known-value
   element          quad4, or { displacement: quad9, pressure: quad4 | constant | linear | quadratic }
   section          modelled share of the section, e.g. 1/4
   axial-length     of a solid; checked against the mesh
@@ -73,10 +74,60 @@ ends of a tube
   { fixed-stretch: { axial-stretch: 1.2 } }
 ";
 
+/// `truebore catalogue expressions`.
+pub const EXPRESSIONS: &str = "\
+expressions, e.g. of the law `stated`
+  materials:
+    soft: { stated: { energy: \"mu/2*(I1-3) + c*(I1-3)^2\", constants: { mu: 0.4, c: 0.01 } } }
+
+numbers     2   0.5   .5   1e-3   1.5E+2        the decimal mark is a point, no unit
+signs       + - * /   ^ power   ( )             strongest first: ^, then - in front, then * /, then + -
+            -x^2 is -(x^2), 2^3^2 is 2^(3^2), 2^-3 is allowed, 2 x and 2x are not: write 2*x
+functions   exp expm1 ln log10 log1p sqrt       expm1(x) = exp(x) - 1, log1p(x) = ln(1 + x)
+            sin cos tan asin acos atan          of radians
+            sinh cosh tanh
+            pos(x)                              x where x > 0, else 0; its derivative at 0 is 0
+            There are no abs, min, max: they have no derivative where they turn.
+powers      x^n of a whole number n for every x; x^c of any other constant c for x >= 0; x^y for x > 0
+names       pi, and what is listed below; every other name must be among the constants (E, e, N are ordinary names);
+            capital and small letters differ
+limits      10000 characters, 100 levels of ( ), - and ^
+derivatives are exact and never typed. Where a function has no value (ln of a negative number) the law has none.
+
+energy of the law `stated`, per reference volume, with l1 l2 l3 = 1, of
+  I1, I2      I1 = l1^2 + l2^2 + l3^2,  I2 = l1^-2 + l2^-2 + l3^-2
+  l1, l2, l3  the stretches, radial, hoop, axial; the energy must be the same for every order of them (checked at 5
+              states); I1 and I2 may stand beside them, pos() may not
+  I4          of two families of fibres at +-beta from the hoop direction, with a constant beta:
+              I4 = lt^2 cos(beta)^2 + lz^2 sin(beta)^2 of either family. W as typed counts both families: an energy k1/(2 k2)
+              (exp(k2 (I4-1)^2) - 1) of each of two families is typed with k1/k2. pos(I4-1) for fibres that act in tension only.
+  e.g. { stated: { energy: \"mu/2*(I1-3) + k1/k2*expm1(k2*pos(I4-1)^2)\", constants: { mu: 3, k1: 2, k2: 0.8, beta: 30 deg } } }
+  It must be zero without strain, its shear modulus there positive, and every constant must occur in it.
+
+digits of the law `stated`
+  of invariants  I1 - 3, I2 - 3 and I4 - 1 are taken as differences of the strain, not subtracted: stresses keep all digits at
+                 any strain. W keeps them if it is written with these three, and below I - 3 = 0.5 however it is written.
+  of stretches   stress differences have eps/strain of themselves (eps = 2.2e-16) where the strain ln(li/lj) is above 0.5; below
+                 they are integrated from second derivatives and keep all digits.
+  pos()          kinks are searched for in -6 < ln(lt/lr) < 6 in steps of 0.02: two within one step are not seen.
+  A pole of the energy (a locking stretch written as 1/(1-x)) must not be passed: beyond it the law is taken at its word, unless W is
+  negative or no number there. Written with ln(1-x) it has no value there.
+";
+
 #[cfg(test)]
 mod tests {
     use super::*;
     use crate::mechanics::StressMeasure;
+    use crate::numerics::expression::{DEEPEST, Function, LONGEST};
+
+    #[test]
+    fn every_function_and_limit_is_on_the_page() {
+        let words: Vec<_> = EXPRESSIONS.split(|c: char| !c.is_alphanumeric()).collect();
+        for name in Function::names() {
+            assert!(words.contains(&name), "{name}");
+        }
+        assert!(EXPRESSIONS.contains(&format!("{LONGEST} characters, {DEEPEST} levels")));
+    }
 
     /// The page names every key the reader knows, so that it cannot fall behind.
     #[test]

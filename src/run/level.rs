@@ -79,6 +79,7 @@ pub fn reading(case: &CasePlan) -> Reading {
             } else {
                 AngleUnit::Radians
             },
+            turning: case.exact.turns(),
         },
         units_from: units.unwrap_or(case.units),
         units_to: case.units,
@@ -161,6 +162,7 @@ pub fn measure(
     let measures = Level {
         set: &set,
         exact: case.exact.as_ref(),
+        known: &case.known,
         body: report.as_ref(),
         points: points.as_ref(),
         share: case.share,

@@ -100,11 +100,14 @@ fn entries_of(node: &Node) -> impl Iterator<Item = (&str, &Node)> {
     list.iter().map(|(key, node)| (key.name.as_str(), node))
 }
 
-/// Where a constant stands, or its law.
+/// Where a constant stands, or its law; `constants.mu` is within the block `constants`.
 fn place_of(entry: &MaterialEntry, constant: &str, reader: &Reader) -> crate::input::Place {
     let block = entry.constants.as_ref();
     let found = block.and_then(|b| {
-        let (_, node) = entries_of(&b.value).find(|(key, _)| *key == constant)?;
+        let mut node = &b.value;
+        for word in constant.split('.') {
+            node = entries_of(node).find(|(key, _)| *key == word)?.1;
+        }
         let path = format!("{}.{constant}", b.path);
         Some(reader.place(node.line, node.column, &path))
     });

@@ -1,18 +1,22 @@
 //! From one combination of a problem block to what its exact solution is given.
 
 use super::materials::{Materials, refuse};
+use super::table_file;
 use crate::exact::given::{Form, ParameterEntry, VariantEntry};
 use crate::exact::{Ends, Given, Value as GivenValue, catalogue};
 use crate::materials::Material;
 use crate::mechanics::{Dimension, UnitSystem};
 use crate::suite::tree::{Node, Value};
 use crate::suite::{Placed, Quantity, Reader, nearest};
+use std::path::Path;
 
 /// What reading a parameter needs besides its node.
 #[derive(Debug, Clone, Copy)]
 pub struct Context<'a> {
     pub materials: &'a Materials,
     pub units: &'a UnitSystem,
+    /// Where the suite lies; files it names are beside it.
+    pub folder: &'a Path,
 }
 
 /// Reads one combination by the entries of its solution. What is wrong is reported; `None` then.
@@ -69,7 +73,9 @@ fn value(
     context: Context,
     reader: &mut Reader,
 ) -> Option<GivenValue> {
-    let Context { materials, units } = context;
+    let Context {
+        materials, units, ..
+    } = context;
     match form {
         Form::Number(Dimension::Length) => {
             length(node, path, units, reader).map(GivenValue::Number)
@@ -91,7 +97,8 @@ fn value(
             numbers.map(GivenValue::Numbers)
         }
         Form::Word(names) => word(node, path, names, reader).map(GivenValue::Text),
-        Form::Expression => reader.text(node, path).map(GivenValue::Text),
+        Form::Expression | Form::Name => reader.text(node, path).map(GivenValue::Text),
+        Form::Table => table_file::read(node, path, context.folder, reader).map(GivenValue::Table),
         Form::Named => named(node, path, units, reader).map(GivenValue::Block),
         Form::Ends(_) => ends(node, path, units, reader).map(GivenValue::Ends),
         Form::Material => material(node, path, materials, reader).map(GivenValue::Material),

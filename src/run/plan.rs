@@ -1,19 +1,23 @@
 //! What a suite means: every case with its exact solution, levels and criteria. Nothing is read from results here.
 
 use super::criteria;
+pub(super) use super::declared::refuse;
+use super::declared::{length, load_factor, share, sizes, too_coarse};
 use super::expand::{self, Combination};
 use super::exports;
 use super::folders::{levels, own_folder};
+use super::known;
 use super::materials::Materials;
 use super::pairing::{self, Element};
 use super::parameters::{self, Context};
 use super::refusals::{self, Refusals};
-use crate::exact::{Body, ExactSolution, Given, catalogue};
+use crate::exact::{ExactSolution, Given, KnownValue, catalogue};
 use crate::input::Finding;
-use crate::mechanics::{Dimension, UnitSystem};
+use crate::mechanics::UnitSystem;
+use crate::suite::Reader;
 use crate::suite::model::{CaseEntry, ExportEntry, Suite};
-use crate::suite::{Placed, Quantity, Reader};
 use crate::verdict::judge::Criterion;
+use crate::verdict::outcome::InputRecord;
 use std::collections::{BTreeMap, BTreeSet};
 use std::sync::Arc;
 
@@ -41,6 +45,10 @@ pub struct CasePlan {
     /// What the solution was given, at the load factor.
     pub given: Given,
     pub exact: Arc<dyn ExactSolution>,
+    /// Published or tabulated values the results are held to.
+    pub known: Vec<KnownValue>,
+    /// Files besides the result sets that the reference rests on.
+    pub tables: Vec<InputRecord>,
     pub element: Option<Element>,
     /// Modelled share of the section.
     pub share: f64,
@@ -76,7 +84,7 @@ pub fn plan(suite: Suite, file: &str) -> Result<Plan, Vec<Finding>> {
     let materials = Materials::build(&suite, &mut reader);
     let mut cases: Vec<CasePlan> = Vec::new();
     for entry in &suite.cases {
-        plan_case(&suite, entry, &materials, &mut cases, &mut reader);
+        plan_case(&suite, file, entry, &materials, &mut cases, &mut reader);
     }
     if reader.findings.is_empty() {
         return Ok(Plan {
@@ -120,6 +128,7 @@ pub fn read(text: &str, file: &str) -> Result<Plan, Vec<Finding>> {
 
 fn plan_case(
     suite: &Suite,
+    file: &str,
     entry: &CaseEntry,
     materials: &Materials,
     cases: &mut Vec<CasePlan>,
@@ -156,6 +165,9 @@ fn plan_case(
     let context = Context {
         materials,
         units: &suite.units,
+        folder: std::path::Path::new(file)
+            .parent()
+            .unwrap_or_else(|| std::path::Path::new("")),
     };
     'all: for problem in &problems {
         let path = &entry.parameters.path;
@@ -172,6 +184,14 @@ fn plan_case(
                 continue;
             }
         };
+        let known = known::of_case(
+            entry,
+            solution.name,
+            &given,
+            exact.as_ref(),
+            context,
+            reader,
+        );
         too_coarse(entry, node_tolerance, &exact.body(), reader);
         for element_choice in &elements {
             let element = element_choice
@@ -214,6 +234,8 @@ fn plan_case(
                 problem: solution.name.to_string(),
                 given: given.clone(),
                 exact: Arc::clone(&exact),
+                known: known.clone(),
+                tables: known::tables(&given),
                 element,
                 share: share.unwrap_or(1.0),
                 axial_length,
@@ -265,132 +287,6 @@ fn combinations(entry: &CaseEntry, lists: &[&str], reader: &mut Reader) -> Optio
             .collect(),
     };
     Some((expand::expand(&entry.parameters.value, lists), elements))
-}
-
-/// The declared share of the section, above 0 and at most 1.
-fn share(entry: &CaseEntry, reader: &mut Reader) -> Option<f64> {
-    let declared = entry.section.as_ref()?;
-    let share = match declared.value.within(Dimension::None, &UnitSystem::si()) {
-        Ok(share) if share > 0.0 && share <= 1.0 => return Some(share),
-        Ok(_) => format!("\"{}\" is no share of a section", declared.value.text),
-        Err(found) => found,
-    };
-    refuse(
-        declared,
-        "section-share",
-        share,
-        "a share above 0 and at most 1, e.g. 1/4 for a quarter",
-        reader,
-    );
-    None
-}
-
-/// A declared tolerance of nodes must not hide a wrong wall: at most a hundredth of it.
-fn too_coarse(entry: &CaseEntry, tolerance: Option<f64>, body: &Body, reader: &mut Reader) {
-    let most = 0.01 * body.thickness();
-    if let (Some(declared), Some(tolerance)) = (&entry.node_tolerance, tolerance)
-        && tolerance > most
-        && most > 0.0
-    {
-        let found = format!(
-            "\"{}\" is more than a hundredth of a wall",
-            declared.value.text
-        );
-        refuse(
-            declared,
-            "node-tolerance",
-            found,
-            "at most a hundredth of the thinnest wall",
-            reader,
-        );
-    }
-}
-
-/// The declared share of the loads, finite and not zero.
-fn load_factor(entry: &CaseEntry, reader: &mut Reader) -> f64 {
-    let Some(declared) = &entry.load_factor else {
-        return 1.0;
-    };
-    let found = match declared.value.within(Dimension::None, &UnitSystem::si()) {
-        Ok(factor) if factor != 0.0 => return factor,
-        Ok(_) => "at the load factor 0 there is nothing to judge".to_string(),
-        Err(found) => found,
-    };
-    refuse(
-        declared,
-        "load-factor",
-        found,
-        "a share of the case's loads, e.g. 0.6",
-        reader,
-    );
-    1.0
-}
-
-fn length(declared: &Placed<Quantity>, suite: &Suite, reader: &mut Reader) -> Option<f64> {
-    match declared.value.within(Dimension::Length, &suite.units) {
-        Ok(length) if length > 0.0 => Some(length),
-        Ok(_) => {
-            refuse(
-                declared,
-                "length",
-                format!("\"{}\" is not positive", declared.value.text),
-                "a length above zero",
-                reader,
-            );
-            None
-        }
-        Err(found) => {
-            refuse(declared, "wrong-unit", found, "a length", reader);
-            None
-        }
-    }
-}
-
-/// Given mesh sizes, one for each level, falling.
-fn sizes(entry: &CaseEntry, suite: &Suite, reader: &mut Reader) -> Vec<f64> {
-    let sizes: Vec<f64> = entry
-        .h
-        .iter()
-        .filter_map(|q| length(q, suite, reader))
-        .collect();
-    let Some(first) = entry.h.first() else {
-        return sizes;
-    };
-    if sizes.len() == entry.h.len() && sizes.len() != entry.levels.len() {
-        let found = format!(
-            "{} mesh sizes for {} levels",
-            sizes.len(),
-            entry.levels.len()
-        );
-        refuse(
-            first,
-            "mesh-sizes",
-            found,
-            "one size for each level",
-            reader,
-        );
-    } else if sizes.windows(2).any(|pair| pair[1] >= pair[0]) {
-        refuse(
-            first,
-            "mesh-sizes",
-            "the mesh sizes do not fall from level to level".into(),
-            "coarsest level first",
-            reader,
-        );
-    }
-    sizes
-}
-
-/// A problem at a value of the suite.
-pub(super) fn refuse<T>(
-    at: &Placed<T>,
-    rule: &str,
-    found: String,
-    expected: &str,
-    reader: &mut Reader,
-) {
-    let place = reader.place(at.line, at.column, &at.path);
-    reader.push(Finding::refused(rule, place, found).expected(expected));
 }
 
 fn unique_id(id: &str, entry: &CaseEntry, cases: &[CasePlan], reader: &mut Reader) -> bool {

@@ -43,6 +43,8 @@ pub struct CaseEntry {
     /// Name of the exact solution and the block of its parameters.
     pub problem: Placed<String>,
     pub parameters: Placed<Node>,
+    /// What the results are held to besides the exact solution: `published`.
+    pub reference: Option<Placed<String>>,
     /// The block under `element`.
     pub element: Option<Placed<Node>>,
     /// Modelled share of the section.

@@ -162,6 +162,7 @@ fn read_case(
     let id = id.and_then(|n| identifier(n, &id_path, reader));
     let title = text(&mut block, "title", reader).map(|t| t.value);
     let problem = read_problem(&mut block, reader);
+    let reference = text(&mut block, "reference", reader);
     let element = take(&mut block, "element").map(|(n, at)| placed(n.clone(), n, &at));
     let section = quantity(&mut block, "section", reader);
     let axial_length = quantity(&mut block, "axial-length", reader);
@@ -184,6 +185,7 @@ fn read_case(
         title,
         problem,
         parameters,
+        reference,
         element,
         section,
         axial_length,

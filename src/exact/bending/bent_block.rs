@@ -103,13 +103,13 @@ impl BentBlock {
         };
         let (m, e) = (moment(POINTS), energy(POINTS));
         let quadrature = (moment(CHECK_POINTS) / m - 1.0).abs().max((energy(CHECK_POINTS) / e - 1.0).abs());
-        let (size, extent) = (Dimension::EnergyPerLength, Extent::SectionAndLength);
+        let extent = Extent::SectionAndLength;
         let (radius, whole) = (Dimension::Length, Extent::Whole);
         let totals = vec![
             demands::total("inner_radius", (-0.5 * face).exp() / bend, radius, whole),
             demands::total("outer_radius", (0.5 * face).exp() / bend, radius, whole),
-            demands::total("bending_moment", m, size, extent),
-            demands::total("strain_energy", e, size, extent),
+            demands::total("bending_moment", m, Dimension::MomentPerLength, extent),
+            demands::total("strain_energy", e, Dimension::EnergyPerLength, extent),
         ];
         Ok(Self {
             thickness,

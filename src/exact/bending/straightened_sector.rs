@@ -104,10 +104,10 @@ impl StraightenedSector {
         let (m, e) = (moment(POINTS), energy(POINTS));
         let mut quadrature = (moment(CHECK_POINTS) / m - 1.0).abs();
         quadrature = quadrature.max((energy(CHECK_POINTS) / e - 1.0).abs());
-        let (size, extent) = (Dimension::EnergyPerLength, Extent::SectionAndLength);
+        let extent = Extent::SectionAndLength;
         let totals = vec![
-            demands::total("bending_moment", m, size, extent),
-            demands::total("strain_energy", e, size, extent),
+            demands::total("bending_moment", m, Dimension::MomentPerLength, extent),
+            demands::total("strain_energy", e, Dimension::EnergyPerLength, extent),
         ];
         Ok(Self {
             inner,

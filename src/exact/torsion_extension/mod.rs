@@ -57,7 +57,7 @@ pub(super) const ENTRY: Entry = Entry {
         .load(),
         ParameterEntry::optional(
             "torque",
-            Form::Number(Dimension::Energy),
+            Form::Number(Dimension::Torque),
             "",
             "torque of the section; give this or twist",
         )
@@ -199,7 +199,7 @@ fn totals_of(section: &Section, loads: &Loads, solved: &Solved) -> Vec<Total> {
         demands::total("outer_radius", b, length, whole),
         demands::total("axial_stretch", motion.e.exp(), Dimension::None, whole),
         demands::total("axial_force", force, Dimension::Force, Extent::Section),
-        demands::total("torque", torque, Dimension::Energy, Extent::Section),
+        demands::total("torque", torque, Dimension::Torque, Extent::Section),
         demands::total("twist", motion.twist, Dimension::PerLength, whole),
         demands::total("strain_energy", all.energy.value, Dimension::EnergyPerLength, Extent::SectionAndLength),
     ];
@@ -349,7 +349,7 @@ impl ExactSolution for TorsionExtension {
         };
         let turn = match self.loads.turn {
             Turn::Twist(twist) => format!("twisted by {twist} rad per {length} of reference length"),
-            Turn::Torque(torque) => format!("torque {torque} {}", units.name_of(Dimension::Energy)),
+            Turn::Torque(torque) => format!("torque {torque} {}", units.name_of(Dimension::Torque)),
         };
         let axial = match self.loads.axial {
             Axial::Stretch(e) => format!("held at the axial stretch {}", demands::rounded(e.exp(), 15)),

@@ -73,12 +73,12 @@ impl TubeShear {
         let law = demands::isotropic_law(given, way.name(), why)?;
         let motion = given.finite(way.motion())?;
         let solved = solve::solve((inner, outer), law, way, motion)?;
-        let (size, extent) = (Dimension::EnergyPerLength, Extent::SectionAndLength);
+        let extent = Extent::SectionAndLength;
         let load = match way {
-            Way::Azimuthal => demands::total("torque", solved.load, size, extent),
+            Way::Azimuthal => demands::total("torque", solved.load, Dimension::MomentPerLength, extent),
             Way::Axial => demands::total("axial_shear_force", solved.load, Dimension::ForcePerLength, extent),
         };
-        let energy = demands::total("strain_energy", solved.energy, size, extent);
+        let energy = demands::total("strain_energy", solved.energy, Dimension::EnergyPerLength, extent);
         Ok(Self {
             totals: demands::finite(vec![load, energy])?,
             wall: solved.wall,
