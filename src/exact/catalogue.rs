@@ -6,13 +6,16 @@ use super::small_strain::{
     shrink_fit_tube, strip,
 };
 use super::solution::{ExactSolution, Kinematics, Refusal};
-use super::{bending, homogeneous, pressurised_sphere, published, stated_field, tabulated, torsion_extension, tube_entries, tube_shear};
+use super::{
+    bending, homogeneous, pressurised_sphere, published, stated_field, tabulated,
+    torsion_extension, tube_entries, tube_shear,
+};
 use crate::materials::{MaterialKind, catalogue as materials};
 
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
 const ENTRIES: &[Entry] = &[
     tube_entries::PRESSURISED_TUBE,
-tube_entries::LAYERED_TUBE,
+    tube_entries::LAYERED_TUBE,
     tube_entries::GRADED_TUBE,
     pressurised_sphere::ENTRY,
     torsion_extension::ENTRY,

@@ -58,12 +58,7 @@ pub(super) fn isotropic_law(
 }
 
 /// Refuses a law with preferred directions.
-pub(super) fn isotropic(
-    is_so: bool,
-    law: &str,
-    solution: &str,
-    why: &str,
-) -> Result<(), Refusal> {
+pub(super) fn isotropic(is_so: bool, law: &str, solution: &str, why: &str) -> Result<(), Refusal> {
     if is_so {
         return Ok(());
     }

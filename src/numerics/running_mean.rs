@@ -211,7 +211,10 @@ mod tests {
             assert!((mean.value(x, f) / exact - 1.0).abs() < 1e-9, "{x}");
         }
         assert_eq!(RunningMean::fit(0.0, 1.0, FINE, f64::ln), None);
-        assert_eq!(RunningMean::fit(-0.3, 1.0, FINE, |x: f64| if x > 0.0 { 1.0 } else { 0.0 }), None);
+        assert_eq!(
+            RunningMean::fit(-0.3, 1.0, FINE, |x: f64| if x > 0.0 { 1.0 } else { 0.0 }),
+            None
+        );
         let empty = RunningMean::fit(2.0, 2.0, FINE, f64::exp).unwrap();
         assert_eq!(empty.value(2.0, f64::exp), 2.0_f64.exp());
     }

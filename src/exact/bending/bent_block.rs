@@ -81,8 +81,13 @@ impl BentBlock {
         let (thickness, length) = (given.positive("thickness")?, given.positive("length")?);
         let angle = given.positive("angle")?;
         if angle > 2.0 * PI {
-            let message = format!("angle = {angle} is more than a full turn: the ends would overlap");
-            return Err(refuse("angle", message, "nearest admissible value: 6.283185307179586"));
+            let message =
+                format!("angle = {angle} is more than a full turn: the ends would overlap");
+            return Err(refuse(
+                "angle",
+                message,
+                "nearest admissible value: 6.283185307179586",
+            ));
         }
         let law = demands::isotropic_law(given, NAME, WHY_ISOTROPIC)?;
         let bend = angle / length;
@@ -90,8 +95,15 @@ impl BentBlock {
         let most = reach(law.as_ref(), face);
         if most < face {
             let nearest = rounded(most.sinh() * length / thickness, 6);
-            let message = format!("angle = {angle} stretches the faces beyond what {} carries", law.name());
-            return Err(refuse("angle", message, format!("nearest admissible value: {nearest}")));
+            let message = format!(
+                "angle = {angle} stretches the faces beyond what {} carries",
+                law.name()
+            );
+            return Err(refuse(
+                "angle",
+                message,
+                format!("nearest admissible value: {nearest}"),
+            ));
         }
         let moment = |points| {
             let sum = integral((0.0, face), points, |d| law.at(d, 0.0).hoop * d.sinh());
@@ -102,7 +114,9 @@ impl BentBlock {
             sum * length / bend
         };
         let (m, e) = (moment(POINTS), energy(POINTS));
-        let quadrature = (moment(CHECK_POINTS) / m - 1.0).abs().max((energy(CHECK_POINTS) / e - 1.0).abs());
+        let quadrature = (moment(CHECK_POINTS) / m - 1.0)
+            .abs()
+            .max((energy(CHECK_POINTS) / e - 1.0).abs());
         let extent = Extent::SectionAndLength;
         let (radius, whole) = (Dimension::Length, Extent::Whole);
         let totals = vec![
@@ -139,7 +153,10 @@ impl ExactSolution for BentBlock {
         let srr = law.energy - self.face_energy;
         let known = srr.is_finite() && law.hoop.is_finite() && law.axial.is_finite();
         if !(known && point.y.is_finite() && point.z.is_finite()) {
-            let message = format!("the block's formulas have no value at X = {}, Y = {}", point.x, point.y);
+            let message = format!(
+                "the block's formulas have no value at X = {}, Y = {}",
+                point.x, point.y
+            );
             let hint = format!("the block is 0 <= X <= {}", self.thickness);
             return Err(refuse("", message, hint));
         }
@@ -186,7 +203,9 @@ impl ExactSolution for BentBlock {
         Line {
             from: Point::new(0.0, 0.0, 0.0),
             to: Point::new(self.thickness, 0.0, 0.0),
-            columns: &["X", "r", "lambda_r", "lambda_t", "srr", "stt", "szz", "p", "W"],
+            columns: &[
+                "X", "r", "lambda_r", "lambda_t", "srr", "stt", "szz", "p", "W",
+            ],
         }
     }
 
@@ -261,7 +280,11 @@ mod tests {
         let expected = 4.0 / 12.0 * 1e-5;
         assert!((total(&beam, 2) / expected - 1.0).abs() < 1e-9);
         let neo = block(2.0, 3.0, 2.5, law(0)).unwrap();
-        assert_eq!(total(&neo, 2), total(&block(2.0, 3.0, 2.5, law(1)).unwrap(), 2), "c10 + c01 alone in plane strain");
+        assert_eq!(
+            total(&neo, 2),
+            total(&block(2.0, 3.0, 2.5, law(1)).unwrap(), 2),
+            "c10 + c01 alone in plane strain"
+        );
     }
 
     proptest::proptest! {
@@ -324,8 +347,17 @@ mod tests {
         check(block(1.0, f64::NAN, 1.0, law(0)), "length");
         let stiff = Material::incompressible(Demiray { c: 1.0, b: 1e4 });
         let refusal = block(1.0, 1.0, 3.0, stiff.clone()).unwrap_err();
-        let nearest: f64 = refusal.hint.split(' ').next_back().unwrap().parse().unwrap();
-        assert!(block(1.0, 1.0, 0.9999 * nearest, stiff).is_ok(), "{refusal:?}");
+        let nearest: f64 = refusal
+            .hint
+            .split(' ')
+            .next_back()
+            .unwrap()
+            .parse()
+            .unwrap();
+        assert!(
+            block(1.0, 1.0, 0.9999 * nearest, stiff).is_ok(),
+            "{refusal:?}"
+        );
         let found = block(1.0, 2.0, 1.0, law(0)).unwrap();
         assert!(found.at(Point::new(-3.0, 0.0, 0.0)).is_err());
         assert!(found.at(Point::new(0.5, f64::NAN, 0.0)).is_err());

@@ -25,7 +25,11 @@ const STRETCH: &[ParameterEntry] = &[ParameterEntry::required(
     "length over reference length; at small strain the strain is stretch - 1",
 )];
 
-const fn mode(name: &'static str, keys: &'static [ParameterEntry], meaning: &'static str) -> ParameterEntry {
+const fn mode(
+    name: &'static str,
+    keys: &'static [ParameterEntry],
+    meaning: &'static str,
+) -> ParameterEntry {
     ParameterEntry::optional(name, Form::Block(keys), "", meaning)
 }
 
@@ -33,9 +37,21 @@ pub(super) const ENTRY: Entry = Entry {
     name: NAME,
     title: "Homogeneous deformation of any body: patch test at finite or small strain",
     parameters: &[
-        mode("uniaxial", STRETCH, "stretch along X; Y and Z free of traction"),
-        mode("equibiaxial", STRETCH, "the same stretch along X and Y; Z free of traction"),
-        mode("planar", STRETCH, "stretch along X; Z held at its length, Y free of traction"),
+        mode(
+            "uniaxial",
+            STRETCH,
+            "stretch along X; Y and Z free of traction",
+        ),
+        mode(
+            "equibiaxial",
+            STRETCH,
+            "the same stretch along X and Y; Z free of traction",
+        ),
+        mode(
+            "planar",
+            STRETCH,
+            "stretch along X; Z held at its length, Y free of traction",
+        ),
         mode(
             "simple-shear",
             &[ParameterEntry::required(
@@ -100,13 +116,24 @@ impl Homogeneous {
             }
             Material::LinearElastic(law) => uniform::linear(law, mode)?,
             Material::ElasticPlastic(_) => {
-                let message = format!("a homogeneous deformation of {} is not among the exact solutions", material.name());
+                let message = format!(
+                    "a homogeneous deformation of {} is not among the exact solutions",
+                    material.name()
+                );
                 return Err(refuse("material", message, "use an elastic law"));
             }
         };
-        if !(state.stress.is_finite() && state.energy.is_finite() && state.volume_ratio.is_finite()) {
-            let message = format!("{} has no stress at this deformation: it is beyond the law's range", material.in_words());
-            return Err(refuse(word_of(mode), message, "choose a smaller deformation"));
+        if !(state.stress.is_finite() && state.energy.is_finite() && state.volume_ratio.is_finite())
+        {
+            let message = format!(
+                "{} has no stress at this deformation: it is beyond the law's range",
+                material.in_words()
+            );
+            return Err(refuse(
+                word_of(mode),
+                message,
+                "choose a smaller deformation",
+            ));
         }
         Ok(Self {
             mode,
@@ -115,7 +142,8 @@ impl Homogeneous {
                 Material::LinearElastic(_) => Kinematics::SmallStrain,
                 _ => Kinematics::Finite,
             },
-            preserves_volume: material.bulk_modulus().is_infinite() || material.poisson_ratio() == 0.5,
+            preserves_volume: material.bulk_modulus().is_infinite()
+                || material.poisson_ratio() == 0.5,
         })
     }
 }
@@ -132,14 +160,27 @@ fn word_of(mode: Mode) -> &'static str {
 }
 
 fn mode_of(given: &Given) -> Result<Mode, Refusal> {
-    let words = ["uniaxial", "equibiaxial", "planar", "simple-shear", "triaxial"];
-    let found: Vec<_> = words.into_iter().filter(|w| given.block(w).is_some()).collect();
+    let words = [
+        "uniaxial",
+        "equibiaxial",
+        "planar",
+        "simple-shear",
+        "triaxial",
+    ];
+    let found: Vec<_> = words
+        .into_iter()
+        .filter(|w| given.block(w).is_some())
+        .collect();
     let [word] = found[..] else {
         let message = match found.len() {
             0 => "no deformation is given".to_string(),
             _ => format!("more than one deformation is given: {}", found.join(", ")),
         };
-        return Err(refuse("", message, format!("give one of {}", words.join(", "))));
+        return Err(refuse(
+            "",
+            message,
+            format!("give one of {}", words.join(", ")),
+        ));
     };
     let Some(block) = given.block(word) else {
         return Err(refuse("", format!("{word} is missing"), ""));
@@ -157,7 +198,11 @@ fn three(block: &Given) -> Result<[f64; 3], Refusal> {
     let list = block.numbers("stretches")?;
     let Ok(three) = <[f64; 3]>::try_from(list) else {
         let message = format!("stretches has {} numbers", list.len());
-        return Err(refuse("stretches", message, "three are wanted: along X, Y and Z"));
+        return Err(refuse(
+            "stretches",
+            message,
+            "three are wanted: along X, Y and Z",
+        ));
     };
     if let Some(odd) = three.iter().find(|l| **l <= 0.0) {
         let message = format!("stretches holds {odd}, which is not positive");
@@ -171,7 +216,10 @@ impl ExactSolution for Homogeneous {
         let place = Vector3::new(point.x, point.y, point.z);
         let state = &self.state;
         if !place.iter().all(|x| x.is_finite()) {
-            let message = format!("there is no value at X = {}, Y = {}, Z = {}", point.x, point.y, point.z);
+            let message = format!(
+                "there is no value at X = {}, Y = {}, Z = {}",
+                point.x, point.y, point.z
+            );
             return Err(refuse("", message, ""));
         }
         Ok(State {
@@ -229,11 +277,26 @@ impl ExactSolution for Homogeneous {
 
     fn description(&self, _units: &UnitSystem) -> Description {
         let (load, free) = match self.mode {
-            Mode::Uniaxial(l) => (format!("stretched to {l} along X"), "Y and Z free of traction"),
-            Mode::Equibiaxial(l) => (format!("stretched to {l} along X and Y"), "Z free of traction"),
-            Mode::Planar(l) => (format!("stretched to {l} along X, held at its length along Z"), "Y free of traction"),
-            Mode::Shear(k) => (format!("simple shear x = X + {k} Y"), "every side carries the uniform stress"),
-            Mode::Triaxial([x, y, z]) => (format!("stretched to {x}, {y}, {z} along X, Y, Z"), "every side carries the uniform stress"),
+            Mode::Uniaxial(l) => (
+                format!("stretched to {l} along X"),
+                "Y and Z free of traction",
+            ),
+            Mode::Equibiaxial(l) => (
+                format!("stretched to {l} along X and Y"),
+                "Z free of traction",
+            ),
+            Mode::Planar(l) => (
+                format!("stretched to {l} along X, held at its length along Z"),
+                "Y free of traction",
+            ),
+            Mode::Shear(k) => (
+                format!("simple shear x = X + {k} Y"),
+                "every side carries the uniform stress",
+            ),
+            Mode::Triaxial([x, y, z]) => (
+                format!("stretched to {x}, {y}, {z} along X, Y, Z"),
+                "every side carries the uniform stress",
+            ),
         };
         let mut modelling = vec![
             "any body and any mesh, distorted elements too; patch test: prescribe u = (F - I) X on the whole boundary, or on some sides with \

@@ -3,7 +3,8 @@
 use super::*;
 use crate::exact::given::Value;
 use crate::materials::{
-    Compressible, CompressibleNeoHookean, LinearElastic, MooneyRivlin, NeoHookean, Volumetric, VolumetricForm, Yeoh,
+    Compressible, CompressibleNeoHookean, LinearElastic, MooneyRivlin, NeoHookean, Volumetric,
+    VolumetricForm, Yeoh,
 };
 use std::sync::Arc;
 
@@ -36,7 +37,10 @@ fn steel(nu: f64) -> Material {
 
 #[track_caller]
 fn near(got: f64, expected: f64, relative: f64) {
-    assert!((got - expected).abs() <= relative * expected.abs().max(1e-300), "{got} is not {expected}");
+    assert!(
+        (got - expected).abs() <= relative * expected.abs().max(1e-300),
+        "{got} is not {expected}"
+    );
 }
 
 // Mooney-Rivlin c10 = 0.3, c01 = 0.2 at stretch 2: uniaxial 2 (4 - 1/2)(0.3 + 0.1), equibiaxial 2 (4 - 1/16)(0.3 + 0.2 4),
@@ -53,22 +57,38 @@ fn textbook_numbers() {
     near(planar.xx, 3.75, 4e-15);
     near(planar.zz, 1.65, 4e-15);
     let shear = stress("simple-shear", &[2.0]);
-    for (got, exact) in [(shear.xy, 2.0), (shear.xx - shear.yy, 4.0), (shear.zz - shear.yy, 1.6), (shear.zz, 0.0)] {
+    for (got, exact) in [
+        (shear.xy, 2.0),
+        (shear.xx - shear.yy, 4.0),
+        (shear.zz - shear.yy, 1.6),
+        (shear.zz, 0.0),
+    ] {
         assert!((got - exact).abs() < 4e-15, "{got} {exact}");
     }
     let triaxial = stress("triaxial", &[2.0, 0.5, 1.0]);
     near(triaxial.xx - triaxial.yy, 3.75, 4e-15);
     near(triaxial.xx, 3.75 - 1.65, 8e-15);
     // a strain of 1e-9 keeps its digits: 3 mu strain (1 + strain) to first order and more
-    near(stress("uniaxial", &[1.0 + 2f64.powi(-30)]).xx, 3.0 * 2f64.powi(-30), 2e-9);
+    near(
+        stress("uniaxial", &[1.0 + 2f64.powi(-30)]).xx,
+        3.0 * 2f64.powi(-30),
+        2e-9,
+    );
 }
 
 fn materials() -> Vec<Material> {
     let mut list = vec![
         rubber(),
         Material::incompressible(NeoHookean { mu: 1.0 }),
-        Material::incompressible(Yeoh { c10: 0.5, c20: 0.01, c30: 1e-3 }),
-        Material::Compressible(Compressible::Coupled(CompressibleNeoHookean { mu: 1.0, lambda: 2.0 })),
+        Material::incompressible(Yeoh {
+            c10: 0.5,
+            c20: 0.01,
+            c30: 1e-3,
+        }),
+        Material::Compressible(Compressible::Coupled(CompressibleNeoHookean {
+            mu: 1.0,
+            lambda: 2.0,
+        })),
         steel(0.3),
         steel(0.5),
         steel(-0.4),
@@ -98,9 +118,13 @@ fn work_of_the_prescribed_directions_is_the_energy() {
                     "equibiaxial" => j * (s.xx / l[0] + s.yy / l[1]),
                     _ => j * s.xx / l[0],
                 };
-                assert!((slope - exact).abs() < 1e-6 * exact.abs() + 1e-9, "{material:?} {word} {number}: {slope} {exact}");
+                assert!(
+                    (slope - exact).abs() < 1e-6 * exact.abs() + 1e-9,
+                    "{material:?} {word} {number}: {slope} {exact}"
+                );
                 if !small {
-                    let determinant = (nalgebra::Matrix3::identity() + state.gradient).determinant();
+                    let determinant =
+                        (nalgebra::Matrix3::identity() + state.gradient).determinant();
                     near(determinant, state.volume_ratio, 1e-14);
                 }
                 let free = match word {
@@ -122,7 +146,9 @@ fn three_stretches_give_the_state_back() {
         for word in ["uniaxial", "equibiaxial", "planar"] {
             let one = built(word, &[1.4], material.clone()).unwrap().state;
             let mut stretches = one.stretches;
-            if material.bulk_modulus().is_infinite() && !matches!(material, Material::LinearElastic(_)) {
+            if material.bulk_modulus().is_infinite()
+                && !matches!(material, Material::LinearElastic(_))
+            {
                 stretches[2] = 1.0 / (stretches[0] * stretches[1]);
             }
             if material.bulk_modulus() > 1e5 {
@@ -132,9 +158,19 @@ fn three_stretches_give_the_state_back() {
                 panic!("{material:?} {word} {stretches:?}")
             };
             // the pressure of what preserves volume is fixed by another direction
-            let shift = if three.preserves_volume { one.stress.zz - three.state.stress.zz } else { 0.0 };
-            for (x, y) in one.stress.to_array()[..3].iter().zip(&three.state.stress.to_array()[..3]) {
-                assert!((x - y - shift).abs() < 1e-13 * one.stress.xx.abs(), "{material:?} {word}");
+            let shift = if three.preserves_volume {
+                one.stress.zz - three.state.stress.zz
+            } else {
+                0.0
+            };
+            for (x, y) in one.stress.to_array()[..3]
+                .iter()
+                .zip(&three.state.stress.to_array()[..3])
+            {
+                assert!(
+                    (x - y - shift).abs() < 1e-13 * one.stress.xx.abs(),
+                    "{material:?} {word}"
+                );
             }
             assert!((three.state.energy / one.energy - 1.0).abs() < 1e-13);
         }
@@ -145,13 +181,26 @@ fn three_stretches_give_the_state_back() {
 #[test]
 fn limits_of_the_laws() {
     for word in ["uniaxial", "equibiaxial", "planar", "simple-shear"] {
-        let stress = |material: Material, x: f64| built(word, &[x], material).unwrap().state.stress.to_array();
-        let (stiff, rigid) = (stress(split(1e9, VolumetricForm::Quadratic), 1.6), stress(rubber(), 1.6));
+        let stress = |material: Material, x: f64| {
+            built(word, &[x], material).unwrap().state.stress.to_array()
+        };
+        let (stiff, rigid) = (
+            stress(split(1e9, VolumetricForm::Quadratic), 1.6),
+            stress(rubber(), 1.6),
+        );
         for i in 0..4 {
-            let shift = if word == "simple-shear" && i < 3 { stiff[2] } else { 0.0 };
+            let shift = if word == "simple-shear" && i < 3 {
+                stiff[2]
+            } else {
+                0.0
+            };
             assert!((stiff[i] - shift - rigid[i]).abs() < 1e-7, "{word} {i}");
         }
-        let small = if word == "simple-shear" { 1e-7 } else { 1.0 + 1e-7 };
+        let small = if word == "simple-shear" {
+            1e-7
+        } else {
+            1.0 + 1e-7
+        };
         for material in [split(5.0, VolumetricForm::LogSquared), rubber()] {
             let hooke = Material::LinearElastic(LinearElastic {
                 e: material.young_modulus(),
@@ -172,17 +221,46 @@ fn what_is_no_deformation_is_refused() {
         assert!(refusal.message.contains(says), "{refusal}");
     };
     check(built("uniaxial", &[0.0], rubber()), "stretch", "positive");
-    check(built("uniaxial", &[f64::NAN], rubber()), "stretch", "finite");
-    check(built("triaxial", &[1.1, 1.1, 1.1], rubber()), "stretches", "preserves");
-    check(built("triaxial", &[1.1, 1.1, 1.1], steel(0.5)), "stretches", "preserves");
-    check(built("triaxial", &[1.1, 1.1], rubber()), "stretches", "2 numbers");
-    check(built("triaxial", &[1.1, 1.1, -1.0], steel(0.3)), "stretches", "not positive");
+    check(
+        built("uniaxial", &[f64::NAN], rubber()),
+        "stretch",
+        "finite",
+    );
+    check(
+        built("triaxial", &[1.1, 1.1, 1.1], rubber()),
+        "stretches",
+        "preserves",
+    );
+    check(
+        built("triaxial", &[1.1, 1.1, 1.1], steel(0.5)),
+        "stretches",
+        "preserves",
+    );
+    check(
+        built("triaxial", &[1.1, 1.1], rubber()),
+        "stretches",
+        "2 numbers",
+    );
+    check(
+        built("triaxial", &[1.1, 1.1, -1.0], steel(0.3)),
+        "stretches",
+        "not positive",
+    );
     let stiff = Material::incompressible(crate::materials::Demiray { c: 1.0, b: 1e4 });
     check(built("uniaxial", &[3.0], stiff), "uniaxial", "no stress");
     let none = Given::default().with("material", Value::Material(rubber()));
     check(Homogeneous::new(&none), "", "no deformation");
     let block = || Value::Block(Given::default().number("stretch", 1.1));
-    check(Homogeneous::new(&none.clone().with("uniaxial", block()).with("planar", block())), "", "uniaxial, planar");
+    check(
+        Homogeneous::new(
+            &none
+                .clone()
+                .with("uniaxial", block())
+                .with("planar", block()),
+        ),
+        "",
+        "uniaxial, planar",
+    );
     let found = built("simple-shear", &[0.5], rubber()).unwrap();
     let state = found.at(Point::new(1.0, 2.0, 3.0)).unwrap();
     assert_eq!(state.displacement, Vector3::new(1.0, 0.0, 0.0));

@@ -103,7 +103,9 @@ pub(super) fn incompressible(law: &dyn IncompressibleLaw, mode: Mode) -> Result<
         Mode::Uniaxial(_) => (0.0, logs[0], |_, axial| [axial, 0.0, 0.0]),
         Mode::Equibiaxial(_) => (0.0, logs[2], |_, axial| [-axial, -axial, 0.0]),
         Mode::Planar(_) => (2.0 * logs[0], 0.0, |hoop, axial| [hoop, 0.0, axial]),
-        _ => (logs[1] - logs[0], logs[2], |hoop, axial| [-axial, hoop - axial, 0.0]),
+        _ => (logs[1] - logs[0], logs[2], |hoop, axial| {
+            [-axial, hoop - axial, 0.0]
+        }),
     };
     let found = law.at(d, e);
     let loss = law.hardening(d, e).loss;
@@ -126,7 +128,11 @@ fn preserved(l: [f64; 3]) -> Result<[f64; 3], Refusal> {
             l[2],
             rounded(change.exp(), 15)
         );
-        return Err(refuse("stretches", message, format!("nearest admissible value: [{}, {}, {z}]", l[0], l[1])));
+        return Err(refuse(
+            "stretches",
+            message,
+            format!("nearest admissible value: [{}, {}, {z}]", l[0], l[1]),
+        ));
     }
     Ok([logs[0], logs[1], -logs[0] - logs[1]])
 }
@@ -217,7 +223,10 @@ impl Free<'_> {
         for i in 1..=steps as usize {
             let given = target * (i as f64 / steps);
             lam = self.newton(given, lam).ok_or_else(|| {
-                let message = format!("no state with free sides was found beyond a stretch of {}", rounded(f64::exp(done), 6));
+                let message = format!(
+                    "no state with free sides was found beyond a stretch of {}",
+                    rounded(f64::exp(done), 6)
+                );
                 refuse("stretch", message, "choose a stretch nearer to 1")
             })?;
             done = given;
@@ -273,7 +282,11 @@ pub(super) fn linear(law: &LinearElastic, mode: Mode) -> Result<Uniform, Refusal
         }
         Mode::Triaxial(l) => hooke(law, l.map(|l| l - 1.0))?,
     };
-    let trace = if law.compressibility() == 0.0 { 0.0 } else { strain.iter().sum() };
+    let trace = if law.compressibility() == 0.0 {
+        0.0
+    } else {
+        strain.iter().sum()
+    };
     Ok(Uniform {
         gradient: Matrix3::from_diagonal(&Vector3::from(strain)),
         stretches: strain.map(|x| 1.0 + x),
@@ -294,8 +307,14 @@ fn hooke(law: &LinearElastic, strain: [f64; 3]) -> Result<([f64; 3], [f64; 3]), 
     }
     let largest = strain.iter().fold(0.0_f64, |m, x| m.max(x.abs()));
     if trace.abs() > 1e-12 * largest {
-        let message = format!("stretches change the volume by {trace:e}, but nu = 0.5 preserves it");
-        let hint = format!("nearest admissible value: [{}, {}, {}]", 1.0 + strain[0], 1.0 + strain[1], 1.0 - strain[0] - strain[1]);
+        let message =
+            format!("stretches change the volume by {trace:e}, but nu = 0.5 preserves it");
+        let hint = format!(
+            "nearest admissible value: [{}, {}, {}]",
+            1.0 + strain[0],
+            1.0 + strain[1],
+            1.0 - strain[0] - strain[1]
+        );
         return Err(refuse("stretches", message, hint));
     }
     Ok((strain, strain.map(|x| two_mu * (x - strain[2]))))

@@ -105,9 +105,7 @@ impl Curve {
 
     /// d at the outer wall.
     pub fn outer_difference(&self, d: f64) -> f64 {
-        log1p_or(d.exp_m1() * self.ratio, || {
-            self.rest + self.ratio * d.exp()
-        })
+        log1p_or(d.exp_m1() * self.ratio, || self.rest + self.ratio * d.exp())
     }
 
     /// k A^3/(B^3 + k A^3).
@@ -198,7 +196,9 @@ impl Curve {
         let count = end.abs().ceil().max(1.0);
         let cut = |i: f64| end * (i / count);
         let pieces = (0..count as usize).map(|i| (cut(i as f64), cut(i as f64 + 1.0)));
-        let ends: Vec<f64> = pieces.flat_map(|piece| panels_in_noise(piece, &mut f)).collect();
+        let ends: Vec<f64> = pieces
+            .flat_map(|piece| panels_in_noise(piece, &mut f))
+            .collect();
         // the slope is positive at rest: a stable law stiffens against the first pressure
         let (mut last, mut sign) = (0.0, 1.0);
         for panel in ends.windows(2) {

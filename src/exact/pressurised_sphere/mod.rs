@@ -90,7 +90,11 @@ impl PressurisedSphere {
         let solved = branches.solve(&curve, branch, loads)?;
         let mean = mean_of(&curve, solved.d).ok_or_else(|| {
             let message = "the stress in the wall varies too steeply to be tabled to round-off";
-            refuse("inner-pressure", message.to_string(), "choose a smaller load")
+            refuse(
+                "inner-pressure",
+                message.to_string(),
+                "choose a smaller load",
+            )
         })?;
         let totals = demands::finite(totals_of(&curve, &solved, &branches, loads.1))?;
         let mut sphere = Self {
@@ -116,7 +120,9 @@ impl PressurisedSphere {
         let place = self.curve.place(self.d, radius)?;
         let d = self.outer_difference + place;
         let law = self.curve.law.at(d, d / 3.0);
-        let mean = self.mean.value(place, |x| self.curve.density(self.outer_difference + x));
+        let mean = self
+            .mean
+            .value(place, |x| self.curve.density(self.outer_difference + x));
         let radial = -self.loads.1 - place * mean;
         let known = radial.is_finite() && law.hoop.is_finite() && law.energy.is_finite();
         known.then_some(Local {
@@ -129,7 +135,10 @@ impl PressurisedSphere {
 
     fn bound_of(&self, solved: &Solved) -> Result<ErrorBound, Refusal> {
         let round_off = 8.0 * f64::EPSILON;
-        let (mut moved, mut stressed) = ((0.0_f64, 0.0_f64), (0.0_f64, self.loads.0.abs().max(self.loads.1.abs())));
+        let (mut moved, mut stressed) = (
+            (0.0_f64, 0.0_f64),
+            (0.0_f64, self.loads.0.abs().max(self.loads.1.abs())),
+        );
         for radius in [self.curve.inner, self.curve.outer] {
             let local = self.state(radius).ok_or_else(|| self.no_value(radius))?;
             let stretch = (local.d / 3.0).exp();
@@ -144,7 +153,10 @@ impl PressurisedSphere {
                 + 4.0 * f64::EPSILON * lost * local.hoop.abs()
                 + solved.p_error;
             stressed.0 = stressed.0.max(error);
-            stressed.1 = stressed.1.max(local.radial.abs()).max((local.radial + local.hoop).abs());
+            stressed.1 = stressed
+                .1
+                .max(local.radial.abs())
+                .max((local.radial + local.hoop).abs());
         }
         let relative = |(error, size): (f64, f64)| if size == 0.0 { 0.0 } else { error / size };
         let energy = self.curve.energy(self.d, POINTS);
@@ -152,7 +164,8 @@ impl PressurisedSphere {
         let volume = 4.0 / 3.0 * PI * self.curve.inner.powi(3) * self.d.exp();
         let work = (volume * (self.loads.0 - self.loads.1)).abs() * solved.d_error;
         Ok(ErrorBound {
-            displacement: round_off + relative(moved),
+            // a stretch changes by up to two thirds of what d does
+            displacement: round_off + (2.0 * relative(moved)).max(solved.d_error),
             stress: round_off + relative(stressed),
             totals: round_off + solved.d_error + relative((work + (energy - check).abs(), energy)),
         })
@@ -195,16 +208,31 @@ fn mean_of(curve: &Curve, d: f64) -> Option<RunningMean> {
     RunningMean::fit(0.0, span, wanted, |x| curve.density(from + x))
 }
 
-fn totals_of(curve: &Curve, solved: &Solved, branches: &Branches, outer_pressure: f64) -> Vec<Total> {
+fn totals_of(
+    curve: &Curve,
+    solved: &Solved,
+    branches: &Branches,
+    outer_pressure: f64,
+) -> Vec<Total> {
     let (length, whole) = (Dimension::Length, Extent::Whole);
     let outer = curve.outer * (curve.outer_difference(solved.d) / 3.0).exp();
     let volume = 4.0 / 3.0 * PI * curve.inner.powi(3) * solved.d.exp();
     let energy = curve.energy(solved.d, POINTS);
     vec![
-        demands::total("inner_radius", curve.inner * (solved.d / 3.0).exp(), length, whole),
+        demands::total(
+            "inner_radius",
+            curve.inner * (solved.d / 3.0).exp(),
+            length,
+            whole,
+        ),
         demands::total("outer_radius", outer, length, whole),
         demands::total("strain_energy", energy, Dimension::Energy, Extent::Section),
-        demands::total("enclosed_volume", volume, Dimension::Volume, Extent::Section),
+        demands::total(
+            "enclosed_volume",
+            volume,
+            Dimension::Volume,
+            Extent::Section,
+        ),
         Total {
             name: "limit_pressure",
             value: branches.limit(curve, outer_pressure),
@@ -267,7 +295,11 @@ impl ExactSolution for PressurisedSphere {
         format!(
             "equilibrium as a Gauss integral over ln(hoop/radial stretch), bracketed root on branch {}; {}; stated bound on the \
              relative error: displacement {:.1e}, stress {:.1e}, totals {:.1e}",
-            self.branch, self.turning_points, self.bound.displacement, self.bound.stress, self.bound.totals
+            self.branch,
+            self.turning_points,
+            self.bound.displacement,
+            self.bound.stress,
+            self.bound.totals
         )
     }
 
@@ -283,8 +315,10 @@ impl ExactSolution for PressurisedSphere {
             n => format!("; branch {n} of the states at this pressure"),
         };
         let mut modelling = vec![
-            "the load is normal to the deformed surface, per deformed area (a follower load)".to_string(),
-            "any part cut by planes through the centre: no displacement normal to a cut".to_string(),
+            "the load is normal to the deformed surface, per deformed area (a follower load)"
+                .to_string(),
+            "any part cut by planes through the centre: no displacement normal to a cut"
+                .to_string(),
             "axisymmetric: the section of the sphere in a plane through the axis".to_string(),
         ];
         if self.branch > 1 {

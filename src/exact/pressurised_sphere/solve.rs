@@ -107,8 +107,13 @@ impl Branches {
         let difference = inner_pressure - outer_pressure;
         let Some((lower, upper)) = self.piece(number, curve.range) else {
             let count = self.turns.len() + 1;
-            let message = format!("branch = {number}, but the sphere has {count} within the range searched");
-            return Err(refuse("branch", message, format!("nearest admissible value: {count}")));
+            let message =
+                format!("branch = {number}, but the sphere has {count} within the range searched");
+            return Err(refuse(
+                "branch",
+                message,
+                format!("nearest admissible value: {count}"),
+            ));
         };
         let off = |d: f64| curve.pressure(d, POINTS).value - difference;
         // on the first branch the sign of the load says on which side of rest the state is
@@ -122,8 +127,14 @@ impl Branches {
         }
         let scale = difference.abs().max(curve.law.shear_modulus());
         let (from, to) = tamed((lower, upper), scale, off);
-        let d = find_root(from, to, off)
-            .map_err(|_| self.beyond(curve, number, (inner_pressure, outer_pressure), (lower, upper)))?;
+        let d = find_root(from, to, off).map_err(|_| {
+            self.beyond(
+                curve,
+                number,
+                (inner_pressure, outer_pressure),
+                (lower, upper),
+            )
+        })?;
         Ok(errors(curve, polished(curve, d, difference), difference))
     }
 
@@ -155,8 +166,16 @@ impl Branches {
             ),
             _ => format!("inner-pressure = {inner} is not on branch {number}, which runs {range}"),
         };
-        let parameter = if number == 1 { "inner-pressure" } else { "branch" };
-        refuse(parameter, message, format!("nearest admissible inner-pressure: {nearest}"))
+        let parameter = if number == 1 {
+            "inner-pressure"
+        } else {
+            "branch"
+        };
+        refuse(
+            parameter,
+            message,
+            format!("nearest admissible inner-pressure: {nearest}"),
+        )
     }
 }
 
@@ -201,7 +220,11 @@ fn errors(curve: &Curve, d: f64, difference: f64) -> Solved {
     let plain = p_error / curve.slope(d).value.abs();
     Solved {
         d,
-        d_error: if near_a_turn.is_nan() { plain } else { plain.min(2.0 * near_a_turn) },
+        d_error: if near_a_turn.is_nan() {
+            plain
+        } else {
+            plain.min(2.0 * near_a_turn)
+        },
         p_error,
     }
 }

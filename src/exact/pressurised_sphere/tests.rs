@@ -20,7 +20,10 @@ fn soft() -> Material {
 }
 
 fn rubber() -> Material {
-    Material::incompressible(MooneyRivlin { c10: 0.47, c01: 0.03 })
+    Material::incompressible(MooneyRivlin {
+        c10: 0.47,
+        c01: 0.03,
+    })
 }
 
 fn total(sphere: &PressurisedSphere, name: &str) -> f64 {
@@ -68,7 +71,9 @@ fn neo_hookean_spheres_are_the_closed_form_on_both_branches() {
 #[test]
 fn one_pressure_has_three_states() {
     let at = |branch| PressurisedSphere::new(&given((1.0, 1.2), rubber(), (0.19, 0.0), branch));
-    let bores: Vec<_> = (1..=3).map(|b| total(&at(b).unwrap(), "inner_radius")).collect();
+    let bores: Vec<_> = (1..=3)
+        .map(|b| total(&at(b).unwrap(), "inner_radius"))
+        .collect();
     assert!(bores[0] < bores[1] && bores[1] < bores[2], "{bores:?}");
     for branch in 1..=3 {
         let sphere = at(branch).unwrap();
@@ -76,15 +81,28 @@ fn one_pressure_has_three_states() {
         near(-inner.local_stress.xx, 0.19, 1e-13);
     }
     let refusal = at(4).unwrap_err();
-    assert!(refusal.parameter == "branch" && refusal.hint.contains('3'), "{refusal:?}");
+    assert!(
+        refusal.parameter == "branch" && refusal.hint.contains('3'),
+        "{refusal:?}"
+    );
 }
 
 fn laws() -> Vec<Arc<dyn IncompressibleLaw>> {
     vec![
         Arc::new(NeoHookean { mu: 1.0 }),
-        Arc::new(MooneyRivlin { c10: 0.47, c01: 0.03 }),
-        Arc::new(MooneyRivlin { c10: 0.25, c01: 0.25 }),
-        Arc::new(Yeoh { c10: 0.5, c20: -0.01, c30: 1e-3 }),
+        Arc::new(MooneyRivlin {
+            c10: 0.47,
+            c01: 0.03,
+        }),
+        Arc::new(MooneyRivlin {
+            c10: 0.25,
+            c01: 0.25,
+        }),
+        Arc::new(Yeoh {
+            c10: 0.5,
+            c20: -0.01,
+            c30: 1e-3,
+        }),
         Arc::new(Demiray { c: 0.4, b: 2.0 }),
     ]
 }
@@ -103,7 +121,11 @@ fn turning_points_are_where_the_slope_changes_sign() {
                 .map(grid)
                 .collect();
             let seen: Vec<_> = turns.iter().filter(|d| **d < end).collect();
-            assert_eq!(changes.len(), seen.len(), "{law:?} {ratio} {changes:?} {turns:?}");
+            assert_eq!(
+                changes.len(),
+                seen.len(),
+                "{law:?} {ratio} {changes:?} {turns:?}"
+            );
             for (change, turn) in changes.iter().zip(seen) {
                 assert!((change - turn).abs() < end / 3000.0, "{law:?} {ratio}");
             }
@@ -124,10 +146,16 @@ fn derivatives_of_the_energy_are_the_pressure() {
                 let p = curve.pressure(d, POINTS);
                 let volume = 4.0 / 3.0 * PI * d.exp();
                 let energy = by(&|d| curve.energy(d, POINTS));
-                assert!((energy / (volume * p.value) - 1.0).abs() < 1e-6, "{law:?} {ratio} {d}");
+                assert!(
+                    (energy / (volume * p.value) - 1.0).abs() < 1e-6,
+                    "{law:?} {ratio} {d}"
+                );
                 let slope = by(&|d| curve.pressure(d, POINTS).value);
                 let exact = curve.slope(d);
-                assert!((slope - exact.value).abs() < 1e-8 * exact.size, "{law:?} {ratio} {d}");
+                assert!(
+                    (slope - exact.value).abs() < 1e-8 * exact.size,
+                    "{law:?} {ratio} {d}"
+                );
                 assert!((curve.pressure(d, CHECK_POINTS).value - p.value).abs() <= 4e-15 * p.size);
             }
         }
@@ -183,17 +211,44 @@ fn what_cannot_be_solved_is_refused_with_the_limit() {
         assert!(refusal.message.contains(says), "{refusal}");
     };
     let radii = (1.0, 2.0);
-    check(given(radii, soft(), (0.9, 0.0), 1), "inner-pressure", "the maximum 0.8164236479");
-    check(given(radii, soft(), (0.9, 0.0), 2), "branch", "not on branch 2");
+    check(
+        given(radii, soft(), (0.9, 0.0), 1),
+        "inner-pressure",
+        "the maximum 0.8164236479",
+    );
+    check(
+        given(radii, soft(), (0.9, 0.0), 2),
+        "branch",
+        "not on branch 2",
+    );
     check(given(radii, soft(), (0.1, 0.0), 3), "branch", "has 2");
     check(given(radii, soft(), (0.1, 0.0), 0), "branch", "not one of");
-    check(given((2.0, 2.0), soft(), (0.1, 0.0), 1), "outer-radius", "larger");
-    check(given((0.0, 2.0), soft(), (0.1, 0.0), 1), "inner-radius", "positive");
-    check(given(radii, soft(), (f64::NAN, 0.0), 1), "inner-pressure", "finite");
-    check(given(radii, soft(), (0.0, 1e30), 1), "outer-pressure", "up to which");
+    check(
+        given((2.0, 2.0), soft(), (0.1, 0.0), 1),
+        "outer-radius",
+        "larger",
+    );
+    check(
+        given((0.0, 2.0), soft(), (0.1, 0.0), 1),
+        "inner-radius",
+        "positive",
+    );
+    check(
+        given(radii, soft(), (f64::NAN, 0.0), 1),
+        "inner-pressure",
+        "finite",
+    );
+    check(
+        given(radii, soft(), (0.0, 1e30), 1),
+        "outer-pressure",
+        "up to which",
+    );
     let rest = PressurisedSphere::new(&given(radii, soft(), (0.3, 0.3), 1)).unwrap();
     assert!(rest.at(Point::new(0.0, 0.0, 0.0)).is_err());
     assert!(rest.at(Point::new(f64::NAN, 0.0, 1.0)).is_err());
     let state = rest.at(Point::new(0.0, 1.1, 1.1)).unwrap();
-    assert_eq!((state.displacement.norm(), state.local_stress.yy), (0.0, -0.3));
+    assert_eq!(
+        (state.displacement.norm(), state.local_stress.yy),
+        (0.0, -0.3)
+    );
 }

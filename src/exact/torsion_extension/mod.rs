@@ -141,7 +141,11 @@ fn either(given: &Given, names: [&'static str; 2]) -> Result<(usize, f64), Refus
         [true, false] => Ok((0, given.finite(names[0])?)),
         [false, true] => Ok((1, given.finite(names[1])?)),
         [both, _] => {
-            let what = if both { "both are given" } else { "neither is given" };
+            let what = if both {
+                "both are given"
+            } else {
+                "neither is given"
+            };
             let message = format!("{} or {}: {what}", names[0], names[1]);
             Err(refuse(names[0], message, "give one of them"))
         }
@@ -157,10 +161,17 @@ fn loads_of(given: &Given, solid: bool) -> Result<Loads, Refusal> {
         (0, twist) => Turn::Twist(twist),
         (_, torque) => Turn::Torque(torque),
     };
-    let walls = (given.finite_or("inner-pressure", 0.0)?, given.finite_or("outer-pressure", 0.0)?);
+    let walls = (
+        given.finite_or("inner-pressure", 0.0)?,
+        given.finite_or("outer-pressure", 0.0)?,
+    );
     if solid && walls.0 != 0.0 {
         let message = format!("inner-pressure = {}, but the cylinder is solid", walls.0);
-        return Err(refuse("inner-pressure", message, "give an inner-radius, or no inner-pressure"));
+        return Err(refuse(
+            "inner-pressure",
+            message,
+            "give an inner-radius, or no inner-pressure",
+        ));
     }
     Ok(Loads { axial, turn, walls })
 }
@@ -201,7 +212,12 @@ fn totals_of(section: &Section, loads: &Loads, solved: &Solved) -> Vec<Total> {
         demands::total("axial_force", force, Dimension::Force, Extent::Section),
         demands::total("torque", torque, Dimension::Torque, Extent::Section),
         demands::total("twist", motion.twist, Dimension::PerLength, whole),
-        demands::total("strain_energy", all.energy.value, Dimension::EnergyPerLength, Extent::SectionAndLength),
+        demands::total(
+            "strain_energy",
+            all.energy.value,
+            Dimension::EnergyPerLength,
+            Extent::SectionAndLength,
+        ),
     ];
     if !section.solid() {
         list.insert(0, demands::total("inner_radius", a, length, whole));
@@ -220,7 +236,19 @@ fn bound_of(section: &Section, loads: &Loads, solved: &Solved) -> ErrorBound {
         let (a, b) = section.radii(m);
         let sums = section.integrals(m, &ends, POINTS);
         let force = section.axial_force(m, &sums, loads.walls);
-        [one.hoop, one.axial, one.turning, two.hoop, two.axial, two.turning, a, b, force, sums.torque.value, sums.energy.value]
+        [
+            one.hoop,
+            one.axial,
+            one.turning,
+            two.hoop,
+            two.axial,
+            two.turning,
+            a,
+            b,
+            force,
+            sums.torque.value,
+            sums.energy.value,
+        ]
     };
     let errors = [solved.error.g, solved.error.e, solved.error.twist];
     let here = numbers(&motion);
@@ -233,13 +261,27 @@ fn bound_of(section: &Section, loads: &Loads, solved: &Solved) -> ErrorBound {
         }
     }
     let relative = |error: f64, size: f64| if size == 0.0 { 0.0 } else { error / size };
-    let largest = |range: std::ops::Range<usize>, of: &[f64; 11]| of[range].iter().fold(0.0_f64, |m, x| m.max(x.abs()));
+    let largest = |range: std::ops::Range<usize>, of: &[f64; 11]| {
+        of[range].iter().fold(0.0_f64, |m, x| m.max(x.abs()))
+    };
     let round_off = 16.0 * f64::EPSILON;
-    let loss = section.law.hardening(section.local(&motion, outer).split, section.local(&motion, outer).radial_log).loss;
-    let stress_size = largest(0..6, &here).max(loads.walls.0.abs()).max(loads.walls.1.abs());
-    let moved = (here[6] - section.inner).abs().max((here[7] - section.outer).abs());
+    let loss = section
+        .law
+        .hardening(
+            section.local(&motion, outer).split,
+            section.local(&motion, outer).radial_log,
+        )
+        .loss;
+    let stress_size = largest(0..6, &here)
+        .max(loads.walls.0.abs())
+        .max(loads.walls.1.abs());
+    let moved = (here[6] - section.inner)
+        .abs()
+        .max((here[7] - section.outer).abs());
     ErrorBound {
-        displacement: round_off + relative(largest(6..8, &off), moved) + relative(errors[2], motion.twist.abs()),
+        displacement: round_off
+            + relative(largest(6..8, &off), moved)
+            + relative(errors[2], motion.twist.abs()),
         stress: round_off * (1.0 + loss) + relative(2.0 * largest(0..6, &off), stress_size),
         totals: round_off * (1.0 + loss)
             + errors[1]
@@ -266,10 +308,16 @@ impl ExactSolution for TorsionExtension {
         let (sin, cos) = (motion.twist * point.z).sin_cos();
         // cos(phi) - 1 without cancellation
         let versed = -2.0 * (0.5 * motion.twist * point.z).sin().powi(2);
-        let (hoop, radial, axial) = (local.hoop_log.exp_m1(), local.radial_log.exp_m1(), motion.e.exp_m1());
+        let (hoop, radial, axial) = (
+            local.hoop_log.exp_m1(),
+            local.radial_log.exp_m1(),
+            motion.e.exp_m1(),
+        );
         let stretch = 1.0 + hoop;
         let turn = Matrix3::new(versed, -sin, 0.0, sin, versed, 0.0, 0.0, 0.0, 0.0);
-        let strain = SymTensor::diagonal(radial, hoop, axial).cylindrical_to_cartesian((c, s)).to_matrix();
+        let strain = SymTensor::diagonal(radial, hoop, axial)
+            .cylindrical_to_cartesian((c, s))
+            .to_matrix();
         let (dc, ds) = (c * cos - s * sin, s * cos + c * sin);
         let shear = Vector3::new(-ds, dc, 0.0) * local.shear * Vector3::z().transpose();
         let along = hoop + stretch * versed;
@@ -324,8 +372,13 @@ impl ExactSolution for TorsionExtension {
     }
 
     fn load_stress(&self) -> f64 {
-        let outer = self.section.local(&self.solved.motion, self.section.span().1);
-        outer.turning.abs() + outer.axial.abs() + self.loads.walls.0.abs() + self.loads.walls.1.abs()
+        let outer = self
+            .section
+            .local(&self.solved.motion, self.section.span().1);
+        outer.turning.abs()
+            + outer.axial.abs()
+            + self.loads.walls.0.abs()
+            + self.loads.walls.1.abs()
     }
 
     fn method(&self) -> String {
@@ -345,18 +398,34 @@ impl ExactSolution for TorsionExtension {
         let (a, b) = (self.section.inner, self.section.outer);
         let body = match self.section.solid() {
             true => format!("solid cylinder, radius {b} {length}"),
-            false => format!("hollow cylinder, inner radius {a} {length}, outer radius {b} {length}"),
+            false => {
+                format!("hollow cylinder, inner radius {a} {length}, outer radius {b} {length}")
+            }
         };
         let turn = match self.loads.turn {
-            Turn::Twist(twist) => format!("twisted by {twist} rad per {length} of reference length"),
+            Turn::Twist(twist) => {
+                format!("twisted by {twist} rad per {length} of reference length")
+            }
             Turn::Torque(torque) => format!("torque {torque} {}", units.name_of(Dimension::Torque)),
         };
         let axial = match self.loads.axial {
-            Axial::Stretch(e) => format!("held at the axial stretch {}", demands::rounded(e.exp(), 15)),
+            Axial::Stretch(e) => format!(
+                "held at the axial stretch {}",
+                demands::rounded(e.exp(), 15)
+            ),
             Axial::Force(0.0) => "free to change its length, no net axial force".to_string(),
-            Axial::Force(force) => format!("net axial force {force} {}", units.name_of(Dimension::Force)),
+            Axial::Force(force) => format!(
+                "net axial force {force} {}",
+                units.name_of(Dimension::Force)
+            ),
         };
-        let walls = match pressures([("bore", self.loads.walls.0), ("outer wall", self.loads.walls.1)], units) {
+        let walls = match pressures(
+            [
+                ("bore", self.loads.walls.0),
+                ("outer wall", self.loads.walls.1),
+            ],
+            units,
+        ) {
             none if none.is_empty() => "walls free of traction".to_string(),
             loaded => format!("{loaded}, follows the deformed wall"),
         };

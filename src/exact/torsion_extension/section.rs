@@ -108,7 +108,11 @@ impl Section {
 
     /// Its values at the inner and the outer end.
     pub fn span(&self) -> (f64, f64) {
-        let end = if self.solid() { 1.0 } else { self.coordinate(self.outer) };
+        let end = if self.solid() {
+            1.0
+        } else {
+            self.coordinate(self.outer)
+        };
         (0.0, end)
     }
 
@@ -200,11 +204,18 @@ impl Section {
                 let local = self.local(motion, t);
                 let squares = self.square(t).1;
                 let lost = 1.0 + 3.0 * self.law.hardening(local.split, local.radial_log).loss;
-                let rise = if self.solid() { 0.0 } else { self.rise(motion, t) };
+                let rise = if self.solid() {
+                    0.0
+                } else {
+                    self.rise(motion, t)
+                };
                 let pull = 2.0 * local.axial - local.hoop;
                 let terms = [
                     (rise, local.hoop.abs() + local.axial.abs()),
-                    (pull * squares, (local.hoop.abs() + local.axial.abs()) * squares),
+                    (
+                        pull * squares,
+                        (local.hoop.abs() + local.axial.abs()) * squares,
+                    ),
                     (local.turning * local.radius * squares, 0.0),
                     (local.energy * squares, 0.0),
                 ];

@@ -110,7 +110,10 @@ impl Equations<'_> {
         }
         if let Turn::Torque(torque) = self.loads.turn {
             let unit = area * section.outer;
-            list.push(((all.torque.value - torque) / unit, (all.torque.size + torque.abs()) / unit));
+            list.push((
+                (all.torque.value - torque) / unit,
+                (all.torque.size + torque.abs()) / unit,
+            ));
         }
         list
     }
@@ -126,7 +129,12 @@ impl Equations<'_> {
         let n = unknown.len();
         let mut matrix = nalgebra::DMatrix::zeros(n, n);
         for (column, &i) in unknown.iter().enumerate() {
-            let h = 1e-5 * if i == 2 { 1.0 / self.section.outer } else { 1.0 };
+            let h = 1e-5
+                * if i == 2 {
+                    1.0 / self.section.outer
+                } else {
+                    1.0
+                };
             let up = self.at(&motion.moved(i, h), ends);
             let down = self.at(&motion.moved(i, -h), ends);
             for row in 0..n {
@@ -143,7 +151,8 @@ impl Equations<'_> {
         if unknown.is_empty() {
             let ends = self.section.panels(&motion);
             let all = self.section.integrals(&motion, &ends, POINTS);
-            return (all.energy.value.is_finite() && all.torque.value.is_finite()).then_some(motion);
+            return (all.energy.value.is_finite() && all.torque.value.is_finite())
+                .then_some(motion);
         }
         let mut last = f64::INFINITY;
         let mut kept = None;
@@ -190,7 +199,10 @@ impl Motion {
 
     fn distance(&self, other: &Self, radius: f64) -> f64 {
         let turned = (self.twist - other.twist).abs() * radius;
-        (self.g - other.g).abs().max((self.e - other.e).abs()).max(turned)
+        (self.g - other.g)
+            .abs()
+            .max((self.e - other.e).abs())
+            .max(turned)
     }
 }
 
@@ -204,10 +216,20 @@ pub(super) fn solve(section: &Section, loads: &Loads) -> Result<Solved, Refusal>
             loads: loads.scaled(share),
         };
         // the path is short: a far state is one of another branch
-        let near = |m: &Motion| share - done < 1e-3 || m.distance(&here, section.outer) <= 0.5 || equations.unknown().is_empty();
+        let near = |m: &Motion| {
+            share - done < 1e-3
+                || m.distance(&here, section.outer) <= 0.5
+                || equations.unknown().is_empty()
+        };
         match equations.solve(guess(&here, done, share)).filter(near) {
             Some(next) if share >= 1.0 => {
-                return Ok(judged(&Equations { section, loads: *loads }, next));
+                return Ok(judged(
+                    &Equations {
+                        section,
+                        loads: *loads,
+                    },
+                    next,
+                ));
             }
             Some(next) => (here, done, step) = (next, share, 1.5 * step),
             None => step *= 0.5,
@@ -248,7 +270,10 @@ fn judged(equations: &Equations, motion: Motion) -> Solved {
     let ends = section.panels(&motion);
     let all = section.integrals(&motion, &ends, POINTS);
     let check = section.integrals(&motion, &ends, CHECK_POINTS);
-    let (first, second) = (equations.residuals(&motion, &all), equations.residuals(&motion, &check));
+    let (first, second) = (
+        equations.residuals(&motion, &all),
+        equations.residuals(&motion, &check),
+    );
     let unknown = equations.unknown();
     let inverse = equations.jacobian(&motion, &ends).try_inverse();
     let mut error = Motion::default();
@@ -256,7 +281,10 @@ fn judged(equations: &Equations, motion: Motion) -> Solved {
         let mut sum = 0.0;
         for (column, (one, two)) in first.iter().zip(&second).enumerate() {
             let eta = 2.0 * f64::EPSILON * one.1 + (one.0 - two.0).abs();
-            sum += inverse.as_ref().map_or(f64::INFINITY, |m| m[(row, column)].abs()) * eta;
+            sum += inverse
+                .as_ref()
+                .map_or(f64::INFINITY, |m| m[(row, column)].abs())
+                * eta;
         }
         error = error.moved(i, sum);
     }

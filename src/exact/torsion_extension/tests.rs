@@ -15,7 +15,9 @@ fn given(radii: (f64, f64), material: Material, loads: &[(&str, f64)]) -> Given 
         .number("inner-radius", radii.0)
         .number("outer-radius", radii.1)
         .with("material", Value::Material(material));
-    loads.iter().fold(given, |g, (name, value)| g.number(name, *value))
+    loads
+        .iter()
+        .fold(given, |g, (name, value)| g.number(name, *value))
 }
 
 fn solved(radii: (f64, f64), material: Material, loads: &[(&str, f64)]) -> TorsionExtension {
@@ -23,7 +25,13 @@ fn solved(radii: (f64, f64), material: Material, loads: &[(&str, f64)]) -> Torsi
 }
 
 fn total(rod: &TorsionExtension, name: &str) -> f64 {
-    rod.totals().iter().find(|t| t.name == name).unwrap().value.clone().unwrap()
+    rod.totals()
+        .iter()
+        .find(|t| t.name == name)
+        .unwrap()
+        .value
+        .clone()
+        .unwrap()
 }
 
 #[track_caller]
@@ -37,23 +45,43 @@ fn near(got: f64, expected: f64, relative: f64) {
 #[test]
 fn rivlins_torsion_keeps_its_digits_at_any_twist() {
     for twist in [1e-9, 1e-6, 1e-3, 0.8, 5.0] {
-        let rod = solved((0.0, 1.0), rubber(), &[("axial-stretch", 1.0), ("twist", twist)]);
+        let rod = solved(
+            (0.0, 1.0),
+            rubber(),
+            &[("axial-stretch", 1.0), ("twist", twist)],
+        );
         near(total(&rod, "torque"), PI * twist * 0.5, 2e-15);
-        near(total(&rod, "axial_force"), -0.5 * PI * twist * twist * 0.6, 4e-15);
+        near(
+            total(&rod, "axial_force"),
+            -0.5 * PI * twist * twist * 0.6,
+            4e-15,
+        );
         // srr = -C1 psi^2 (R0^2 - r^2)
         for r in [0.0, 0.3, 0.999] {
             let state = rod.at(Point::new(0.0, -r, 0.7)).unwrap();
-            near(state.local_stress.xx, -0.4 * twist * twist * (1.0 - r) * (1.0 + r), 1e-14);
+            near(
+                state.local_stress.xx,
+                -0.4 * twist * twist * (1.0 - r) * (1.0 + r),
+                1e-14,
+            );
             if r > 0.0 {
                 near(state.local_stress.yz, twist * r, 2e-15);
             }
         }
     }
-    let rod = solved((0.0, 1.0), rubber(), &[("axial-stretch", 1.0), ("twist", 0.8)]);
+    let rod = solved(
+        (0.0, 1.0),
+        rubber(),
+        &[("axial-stretch", 1.0), ("twist", 0.8)],
+    );
     near(total(&rod, "torque"), 1.25663706144, 1e-11);
     near(total(&rod, "axial_force"), -0.603185789489, 1e-11);
     // the torque gives the twist back
-    let back = solved((0.0, 1.0), rubber(), &[("axial-stretch", 1.0), ("torque", 1.25663706143592)]);
+    let back = solved(
+        (0.0, 1.0),
+        rubber(),
+        &[("axial-stretch", 1.0), ("torque", 1.25663706143592)],
+    );
     near(total(&back, "twist"), 0.8, 1e-13);
 }
 
@@ -62,12 +90,24 @@ fn rivlins_torsion_keeps_its_digits_at_any_twist() {
 fn limits_without_twist_and_without_force() {
     let soft = || Material::incompressible(NeoHookean { mu: 1.0 });
     for inner in [0.0, 0.5] {
-        let rod = solved((inner, 1.0), soft(), &[("axial-stretch", 1.3), ("twist", 0.0)]);
+        let rod = solved(
+            (inner, 1.0),
+            soft(),
+            &[("axial-stretch", 1.3), ("twist", 0.0)],
+        );
         let area = PI * (1.0 - inner * inner) / 1.3;
         near(total(&rod, "axial_force"), area * (1.69 - 1.0 / 1.3), 1e-14);
-        let free = solved((inner, 1.0), soft(), &[("axial-force", 0.0), ("twist", 1e-4)]);
+        let free = solved(
+            (inner, 1.0),
+            soft(),
+            &[("axial-force", 0.0), ("twist", 1e-4)],
+        );
         assert!(free.solved.motion.e > 0.0);
-        let twice = solved((inner, 1.0), soft(), &[("axial-force", 0.0), ("twist", 2e-4)]);
+        let twice = solved(
+            (inner, 1.0),
+            soft(),
+            &[("axial-force", 0.0), ("twist", 2e-4)],
+        );
         near(twice.solved.motion.e / free.solved.motion.e, 4.0, 1e-6);
         assert!(free.bound().stress < 1e-13, "{:?}", free.bound());
     }
@@ -77,7 +117,11 @@ fn law(i: usize) -> Material {
     match i {
         0 => Material::incompressible(NeoHookean { mu: 1.0 }),
         1 => rubber(),
-        2 => Material::incompressible(Yeoh { c10: 0.5, c20: -0.01, c30: 1e-3 }),
+        2 => Material::incompressible(Yeoh {
+            c10: 0.5,
+            c20: -0.01,
+            c30: 1e-3,
+        }),
         _ => Material::incompressible(Demiray { c: 1.0, b: 0.5 }),
     }
 }
@@ -174,18 +218,60 @@ fn what_is_no_cylinder_is_refused() {
         assert!(refusal.message.contains(says), "{refusal}");
     };
     let solid = (0.0, 1.0);
-    check(given(solid, rubber(), &[("twist", 0.1)]), "axial-stretch", "neither is given");
-    check(given(solid, rubber(), &[("axial-force", 0.1), ("axial-stretch", 1.0), ("twist", 0.1)]), "axial-stretch", "both");
-    check(given(solid, rubber(), &[("axial-force", 0.1)]), "twist", "neither is given");
-    check(given(solid, rubber(), &[("axial-stretch", -1.0), ("twist", 0.1)]), "axial-stretch", "positive");
-    let pressed = [("axial-stretch", 1.0), ("twist", 0.1), ("inner-pressure", 0.1)];
+    check(
+        given(solid, rubber(), &[("twist", 0.1)]),
+        "axial-stretch",
+        "neither is given",
+    );
+    check(
+        given(
+            solid,
+            rubber(),
+            &[("axial-force", 0.1), ("axial-stretch", 1.0), ("twist", 0.1)],
+        ),
+        "axial-stretch",
+        "both",
+    );
+    check(
+        given(solid, rubber(), &[("axial-force", 0.1)]),
+        "twist",
+        "neither is given",
+    );
+    check(
+        given(solid, rubber(), &[("axial-stretch", -1.0), ("twist", 0.1)]),
+        "axial-stretch",
+        "positive",
+    );
+    let pressed = [
+        ("axial-stretch", 1.0),
+        ("twist", 0.1),
+        ("inner-pressure", 0.1),
+    ];
     check(given(solid, rubber(), &pressed), "inner-pressure", "solid");
-    check(given((1.0, 1.0), rubber(), &pressed), "outer-radius", "larger");
-    check(given(solid, rubber(), &[("axial-stretch", 1.0), ("twist", f64::INFINITY)]), "twist", "finite");
+    check(
+        given((1.0, 1.0), rubber(), &pressed),
+        "outer-radius",
+        "larger",
+    );
+    check(
+        given(
+            solid,
+            rubber(),
+            &[("axial-stretch", 1.0), ("twist", f64::INFINITY)],
+        ),
+        "twist",
+        "finite",
+    );
     // exponential law: the numbers leave the range of doubles
-    check(given(solid, law(3), &[("axial-stretch", 1.0), ("twist", 1e3)]), "twist", "followed up to");
+    check(
+        given(solid, law(3), &[("axial-stretch", 1.0), ("twist", 1e3)]),
+        "twist",
+        "followed up to",
+    );
     let rod = solved(solid, rubber(), &[("axial-stretch", 1.2), ("twist", 0.3)]);
     assert!(rod.at(Point::new(f64::NAN, 0.0, 0.0)).is_err());
     let axis = rod.at(Point::new(0.0, 0.0, 2.0)).unwrap();
-    assert!((axis.local_stress.xx - axis.local_stress.yy).abs() < 1e-15 && axis.local_stress.yz == 0.0);
+    assert!(
+        (axis.local_stress.xx - axis.local_stress.yy).abs() < 1e-15 && axis.local_stress.yz == 0.0
+    );
 }

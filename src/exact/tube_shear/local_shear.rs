@@ -123,7 +123,11 @@ impl ShearLaw {
             let power = amount * self.slope(amount) / here;
             let mut next = amount * (((goal - here) / here).ln_1p() / power).exp();
             if !(next > low && next < high) {
-                next = if low > 0.0 { (low * high).sqrt() } else { 0.5 * high };
+                next = if low > 0.0 {
+                    (low * high).sqrt()
+                } else {
+                    0.5 * high
+                };
             }
             let step = (next - amount).abs();
             amount = next;
@@ -143,7 +147,11 @@ mod tests {
     fn laws() -> Vec<ShearLaw> {
         let laws: Vec<Arc<dyn IncompressibleLaw>> = vec![
             Arc::new(MooneyRivlin { c10: 0.3, c01: 0.2 }),
-            Arc::new(Yeoh { c10: 0.5, c20: -0.05, c30: 1e-4 }),
+            Arc::new(Yeoh {
+                c10: 0.5,
+                c20: -0.05,
+                c30: 1e-4,
+            }),
             Arc::new(Demiray { c: 1.0, b: 0.7 }),
         ];
         laws.into_iter().map(ShearLaw::new).collect()
@@ -160,11 +168,18 @@ mod tests {
                 let slope = (energy(k + h) - energy(k - h)) / (2.0 * h);
                 assert!((slope / law.stress(k) - 1.0).abs() < 1e-7, "{law:?} {k}");
                 let slope = (law.stress(k + h) - law.stress(k - h)) / (2.0 * h);
-                assert!((slope - law.slope(k)).abs() < 1e-7 * (1.0 + slope.abs()), "{law:?} {k}");
+                assert!(
+                    (slope - law.slope(k)).abs() < 1e-7 * (1.0 + slope.abs()),
+                    "{law:?} {k}"
+                );
             }
         }
         let mooney = laws()[0].local(-0.7);
-        for (got, exact) in [(mooney.shear, -0.7), (mooney.along, 0.49), (mooney.third, 0.4 * 0.49)] {
+        for (got, exact) in [
+            (mooney.shear, -0.7),
+            (mooney.along, 0.49),
+            (mooney.third, 0.4 * 0.49),
+        ] {
             assert!((got - exact).abs() < 1e-15, "{got} {exact}");
         }
     }
@@ -175,7 +190,10 @@ mod tests {
             for k in [1e-9, 1e-3, 0.3, 1.0, 0.9 * law.most.min(5.0)] {
                 for sign in [1.0, -1.0] {
                     let back = law.amount(law.stress(sign * k)).unwrap();
-                    assert!((back / (sign * k) - 1.0).abs() < 2e-14, "{law:?} {k} {back}");
+                    assert!(
+                        (back / (sign * k) - 1.0).abs() < 2e-14,
+                        "{law:?} {k} {back}"
+                    );
                 }
             }
             assert_eq!(law.amount(0.0), Some(0.0));

@@ -75,10 +75,22 @@ impl TubeShear {
         let solved = solve::solve((inner, outer), law, way, motion)?;
         let extent = Extent::SectionAndLength;
         let load = match way {
-            Way::Azimuthal => demands::total("torque", solved.load, Dimension::MomentPerLength, extent),
-            Way::Axial => demands::total("axial_shear_force", solved.load, Dimension::ForcePerLength, extent),
+            Way::Azimuthal => {
+                demands::total("torque", solved.load, Dimension::MomentPerLength, extent)
+            }
+            Way::Axial => demands::total(
+                "axial_shear_force",
+                solved.load,
+                Dimension::ForcePerLength,
+                extent,
+            ),
         };
-        let energy = demands::total("strain_energy", solved.energy, Dimension::EnergyPerLength, extent);
+        let energy = demands::total(
+            "strain_energy",
+            solved.energy,
+            Dimension::EnergyPerLength,
+            extent,
+        );
         Ok(Self {
             totals: demands::finite(vec![load, energy])?,
             wall: solved.wall,
@@ -125,7 +137,9 @@ impl TubeShear {
         };
         State {
             displacement: Vector3::new(0.0, 0.0, moved),
-            displacement_gradient: Vector3::z() * local.amount * Vector3::new(c, s, 0.0).transpose(),
+            displacement_gradient: Vector3::z()
+                * local.amount
+                * Vector3::new(c, s, 0.0).transpose(),
             stretches: [(-local.log).exp(), 1.0, local.log.exp()],
             stress: stress.cylindrical_to_cartesian((c, s)),
             ..self.common(stress, local)
@@ -206,12 +220,18 @@ impl ExactSolution for TubeShear {
         let length = units.length.name;
         let (load, held, total) = match self.wall.way {
             Way::Azimuthal => (
-                format!("outer wall turned about the axis by {} rad, inner wall held", self.motion),
+                format!(
+                    "outer wall turned about the axis by {} rad, inner wall held",
+                    self.motion
+                ),
                 "outer wall: every point turned about the axis by the angle, at its radius; no axial displacement at the end faces",
                 "torque",
             ),
             Way::Axial => (
-                format!("outer wall moved along the axis by {} {length}, inner wall held", self.motion),
+                format!(
+                    "outer wall moved along the axis by {} {length}, inner wall held",
+                    self.motion
+                ),
                 "outer wall: every point moved along Z by the displacement, at its radius; end faces are not free: they carry the stresses \
                  that go with this motion, so prescribe the exact displacements there",
                 "axial_shear_force",

@@ -9,7 +9,9 @@ use crate::exact::demands::rounded;
 use crate::exact::given::refuse;
 use crate::exact::solution::{ErrorBound, Refusal};
 use crate::materials::IncompressibleLaw;
-use crate::numerics::{Chebyshev, CompensatedSum, GaussRule, Piecewise, Resolution, RunningMean, find_root};
+use crate::numerics::{
+    Chebyshev, CompensatedSum, GaussRule, Piecewise, Resolution, RunningMean, find_root,
+};
 use std::f64::consts::PI;
 use std::sync::Arc;
 
@@ -59,7 +61,9 @@ struct Problem {
 impl Problem {
     fn panels(&self) -> Vec<f64> {
         let n = (self.span / PANEL).ceil().max(1.0);
-        (0..=n as usize).map(|i| self.span * (i as f64 / n)).collect()
+        (0..=n as usize)
+            .map(|i| self.span * (i as f64 / n))
+            .collect()
     }
 
     /// Integral of `f(x, ka)` through the wall for the stress `tau(A)`. NaN where the law does not carry it.
@@ -110,8 +114,15 @@ impl Problem {
                 false => "there the law locks, or its numbers end, at the inner wall",
             };
             let name = self.way.motion();
-            let message = format!("{name} = {motion} is more than the {} up to which states exist: {why}", rounded(most, 9));
-            refuse(name, message, format!("nearest admissible value: {}", rounded(most, 6)))
+            let message = format!(
+                "{name} = {motion} is more than the {} up to which states exist: {why}",
+                rounded(most, 9)
+            );
+            refuse(
+                name,
+                message,
+                format!("nearest admissible value: {}", rounded(most, 6)),
+            )
         })
     }
 }
@@ -153,6 +164,8 @@ pub(super) fn solve(
 /// From the error of the wall's motion, through the slope of the load by it.
 fn bound_of(problem: &Problem, amount: f64, motion: f64, energies: (f64, f64)) -> ErrorBound {
     let round_off = 16.0 * f64::EPSILON;
+    // in a thin wall a point's own place has fewer digits
+    let place = 2.0 * f64::EPSILON / -(-problem.span).exp_m1();
     if amount == 0.0 {
         return ErrorBound {
             displacement: round_off,
@@ -173,7 +186,7 @@ fn bound_of(problem: &Problem, amount: f64, motion: f64, energies: (f64, f64)) -
     let gain = ((here.1 - down.1) / here.1 / ((here.0 - down.0) / here.0)).abs();
     let load = gain * relative;
     ErrorBound {
-        displacement: round_off + 2.0 * relative,
+        displacement: round_off + place + 2.0 * relative,
         stress: (round_off + 2.0 * load) * loss,
         totals: round_off * loss + 2.0 * load + (energies.0 - energies.1).abs() / energies.0,
     }
@@ -189,16 +202,27 @@ fn tabled(problem: Problem, stress: f64, outer: f64) -> Option<Wall> {
         tau => problem.law.amount(tau).map_or(f64::NAN, |ka| ka / tau),
     };
     let breaks = Piecewise::breaks((0.0, span), NODES, 4e-15, 20, &mut ratio)?;
-    let pieces = breaks.windows(2).map(|ends| Chebyshev::fit(ends[0], ends[1], NODES, &mut ratio));
+    let pieces = breaks
+        .windows(2)
+        .map(|ends| Chebyshev::fit(ends[0], ends[1], NODES, &mut ratio));
     let compliance = Piecewise::new(pieces.collect());
     let amount = |x: f64| compliance.value(x).unwrap_or(f64::NAN) * tau(x);
     let size = problem.law.local(amount(0.0));
     let wanted = Resolution {
         relative: 4e-15,
-        absolute: 4.0 * f64::EPSILON * (1.0 + problem.law.loss(amount(0.0))) * size.along.abs().max(size.third.abs()) / span,
+        absolute: 4.0
+            * f64::EPSILON
+            * (1.0 + problem.law.loss(amount(0.0)))
+            * size.along.abs().max(size.third.abs())
+            / span,
     };
-    let rise = RunningMean::fit(span, 0.0, wanted, |x| rise_of(way, &problem.law.local(amount(x))))?;
-    let exact = Resolution { absolute: 0.0, ..wanted };
+    let rise = RunningMean::fit(span, 0.0, wanted, |x| {
+        rise_of(way, &problem.law.local(amount(x)))
+    })?;
+    let exact = Resolution {
+        absolute: 0.0,
+        ..wanted
+    };
     let motion = RunningMean::fit(0.0, span, exact, |x| amount(x) * problem.weight(x))?;
     Some(Wall {
         inner: problem.inner,
@@ -241,10 +265,19 @@ impl Wall {
             along: stress * amount,
             ..self.law.local(amount)
         };
-        let elsewhere = |x: f64| self.law.amount(self.stress(self.inner * x.exp())).unwrap_or(f64::NAN);
+        let elsewhere = |x: f64| {
+            self.law
+                .amount(self.stress(self.inner * x.exp()))
+                .unwrap_or(f64::NAN)
+        };
         let srr = match radius == self.outer {
             true => 0.0,
-            false => (x - span) * self.rise.value(x, |x| rise_of(self.way, &self.law.local(elsewhere(x)))),
+            false => {
+                (x - span)
+                    * self
+                        .rise
+                        .value(x, |x| rise_of(self.way, &self.law.local(elsewhere(x))))
+            }
         };
         let motion = x * self.motion.value(x, |x| {
             let weight = match self.way {
@@ -253,7 +286,10 @@ impl Wall {
             };
             elsewhere(x) * weight
         });
-        let known = local.energy.is_finite() && srr.is_finite() && motion.is_finite() && local.third.is_finite();
+        let known = local.energy.is_finite()
+            && srr.is_finite()
+            && motion.is_finite()
+            && local.third.is_finite();
         known.then_some((local, srr, motion))
     }
 }

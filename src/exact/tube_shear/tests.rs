@@ -5,7 +5,12 @@ use crate::exact::given::Value;
 use crate::materials::{Demiray, Material, MooneyRivlin, NeoHookean, Yeoh};
 use std::f64::consts::PI;
 
-fn tube(way: Way, radii: (f64, f64), material: Material, motion: f64) -> Result<TubeShear, Refusal> {
+fn tube(
+    way: Way,
+    radii: (f64, f64),
+    material: Material,
+    motion: f64,
+) -> Result<TubeShear, Refusal> {
     let given = Given::default()
         .number("inner-radius", radii.0)
         .number("outer-radius", radii.1)
@@ -18,7 +23,11 @@ fn law(i: usize) -> Material {
     match i {
         0 => Material::incompressible(NeoHookean { mu: 1.0 }),
         1 => Material::incompressible(MooneyRivlin { c10: 0.3, c01: 0.2 }),
-        2 => Material::incompressible(Yeoh { c10: 0.5, c20: 0.01, c30: 1e-3 }),
+        2 => Material::incompressible(Yeoh {
+            c10: 0.5,
+            c20: 0.01,
+            c30: 1e-3,
+        }),
         _ => Material::incompressible(Demiray { c: 1.0, b: 0.5 }),
     }
 }
@@ -46,7 +55,11 @@ fn constant_moduli_are_the_closed_forms() {
             near(total(&turned, 0), 2.0 * PI * c, 4e-15);
             near(total(&turned, 1), PI * c * motion, 4e-15);
             let inner = turned.at(Point::new(0.0, a, 0.0)).unwrap();
-            near(inner.local_stress.xx, -c * c * squares * (a * a + b * b) / (4.0 * (a * b).powi(4)), 1e-14);
+            near(
+                inner.local_stress.xx,
+                -c * c * squares * (a * a + b * b) / (4.0 * (a * b).powi(4)),
+                1e-14,
+            );
             let outer = turned.at(Point::new(0.0, b, 0.0)).unwrap();
             near(outer.displacement.x, -b * motion.sin(), 4e-15);
             assert_eq!(outer.local_stress.xx, 0.0);
@@ -54,12 +67,23 @@ fn constant_moduli_are_the_closed_forms() {
             let c = motion / ((b - a) / a).ln_1p();
             near(total(&moved, 0), 2.0 * PI * c, 4e-15);
             let inner = moved.at(Point::new(0.0, a, 0.0)).unwrap();
-            near(inner.local_stress.xx, -0.2 * c * c * squares / (a * b).powi(2), 1e-13);
-            near(moved.at(Point::new(b, 0.0, 1.0)).unwrap().displacement.z, motion, 4e-15);
+            near(
+                inner.local_stress.xx,
+                -0.2 * c * c * squares / (a * b).powi(2),
+                1e-13,
+            );
+            near(
+                moved.at(Point::new(b, 0.0, 1.0)).unwrap().displacement.z,
+                motion,
+                4e-15,
+            );
             assert!(moved.bound().stress < 1e-13 && turned.bound().totals < 1e-13);
         }
         let rest = tube(Way::Axial, (a, b), law(3), 0.0).unwrap();
-        assert_eq!(rest.at(Point::new(a, 0.0, 0.0)).unwrap().local_stress.xx, 0.0);
+        assert_eq!(
+            rest.at(Point::new(a, 0.0, 0.0)).unwrap().local_stress.xx,
+            0.0
+        );
     }
 }
 
@@ -108,17 +132,29 @@ proptest::proptest! {
 
 #[test]
 fn what_the_law_does_not_carry_is_refused() {
-    let soft = || Material::incompressible(Yeoh { c10: 0.5, c20: -0.05, c30: 1e-4 });
+    let soft = || {
+        Material::incompressible(Yeoh {
+            c10: 0.5,
+            c20: -0.05,
+            c30: 1e-4,
+        })
+    };
     for way in [Way::Azimuthal, Way::Axial] {
         let refusal = tube(way, (1.0, 2.0), soft(), 50.0).unwrap_err();
         assert_eq!(refusal.parameter, way.motion());
-        assert!(refusal.message.contains("maximum") && refusal.hint.contains("nearest"), "{refusal:?}");
+        assert!(
+            refusal.message.contains("maximum") && refusal.hint.contains("nearest"),
+            "{refusal:?}"
+        );
         assert!(tube(way, (1.0, 2.0), law(0), f64::NAN).is_err());
         assert!(tube(way, (2.0, 1.0), law(0), 0.1).is_err());
         let found = tube(way, (1.0, 2.0), law(0), 0.1).unwrap();
         assert!(found.at(Point::new(0.0, 0.0, 0.0)).is_err());
         // off the wall the formulas go on
-        let (inside, edge) = (found.at(Point::new(2.0 + 1e-6, 0.0, 0.0)).unwrap(), found.at(Point::new(2.0, 0.0, 0.0)).unwrap());
+        let (inside, edge) = (
+            found.at(Point::new(2.0 + 1e-6, 0.0, 0.0)).unwrap(),
+            found.at(Point::new(2.0, 0.0, 0.0)).unwrap(),
+        );
         assert!((inside.local_stress.xx - edge.local_stress.xx).abs() < 1e-6);
     }
 }
