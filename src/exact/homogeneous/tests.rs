@@ -80,11 +80,7 @@ fn materials() -> Vec<Material> {
     let mut list = vec![
         rubber(),
         Material::incompressible(NeoHookean { mu: 1.0 }),
-        Material::incompressible(Yeoh {
-            c10: 0.5,
-            c20: 0.01,
-            c30: 1e-3,
-        }),
+        Material::incompressible(Yeoh::three_terms(0.5, 0.01, 1e-3)),
         Material::Compressible(Compressible::Coupled(CompressibleNeoHookean {
             mu: 1.0,
             lambda: 2.0,

@@ -98,11 +98,7 @@ fn laws() -> Vec<Arc<dyn IncompressibleLaw>> {
             c10: 0.25,
             c01: 0.25,
         }),
-        Arc::new(Yeoh {
-            c10: 0.5,
-            c20: -0.01,
-            c30: 1e-3,
-        }),
+        Arc::new(Yeoh::three_terms(0.5, -0.01, 1e-3)),
         Arc::new(Demiray { c: 0.4, b: 2.0 }),
     ]
 }

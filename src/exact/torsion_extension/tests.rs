@@ -117,11 +117,7 @@ fn law(i: usize) -> Material {
     match i {
         0 => Material::incompressible(NeoHookean { mu: 1.0 }),
         1 => rubber(),
-        2 => Material::incompressible(Yeoh {
-            c10: 0.5,
-            c20: -0.01,
-            c30: 1e-3,
-        }),
+        2 => Material::incompressible(Yeoh::three_terms(0.5, -0.01, 1e-3)),
         _ => Material::incompressible(Demiray { c: 1.0, b: 0.5 }),
     }
 }

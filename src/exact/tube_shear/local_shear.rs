@@ -147,11 +147,7 @@ mod tests {
     fn laws() -> Vec<ShearLaw> {
         let laws: Vec<Arc<dyn IncompressibleLaw>> = vec![
             Arc::new(MooneyRivlin { c10: 0.3, c01: 0.2 }),
-            Arc::new(Yeoh {
-                c10: 0.5,
-                c20: -0.05,
-                c30: 1e-4,
-            }),
+            Arc::new(Yeoh::three_terms(0.5, -0.05, 1e-4)),
             Arc::new(Demiray { c: 1.0, b: 0.7 }),
         ];
         laws.into_iter().map(ShearLaw::new).collect()

@@ -23,11 +23,7 @@ fn law(i: usize) -> Material {
     match i {
         0 => Material::incompressible(NeoHookean { mu: 1.0 }),
         1 => Material::incompressible(MooneyRivlin { c10: 0.3, c01: 0.2 }),
-        2 => Material::incompressible(Yeoh {
-            c10: 0.5,
-            c20: 0.01,
-            c30: 1e-3,
-        }),
+        2 => Material::incompressible(Yeoh::three_terms(0.5, 0.01, 1e-3)),
         _ => Material::incompressible(Demiray { c: 1.0, b: 0.5 }),
     }
 }
@@ -132,13 +128,7 @@ proptest::proptest! {
 
 #[test]
 fn what_the_law_does_not_carry_is_refused() {
-    let soft = || {
-        Material::incompressible(Yeoh {
-            c10: 0.5,
-            c20: -0.05,
-            c30: 1e-4,
-        })
-    };
+    let soft = || Material::incompressible(Yeoh::three_terms(0.5, -0.05, 1e-4));
     for way in [Way::Azimuthal, Way::Axial] {
         let refusal = tube(way, (1.0, 2.0), soft(), 50.0).unwrap_err();
         assert_eq!(refusal.parameter, way.motion());
