@@ -20,6 +20,8 @@ const TAIL: f64 = 1e-4;
 const CLOSE: f64 = 1e-9;
 /// Largest |g| followed.
 const FARTHEST: f64 = 40.0;
+/// A load this many times the modulus where the path ends is that of a law that locks or grows exponentially: no limit.
+const STIFFENED: f64 = 1e3;
 /// Most stations of a march, so that it always ends.
 const MOST_STATIONS: usize = 400;
 /// Most panels of a mesh: a bound on the work, far above what smooth walls need.
@@ -180,6 +182,17 @@ impl Path {
         self.station(&mesh, found)
     }
 
+    /// The end at a station beyond which there is none.
+    fn stuck(&self, start: &Station, here: Station) -> End {
+        let risen = (here.load - start.load) / self.wall.pressure_scale();
+        let end = if risen > STIFFENED {
+            End::Open
+        } else {
+            End::Lost
+        };
+        end(Box::new(here))
+    }
+
     /// Follows the path from `start` to growing g (`sign` = 1) or falling g (-1) until `stop` or its end. A maximum of the
     /// load is an end only with `to_maximum`. All stations passed, in order; no end when `stop` said so.
     pub fn march(
@@ -197,7 +210,7 @@ impl Path {
                 return (trail, None);
             }
             if trail.len() > MOST_STATIONS {
-                return (trail, Some(End::Lost(Box::new(here))));
+                return (trail, Some(self.stuck(start, here)));
             }
             if here.g.abs() >= FARTHEST {
                 let end = if saturated(&trail, &here) {
@@ -212,7 +225,7 @@ impl Path {
             let Some((next, steps)) = next else {
                 step *= 0.5;
                 if step < 1e-6 {
-                    return (trail, Some(End::Lost(Box::new(here))));
+                    return (trail, Some(self.stuck(start, here)));
                 }
                 continue;
             };
