@@ -2,7 +2,8 @@
 //!
 //! The outer pressure and the axial condition are applied first, with the same pressure inside; then the inner load
 //! changes alone while the bore grows or shrinks. With ln(a/A) as the parameter and the load as an unknown, a maximum
-//! of the load is a point like any other, and so is one of the volume (a locking tube that draws in). Followed on a coarse mesh; what is printed is solved again on a fine one (`solve`).
+//! of the load is a point like any other, and so is one of the volume (a locking tube that draws in). Followed on a
+//! coarse mesh; what is printed is solved again on a fine one (`solve`).
 
 use super::integrals::{Axial, BORE, Conditions, Control, Integrals, STRETCH};
 use super::mesh::{Mesh, Shape, Wall};
