@@ -24,6 +24,8 @@ pub mod tube_shear;
 pub mod catalogue;
 
 mod demands;
+#[cfg(test)]
+mod test_laws;
 mod totals;
 mod tube_entries;
 mod tube_words;

@@ -2,9 +2,10 @@
 
 use super::*;
 use crate::exact::given::Value;
+use crate::exact::test_laws;
 use crate::materials::{
     Compressible, CompressibleNeoHookean, LinearElastic, MooneyRivlin, NeoHookean, Volumetric,
-    VolumetricForm, Yeoh,
+    VolumetricForm,
 };
 use std::sync::Arc;
 
@@ -80,11 +81,8 @@ fn materials() -> Vec<Material> {
     let mut list = vec![
         rubber(),
         Material::incompressible(NeoHookean { mu: 1.0 }),
-        Material::incompressible(Yeoh {
-            c10: 0.5,
-            c20: 0.01,
-            c30: 1e-3,
-        }),
+        test_laws::yeoh(),
+        test_laws::locking(),
         Material::Compressible(Compressible::Coupled(CompressibleNeoHookean {
             mu: 1.0,
             lambda: 2.0,
