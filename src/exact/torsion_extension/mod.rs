@@ -60,7 +60,7 @@ impl TorsionExtension {
 
     fn radial_stress(&self, radius: f64, t: f64) -> f64 {
         let motion = self.solved.motion;
-        let away = self.section.from_outer(radius);
+        let away = self.section.off_outer(radius);
         if away == 0.0 {
             return -self.loads.walls.1;
         }
