@@ -25,7 +25,7 @@ pub mod catalogue;
 
 mod demands;
 #[cfg(test)]
-mod test_laws;
+mod laws_tests;
 mod totals;
 mod tube_entries;
 mod tube_words;

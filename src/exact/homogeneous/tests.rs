@@ -2,7 +2,7 @@
 
 use super::*;
 use crate::exact::given::Value;
-use crate::exact::test_laws;
+use crate::exact::laws_tests;
 use crate::materials::{
     Compressible, CompressibleNeoHookean, LinearElastic, MooneyRivlin, NeoHookean, Volumetric,
     VolumetricForm,
@@ -81,8 +81,8 @@ fn materials() -> Vec<Material> {
     let mut list = vec![
         rubber(),
         Material::incompressible(NeoHookean { mu: 1.0 }),
-        test_laws::yeoh(),
-        test_laws::locking(),
+        laws_tests::yeoh(),
+        laws_tests::locking(),
         Material::Compressible(Compressible::Coupled(CompressibleNeoHookean {
             mu: 1.0,
             lambda: 2.0,

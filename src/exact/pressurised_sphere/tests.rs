@@ -2,7 +2,7 @@
 
 use super::*;
 use crate::exact::given::Value;
-use crate::exact::test_laws;
+use crate::exact::laws_tests;
 use crate::materials::{Demiray, IncompressibleLaw, Material, MooneyRivlin, NeoHookean};
 use std::sync::Arc;
 
@@ -99,9 +99,9 @@ fn laws() -> Vec<Arc<dyn IncompressibleLaw>> {
             c10: 0.25,
             c01: 0.25,
         }),
-        test_laws::law_of(test_laws::yeoh()),
+        laws_tests::law_of(laws_tests::yeoh()),
         Arc::new(Demiray { c: 0.4, b: 2.0 }),
-        test_laws::law_of(test_laws::locking()),
+        laws_tests::law_of(laws_tests::locking()),
     ]
 }
 

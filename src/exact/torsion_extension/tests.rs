@@ -2,7 +2,7 @@
 
 use super::*;
 use crate::exact::given::Value;
-use crate::exact::test_laws;
+use crate::exact::laws_tests;
 use crate::materials::{Demiray, Material, MooneyRivlin, NeoHookean};
 use nalgebra::Rotation3;
 use std::f64::consts::PI;
@@ -118,8 +118,8 @@ fn law(i: usize) -> Material {
     match i {
         0 => Material::incompressible(NeoHookean { mu: 1.0 }),
         1 => rubber(),
-        2 => test_laws::yeoh(),
-        4 => test_laws::locking(),
+        2 => laws_tests::yeoh(),
+        4 => laws_tests::locking(),
         _ => Material::incompressible(Demiray { c: 1.0, b: 0.5 }),
     }
 }

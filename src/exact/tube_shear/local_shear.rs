@@ -142,13 +142,13 @@ impl ShearLaw {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::exact::test_laws;
+    use crate::exact::laws_tests;
     use crate::materials::{Demiray, MooneyRivlin};
 
     fn laws() -> Vec<ShearLaw> {
         let laws: Vec<Arc<dyn IncompressibleLaw>> = vec![
             Arc::new(MooneyRivlin { c10: 0.3, c01: 0.2 }),
-            test_laws::law_of(test_laws::softening()),
+            laws_tests::law_of(laws_tests::softening()),
             Arc::new(Demiray { c: 1.0, b: 0.7 }),
         ];
         laws.into_iter().map(ShearLaw::new).collect()

@@ -2,7 +2,7 @@
 
 use super::*;
 use crate::exact::given::Value;
-use crate::exact::test_laws;
+use crate::exact::laws_tests;
 use crate::materials::{Demiray, Material, MooneyRivlin, NeoHookean};
 use std::f64::consts::PI;
 
@@ -24,8 +24,8 @@ fn law(i: usize) -> Material {
     match i {
         0 => Material::incompressible(NeoHookean { mu: 1.0 }),
         1 => Material::incompressible(MooneyRivlin { c10: 0.3, c01: 0.2 }),
-        2 => test_laws::yeoh(),
-        4 => test_laws::locking(),
+        2 => laws_tests::yeoh(),
+        4 => laws_tests::locking(),
         _ => Material::incompressible(Demiray { c: 1.0, b: 0.5 }),
     }
 }
@@ -130,7 +130,7 @@ proptest::proptest! {
 
 #[test]
 fn what_the_law_does_not_carry_is_refused() {
-    let soft = test_laws::softening;
+    let soft = laws_tests::softening;
     for way in [Way::Azimuthal, Way::Axial] {
         let refusal = tube(way, (1.0, 2.0), soft(), 50.0).unwrap_err();
         assert_eq!(refusal.parameter, way.motion());
