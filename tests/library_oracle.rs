@@ -9,6 +9,7 @@ use std::path::Path;
 use truebore::exact::{ExactSolution, Kinematics, State};
 use truebore::mechanics::Point;
 use truebore::run::plan::{self, CasePlan};
+use truebore::run::point_table::nominal_traction;
 
 /// What is demanded where nothing else is said.
 const DIGITS: f64 = 12.0;
@@ -64,16 +65,11 @@ fn kind(quantity: &str) -> &'static str {
     }
 }
 
-/// Nominal traction P N = J sigma F^-T N.
-fn traction(state: &State, normal: &str) -> [f64; 3] {
-    let n: Vec<f64> = normal
-        .split([' ', ','])
-        .map(|c| c.parse().unwrap())
-        .collect();
-    let f = state.deformation();
-    let piola =
-        state.stress.to_matrix() * f.try_inverse().unwrap().transpose() * state.volume_ratio;
-    (piola * nalgebra::Vector3::new(n[0], n[1], n[2])).into()
+/// Nominal traction P N, as `exact --loads` tables it.
+fn traction(exact: &dyn ExactSolution, state: &State, normal: &str) -> [f64; 3] {
+    let n = normal.split(' ').map(|c| c.parse::<f64>().unwrap());
+    let n = nalgebra::Vector3::from_iterator(n);
+    nominal_traction(state, exact.kinematics(), n).unwrap()
 }
 
 fn computed(exact: &dyn ExactSolution, row: &Row) -> Result<f64, String> {
@@ -96,7 +92,7 @@ fn computed(exact: &dyn ExactSolution, row: &Row) -> Result<f64, String> {
         radial(Point::new(point.x + u[0], point.y + u[1], point.z + u[2])),
     );
     if let Some((component, normal)) = row.quantity.split_once('@') {
-        let all = traction(&state, normal);
+        let all = traction(exact, &state, normal);
         return Ok(all[["tx", "ty", "tz"]
             .iter()
             .position(|c| *c == component)
@@ -118,8 +114,13 @@ fn computed(exact: &dyn ExactSolution, row: &Row) -> Result<f64, String> {
             let three = exact.body().frame() == truebore::exact::Frame::Spherical;
             let x = [point.x, point.y, if three { point.z } else { 0.0 }];
             let v = [u[0], u[1], if three { u[2] } else { 0.0 }];
-            let growth: f64 = (0..3).map(|i| (2.0 * x[i] + v[i]) * v[i]).sum();
-            growth / (small + large)
+            if exact.kinematics() == Kinematics::SmallStrain || small == 0.0 {
+                let along: f64 = (0..3).map(|i| x[i] * v[i]).sum();
+                if small == 0.0 { 0.0 } else { along / small }
+            } else {
+                let growth: f64 = (0..3).map(|i| (2.0 * x[i] + v[i]) * v[i]).sum();
+                growth / (small + large)
+            }
         }
         "sxx" => s.xx,
         "syy" => s.yy,

@@ -6,7 +6,7 @@ use super::small_strain::{
     shrink_fit_tube, strip,
 };
 use super::solution::{ExactSolution, Kinematics, Refusal};
-use super::{published, tabulated, tube_entries};
+use super::{published, stated_field, tabulated, tube_entries};
 use crate::materials::{MaterialKind, catalogue as materials};
 
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
@@ -25,6 +25,7 @@ const ENTRIES: &[Entry] = &[
     strip::PURE_BENDING,
     bar_torsion::ENTRY,
     elastic_plastic_tube::ENTRY,
+    stated_field::ENTRY,
     published::ENTRY,
     tabulated::ENTRY,
 ];

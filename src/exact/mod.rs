@@ -9,10 +9,12 @@ pub mod given;
 pub mod known_value;
 pub mod parameters;
 
+pub mod compressible;
 pub mod lame_tube;
 pub mod pressurised_tube;
 pub mod published;
 mod small_strain;
+mod stated_field;
 pub mod tabulated;
 
 pub mod catalogue;

@@ -1,12 +1,13 @@
 //! The pressurised tubes as a suite names them.
 
 use super::catalogue::Entry;
+use super::compressible::{self, CompressibleTube, CompressibleTubeProblem, incompressible_layer};
 use super::given::{Form, Given, ParameterEntry, VariantEntry, refuse};
 use super::parameters::Parameters;
 use super::pressurised_tube::{Drive, Grading, Layer, TubeProblem};
 use super::solution::{ExactSolution, Kinematics, Refusal};
 use super::{Ends, LameTube, PressurisedTube};
-use crate::materials::{IncompressibleLaw, Material, MaterialKind};
+use crate::materials::{Compressible, IncompressibleLaw, Material, MaterialKind};
 use crate::mechanics::Dimension;
 use std::sync::Arc;
 
@@ -17,6 +18,9 @@ const FINITE_ENDS: &[&str] = &[
     Ends::NAMES[2],
     Ends::NAMES[3],
 ];
+
+/// Laws of finite strain, with and without a change of volume.
+const FINITE: &[MaterialKind] = &[MaterialKind::Incompressible, MaterialKind::Compressible];
 
 pub(super) const INNER_RADIUS: ParameterEntry = ParameterEntry::required(
     "inner-radius",
@@ -169,13 +173,8 @@ fn incompressible(material: &Material) -> Result<Arc<dyn IncompressibleLaw>, Ref
 }
 
 fn pressurised_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
-    let layer = Layer {
-        outer_radius: given.finite("outer-radius")?,
-        law: incompressible(given.material()?)?,
-        grading: Grading::None,
-    };
-    let problem = problem(given, given.finite("inner-radius")?, vec![layer])?;
-    Ok(Box::new(PressurisedTube::solve(&problem)?))
+    let (inner, outer) = (given.finite("inner-radius")?, given.finite("outer-radius")?);
+    tube_of(given, inner, &[(outer, given.material()?)])
 }
 
 fn layered_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
@@ -192,7 +191,23 @@ fn layered_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
             "radii: [A, C, B], materials: [inner, outer]",
         ));
     }
-    let layers = radii[1..].iter().zip(materials).map(|(radius, material)| {
+    let layers: Vec<_> = radii[1..].iter().copied().zip(materials).collect();
+    tube_of(given, radii[0], &layers)
+}
+
+/// A tube of layers given by outer radius and material: with a finite bulk modulus anywhere it is the compressible one.
+fn tube_of(
+    given: &Given,
+    inner_radius: f64,
+    layers: &[(f64, &Material)],
+) -> Result<Box<dyn ExactSolution>, Refusal> {
+    let any_compressible = layers
+        .iter()
+        .any(|(_, m)| matches!(m, Material::Compressible(_)));
+    if any_compressible {
+        return compressible_tube(given, inner_radius, layers);
+    }
+    let layers = layers.iter().map(|(radius, material)| {
         Ok(Layer {
             outer_radius: *radius,
             law: incompressible(material)?,
@@ -200,8 +215,51 @@ fn layered_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
         })
     });
     let layers = layers.collect::<Result<Vec<_>, Refusal>>()?;
-    let problem = problem(given, radii[0], layers)?;
+    let problem = problem(given, inner_radius, layers)?;
     Ok(Box::new(PressurisedTube::solve(&problem)?))
+}
+
+/// A law for a compressible wall; one that preserves volume has an infinite bulk modulus there.
+pub(super) fn compressible(material: &Material) -> Result<Compressible, Refusal> {
+    match material {
+        Material::Compressible(law) => Ok(law.clone()),
+        Material::Incompressible(law) => Ok(incompressible_layer(law.clone())),
+        other => {
+            let message = format!("{} is no law of finite strain", other.in_words());
+            Err(refuse("material", message, ""))
+        }
+    }
+}
+
+fn compressible_tube(
+    given: &Given,
+    inner_radius: f64,
+    layers: &[(f64, &Material)],
+) -> Result<Box<dyn ExactSolution>, Refusal> {
+    let layers = layers
+        .iter()
+        .map(|(radius, material)| Ok((*radius, compressible(material)?)));
+    let problem = CompressibleTubeProblem {
+        inner_radius,
+        layers: layers.collect::<Result<Vec<_>, Refusal>>()?,
+        ends: given.ends()?,
+        drive: compressible_drive(given)?,
+        outer_pressure: given.finite_or("outer-pressure", 0.0)?,
+        load: match given.text("load") {
+            Some("dead") => compressible::Load::Dead,
+            _ => compressible::Load::Follower,
+        },
+    };
+    Ok(Box::new(CompressibleTube::solve(&problem)?))
+}
+
+/// The same choice for a compressible wall.
+pub(super) fn compressible_drive(given: &Given) -> Result<compressible::Drive, Refusal> {
+    Ok(match drive(given)? {
+        Drive::InnerPressure(p) => compressible::Drive::InnerPressure(p),
+        Drive::InnerWallStretch(l) => compressible::Drive::InnerWallStretch(l),
+        Drive::EnclosedVolume(v) => compressible::Drive::EnclosedVolume(v),
+    })
 }
 
 fn graded_tube(given: &Given) -> Result<Box<dyn ExactSolution>, Refusal> {
@@ -238,7 +296,7 @@ const WALL_CHECKS: &[&str] = &[
 
 pub(super) const LAYERED_TUBE: Entry = Entry {
     name: "layered-tube",
-    title: "Tube of bonded incompressible layers under pressure, finite strain",
+    title: "Tube of bonded layers under pressure, finite strain",
     parameters: &[
         ParameterEntry::required(
             "radii",
@@ -254,7 +312,7 @@ pub(super) const LAYERED_TUBE: Entry = Entry {
         LOAD,
     ],
     kinematics: Kinematics::Finite,
-    material_kinds: &[MaterialKind::Incompressible],
+    material_kinds: FINITE,
     range: "any number of layers; otherwise as pressurised-tube; at an interface the stresses are those of the inner layer",
     sources: &["Ogden, Non-Linear Elastic Deformations (1984), section 5.3, layer by layer"],
     checks: WALL_CHECKS,
@@ -303,7 +361,7 @@ pub(super) const PRESSURISED_TUBE: Entry = Entry {
         LOAD,
     ],
     kinematics: Kinematics::Finite,
-    material_kinds: &[MaterialKind::Incompressible],
+    material_kinds: FINITE,
     range: "any 0 < inner-radius < outer-radius, checked for ratios from 1.0001 to 100; pressures up to the first \
             limit of the inner pressure (maximum or asymptote); axial force applied before the pressure",
     sources: &[

@@ -30,6 +30,19 @@ pub(super) struct TubeWords {
     pub dead: bool,
 }
 
+/// `tube`, or a tube of layers by the radii where they meet; `outer` are the outer radii of the layers.
+pub(super) fn layers_in_words(outer: &[f64], unit: &str) -> String {
+    let Some((_, inner)) = outer.split_last().filter(|(_, inner)| !inner.is_empty()) else {
+        return "tube".to_string();
+    };
+    let inner: Vec<_> = inner.iter().map(f64::to_string).collect();
+    format!(
+        "tube of {} bonded layers that meet at R = {} {unit}",
+        outer.len(),
+        inner.join(", ")
+    )
+}
+
 /// Pressures on the walls in words: `0.03 MPa on the bore`.
 pub(super) fn pressures(walls: [(&str, f64); 2], units: &UnitSystem) -> String {
     let unit = units.stress.name;

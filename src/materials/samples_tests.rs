@@ -116,13 +116,14 @@ pub(crate) fn incompressible_laws() -> Vec<Arc<dyn IncompressibleLaw>> {
         let values = vec![("energy".to_string(), Constant::from(energy))];
         ("stated", values)
     });
-    let built = numbers
-        .chain(lists)
-        .chain(stated)
-        .map(|(name, values)| match build(name, &values) {
-            Ok(Material::Incompressible(law)) => law,
-            other => panic!("{name} {values:?}: {other:?}"),
-        });
+    let built =
+        numbers
+            .chain(lists)
+            .chain(stated)
+            .map(|(name, values)| match build(name, &values) {
+                Ok(Material::Incompressible(law)) => law,
+                other => panic!("{name} {values:?}: {other:?}"),
+            });
     built.collect()
 }
 

@@ -110,6 +110,17 @@ fn check_three(factors: &[f64]) -> Result<(), Problem> {
     Err(problem.because("dW/dI1 falls to zero at some strain, and stress with it"))
 }
 
+impl Yeoh {
+    /// The usual three terms; their range is not checked, as [`super::build`] does.
+    pub fn three_terms(c10: f64, c20: f64, c30: f64) -> Self {
+        Self {
+            series: PowerSeries {
+                factors: vec![c10, c20, c30],
+            },
+        }
+    }
+}
+
 impl Formula for Yeoh {
     const NAME: &'static str = "Yeoh";
     const ENERGY: &'static str = "W = c10 (I1 - 3) + c20 (I1 - 3)^2 + c30 (I1 - 3)^3";

@@ -55,6 +55,11 @@ impl Chebyshev {
         (self.lower, self.upper)
     }
 
+    /// c0, c1, ... of the header.
+    pub fn coefficients(&self) -> &[f64] {
+        &self.coefficients
+    }
+
     /// Whether `x` lies in the interval of the fit (either orientation).
     pub fn contains(&self, x: f64) -> bool {
         (x - self.lower) * (x - self.upper) <= 0.0

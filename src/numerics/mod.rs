@@ -1,8 +1,9 @@
-//! Mathematics without mechanics: sums that lose nothing, Gauss rules, Chebyshev interpolants, bracketed
+//! Mathematics without mechanics: sums that lose nothing, Gauss rules, collocation, Chebyshev interpolants, bracketed
 //! roots, straight-line fits with their uncertainty, monotone tables, the inverse Langevin function, the sign of sums of
 //! exponentials, expressions typed by users. Imports nothing of ours.
 
 pub mod chebyshev;
+pub mod collocation;
 pub mod exponential_sum;
 pub mod expression;
 pub mod langevin;
@@ -13,6 +14,7 @@ pub mod root;
 pub mod sum;
 
 pub use chebyshev::{Chebyshev, Piecewise};
+pub use collocation::Collocation;
 pub use expression::{Expression, ExpressionError};
 pub use line_fit::{LineFit, student_t_quantile};
 pub use monotone::Monotone;

@@ -1,7 +1,7 @@
 //! Tables of an exact solution as CSV: stations through the wall, totals.
 
 use super::plan::CasePlan;
-use crate::exact::{Frame, State};
+use crate::exact::{Frame, Kinematics, State};
 use crate::mechanics::Point;
 
 /// 17 significant digits: enough to give back the same double.
@@ -23,10 +23,11 @@ pub fn stations(case: &CasePlan, stations: usize) -> Result<String, String> {
         let point = Point::new(along[0][i], along[1][i], along[2][i]);
         let state = case.exact.at(point).map_err(|r| r.to_string())?;
         let spherical = case.exact.body().frame() == Frame::Spherical;
+        let small = case.exact.kinematics() == Kinematics::SmallStrain;
         let cells = line
             .columns
             .iter()
-            .map(|column| digits17(cell(column, spherical, &point, &state)));
+            .map(|column| digits17(cell(column, (spherical, small), &point, &state)));
         csv.push_str(&cells.collect::<Vec<_>>().join(","));
         csv.push('\n');
     }
@@ -34,30 +35,27 @@ pub fn stations(case: &CasePlan, stations: usize) -> Result<String, String> {
 }
 
 /// One column of a station; NaN for a name that no solution may list.
-fn cell(column: &str, spherical: bool, point: &Point, state: &State) -> f64 {
+fn cell(column: &str, (spherical, small): (bool, bool), point: &Point, state: &State) -> f64 {
     let (x, u) = (point.to_array(), state.displacement);
     let dimensions = if spherical { 3 } else { 2 };
     let square = |v: [f64; 3]| v[..dimensions].iter().map(|c| c * c).sum::<f64>();
     let radius = square(x).sqrt();
     let on_axis = x[1] == 0.0 && u[1] == 0.0 && (!spherical || (x[2] == 0.0 && u[2] == 0.0));
-    let deformed = match on_axis {
-        true => x[0] + u[0],
-        false => square([x[0] + u[0], x[1] + u[1], x[2] + u[2]]).sqrt(),
-    };
-    // r - R from r^2 - R^2: no cancellation at small displacements
-    let outward = || {
-        let growth = (0..dimensions)
-            .map(|i| (2.0 * x[i] + u[i]) * u[i])
-            .sum::<f64>();
-        match radius + deformed {
-            _ if on_axis => u[0],
-            0.0 => 0.0,
-            both => growth / both,
+    let deformed = square([x[0] + u[0], x[1] + u[1], x[2] + u[2]]).sqrt();
+    let outward = || match small {
+        _ if on_axis => u[0],
+        _ if radius == 0.0 => 0.0,
+        true => (0..dimensions).map(|i| x[i] * u[i]).sum::<f64>() / radius,
+        // r - R from r^2 - R^2: no cancellation at small displacements
+        false => {
+            let growth = (0..dimensions).map(|i| (2.0 * x[i] + u[i]) * u[i]);
+            growth.sum::<f64>() / (radius + deformed)
         }
     };
     let (s, t) = (state.stress, state.local_stress);
     match column {
         "R" => radius,
+        "r" if small || on_axis => radius + outward(),
         "r" => deformed,
         "u_r" => outward(),
         "X" => x[0],

@@ -1,8 +1,11 @@
-//! Set-up time and time per point of the exact tubes. Wanted: set-up below 5 ms, a point below 200 ns.
+//! Set-up time and time per point of the exact tubes. Wanted: set-up below 5 ms (compressible: 50 ms), a point below 200 ns
+//! (compressible: 300 ns, half of it in the law).
 
 use divan::{Bencher, black_box};
-use truebore::exact::{Ends, Parameters, build};
-use truebore::materials;
+use std::sync::Arc;
+use truebore::exact::compressible::{CompressibleTube, CompressibleTubeProblem, Drive, Load};
+use truebore::exact::{Ends, ExactSolution, Parameters, build};
+use truebore::materials::{self, Compressible, MooneyRivlin, Volumetric, VolumetricForm};
 use truebore::mechanics::Point;
 
 fn main() {
@@ -57,6 +60,58 @@ fn thousand_points(bencher: Bencher, name: &str) {
         .map(|i| {
             let share = (i * 619 % 1000) as f64 / 1000.0;
             Point::from_cylindrical(a + (b - a) * share, share, 0.0)
+        })
+        .collect();
+    bencher.bench(|| {
+        let states = points.iter().filter_map(|p| tube.at(black_box(*p)).ok());
+        states.map(|s| s.stress.xx).sum::<f64>()
+    });
+}
+
+fn compressible(name: &str) -> CompressibleTubeProblem {
+    let law = |bulk| Compressible::Split {
+        law: Arc::new(MooneyRivlin {
+            c10: 0.15,
+            c01: 0.05,
+        }),
+        volumetric: Volumetric {
+            form: VolumetricForm::Quadratic,
+            bulk,
+        },
+    };
+    let layers = match name {
+        "thick" => vec![(800.0, law(400.0))],
+        "three-layers" => vec![(9.0, law(400.0)), (10.0, law(4.0)), (12.0, law(4e6))],
+        _ => vec![(12.0, law(400.0))],
+    };
+    CompressibleTubeProblem {
+        inner_radius: 8.0,
+        layers,
+        ends: Ends::Closed,
+        drive: Drive::InnerPressure(0.03),
+        outer_pressure: 0.0,
+        load: Load::Follower,
+    }
+}
+
+const COMPRESSIBLE: [&str; 3] = ["one-layer", "three-layers", "thick"];
+
+#[divan::bench(args = COMPRESSIBLE)]
+fn set_up_compressible(bencher: Bencher, name: &str) {
+    let given = compressible(name);
+    bencher.bench(|| CompressibleTube::solve(black_box(&given)).expect("solved"));
+}
+
+/// A thousand points through the wall: divide by a thousand.
+#[divan::bench(args = COMPRESSIBLE)]
+fn thousand_points_compressible(bencher: Bencher, name: &str) {
+    let given = compressible(name);
+    let tube = CompressibleTube::solve(&given).expect("solved");
+    let outer = given.layers.last().map_or(0.0, |l| l.0);
+    let points: Vec<_> = (0..1000)
+        .map(|i| {
+            let share = (i * 619 % 1000) as f64 / 1000.0;
+            Point::from_cylindrical(8.0 + (outer - 8.0) * share, share, 0.0)
         })
         .collect();
     bencher.bench(|| {

@@ -27,7 +27,7 @@ use super::body::Body;
 use super::description::Description;
 use super::parameters::{Parameters, refuse};
 use super::solution::{ErrorBound, ExactSolution, Extent, Kinematics, Refusal, State, Total};
-use super::tube_words::{Bore, TubeWords};
+use super::tube_words::{Bore, TubeWords, layers_in_words};
 use crate::mechanics::{Dimension, Point, UnitSystem};
 use limit::rounded;
 use wall::Wall;
@@ -172,19 +172,8 @@ impl ExactSolution for PressurisedTube {
     fn description(&self, units: &UnitSystem) -> Description {
         let length = units.length.name;
         let body = match (self.layers.as_slice(), &self.grading) {
-            ([_], Grading::None) => "tube".to_string(),
-            ([_], grading) => format!("graded tube ({})", grading.in_words(length)),
-            (radii, _) => {
-                let inner: Vec<_> = radii[..radii.len() - 1]
-                    .iter()
-                    .map(f64::to_string)
-                    .collect();
-                format!(
-                    "tube of {} bonded layers that meet at R = {} {length}",
-                    radii.len(),
-                    inner.join(", ")
-                )
-            }
+            ([_], Grading::None) | ([_, _, ..], _) => layers_in_words(&self.layers, length),
+            (_, grading) => format!("graded tube ({})", grading.in_words(length)),
         };
         self.words.description(&body, units)
     }

@@ -191,8 +191,9 @@ impl Path<'_> {
             }
             trail.push(next);
             here = next;
+            // in g, where the wall is thick and soft; an arc that is all in e is not stretched further than twice
             let widest = if here.g.abs() < 5.0 { 0.25 } else { 1.0 };
-            step = (1.5 * step).min(widest);
+            step = (1.5 * step).min(widest / here.tangent.0.abs().max(0.5));
         }
     }
 

@@ -85,11 +85,7 @@ fn two_fibre(mu: f64, k1: f64, k2: f64, beta: f64) -> Hand {
 /// Typed energy and constants, and the same law by another route.
 fn pairs() -> Vec<(Stated, Hand)> {
     let mooney = MooneyRivlin { c10: 0.3, c01: 0.2 };
-    let yeoh = Yeoh {
-        c10: 0.5,
-        c20: -0.01,
-        c30: 1e-3,
-    };
+    let yeoh = Yeoh::three_terms(0.5, -0.01, 1e-3);
     let demiray = Demiray { c: 0.4, b: 1.35 };
     let neo = NeoHookean { mu: 0.4 };
     let mu = [("mu", 0.4)];

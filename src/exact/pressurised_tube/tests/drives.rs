@@ -188,11 +188,7 @@ fn the_limit_of_a_dead_load_is_its_own() {
         );
     }
     // dW/dI1 dips to a fiftieth at I1 - 3 = 40
-    let dip: Arc<dyn IncompressibleLaw> = Arc::new(Yeoh {
-        c10: 0.5,
-        c20: -0.0121,
-        c30: 1e-4,
-    });
+    let dip: Arc<dyn IncompressibleLaw> = Arc::new(Yeoh::three_terms(0.5, -0.0121, 1e-4));
     for (ends, closed) in [(Ends::Closed, true), (FREE, false)] {
         let live = problem(vec![layer(1.5, dip.clone())], ends, 0.0);
         let top_live = total(&solved(&live), "limit_pressure");

@@ -23,7 +23,7 @@ fn apart(one: &PressurisedTube, other: &PressurisedTube) -> f64 {
     ];
     let off = |name: &&str| (total(one, name) / total(other, name) - 1.0).abs();
     let mut worst = names.iter().map(off).fold(0.0, f64::max);
-    let Body::Tube { inner, outer } = one.body();
+    let (inner, outer) = one.body().span().unwrap();
     let mut largest = 0.0_f64;
     let mut stress = 0.0_f64;
     for i in 0..=40 {
@@ -173,11 +173,7 @@ fn random_layers(kinds: [usize; 3], count: usize, thickness: f64, n: f64) -> Vec
             1 => rubber(),
             2 => locking(30.0),
             3 => fibres(0.7),
-            _ => Arc::new(Yeoh {
-                c10: 0.5,
-                c20: -0.01,
-                c30: 1e-3,
-            }),
+            _ => Arc::new(Yeoh::three_terms(0.5, -0.01, 1e-3)),
         }
     };
     let radius = |i: usize| 1.0 + thickness * [0.2, 0.55, 1.0][i + 3 - count];

@@ -291,7 +291,7 @@ def rows_of(case, body, points, outcome):
     """[(point or None, {quantity: value})]: both walls, a point inside each layer, continuous values at interfaces."""
     states, _, _, lz = outcome
     rows = [(None, totals(body, outcome))]
-    for p, point in zip(states[1::2], points):
+    for p, point in zip(states[1::4], points):
         rows.append((point, cartesian(body, p, lz, point)))
     walls = {0: states[0], len(body.radii) - 1: states[-1]}
     for i, R in enumerate(body.radii):
