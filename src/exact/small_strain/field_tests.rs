@@ -118,6 +118,29 @@ impl<'a> Check<'a> {
     }
 }
 
+/// Off the middle plane of plane stress uz = ezz Z has slopes of its own: the third row of the gradient.
+pub fn slopes_of_thickness(solution: &dyn ExactSolution, point: Point) {
+    let h = 1e-4 * point.radius();
+    let uz = |x: f64, y: f64| {
+        let near = Point::new(point.x + x, point.y + y, point.z);
+        solution.at(near).unwrap().displacement.z
+    };
+    let gradient = solution.at(point).unwrap().displacement_gradient;
+    let found = [
+        (uz(h, 0.0) - uz(-h, 0.0)) / (2.0 * h),
+        (uz(0.0, h) - uz(0.0, -h)) / (2.0 * h),
+    ];
+    let size = gradient.abs().max();
+    for (i, slope) in found.into_iter().enumerate() {
+        let off = (slope - gradient[(2, i)]).abs();
+        assert!(off < 1e-6 * size, "{slope:e} {gradient}");
+        assert!(
+            slope.abs() > 1e-3 * size,
+            "nothing to see: {slope:e} {gradient}"
+        );
+    }
+}
+
 /// Two points on each side along each axis, far, near, near, far; order +2h, +h, -h, -2h.
 fn neighbours(point: Point, h: f64) -> Vec<Point> {
     let mut all = Vec::new();

@@ -1,6 +1,6 @@
 //! Traps of heated tubes: what plane stress and free ends share and what they do not; thin walls; textbook logarithms.
 
-use super::super::field_tests::{Check, number, steel};
+use super::super::field_tests::{Check, number, slopes_of_thickness, steel};
 use super::*;
 use crate::exact::{Value, build};
 use proptest::prelude::*;
@@ -152,6 +152,12 @@ fn thin_walls_scale_smoothly() {
         let middle = at(1.0 + 0.5 * h).xx / (unit * h);
         assert!((middle + 0.125).abs() < 0.15 * h, "{h} {middle}");
     }
+}
+
+#[test]
+fn the_thickness_strain_has_its_slopes() {
+    let tube = tube(2.0, 5.0, LAW, [80.0, -10.0], Ends::PlaneStress);
+    slopes_of_thickness(tube.as_ref(), Point::new(2.1, -1.4, 2.5));
 }
 
 #[test]

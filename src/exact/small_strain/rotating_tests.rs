@@ -1,6 +1,6 @@
 //! Rotating bodies: field equations, work of the body force, pin holes and thin hoops.
 
-use super::super::field_tests::{Check, number, steel};
+use super::super::field_tests::{Check, number, slopes_of_thickness, steel};
 use super::*;
 use crate::exact::{Value, build};
 use proptest::prelude::*;
@@ -77,6 +77,12 @@ fn a_pin_hole_doubles_the_stress() {
     assert!((centre.unwrap().stress.xx - 3.3 / 8.0 * 0.02).abs() < 1e-17);
     let hoop = turning(1.0 - 1e-9, 1.0, LAW, Ends::PlaneStress).at(Point::new(1.0, 0.0, 0.0));
     assert!((hoop.unwrap().local_stress.yy / 0.02 - 1.0).abs() < 2e-9);
+}
+
+#[test]
+fn the_thickness_strain_has_its_slopes() {
+    let disk = turning(1.0, 4.0, LAW, Ends::PlaneStress);
+    slopes_of_thickness(disk.as_ref(), Point::new(2.1, -1.4, 2.5));
 }
 
 #[test]
