@@ -6,7 +6,10 @@ use super::small_strain::{
     shrink_fit_tube, strip,
 };
 use super::solution::{ExactSolution, Kinematics, Refusal};
-use super::{published, stated_field, tabulated, tube_entries};
+use super::{
+    bending, homogeneous, pressurised_sphere, published, stated_field, tabulated,
+    torsion_extension, tube_entries, tube_shear,
+};
 use crate::materials::{MaterialKind, catalogue as materials};
 
 /// All solutions, in the order they are listed. To add one, add its `ENTRY`.
@@ -14,6 +17,13 @@ const ENTRIES: &[Entry] = &[
     tube_entries::PRESSURISED_TUBE,
     tube_entries::LAYERED_TUBE,
     tube_entries::GRADED_TUBE,
+    pressurised_sphere::ENTRY,
+    torsion_extension::ENTRY,
+    tube_shear::AZIMUTHAL_SHEAR,
+    tube_shear::AXIAL_SHEAR,
+    bending::BENT_BLOCK,
+    bending::STRAIGHTENED_SECTOR,
+    homogeneous::ENTRY,
     tube_entries::LAME_TUBE,
     lame_sphere::ENTRY,
     shrink_fit_tube::ENTRY,

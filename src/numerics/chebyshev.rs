@@ -75,16 +75,19 @@ impl Chebyshev {
         0.5 * self.coefficients[0] + (0.5 * t2 * b1 - b2)
     }
 
+    /// Size of the largest coefficient.
+    pub fn largest(&self) -> f64 {
+        let sizes = self.coefficients.iter().map(|c| c.abs());
+        sizes.fold(0.0, f64::max)
+    }
+
     /// The larger of the last two coefficients against the largest: how well the function is resolved. NaN when
     /// the function was not finite at a node.
     pub fn tail(&self) -> f64 {
         if !self.coefficients.iter().all(|c| c.is_finite()) {
             return f64::NAN;
         }
-        let largest = self
-            .coefficients
-            .iter()
-            .fold(0.0_f64, |m, c| m.max(c.abs()));
+        let largest = self.largest();
         let end = self.coefficients.iter().rev().take(2);
         let last = end.fold(0.0_f64, |m, c| m.max(c.abs()));
         if largest == 0.0 { 0.0 } else { last / largest }

@@ -11,6 +11,7 @@ pub mod line_fit;
 pub mod monotone;
 pub mod quadrature;
 pub mod root;
+pub mod running_mean;
 pub mod sum;
 
 pub use chebyshev::{Chebyshev, Piecewise};
@@ -20,4 +21,5 @@ pub use line_fit::{LineFit, student_t_quantile};
 pub use monotone::Monotone;
 pub use quadrature::GaussRule;
 pub use root::find_root;
+pub use running_mean::{Resolution, RunningMean};
 pub use sum::CompensatedSum;

@@ -38,7 +38,7 @@ pub(super) enum Control {
     Swell(f64),
     /// The inner pressure, nominal for dead loads.
     Load(f64),
-    /// a/A.
+    /// 2 ln(a/A), 3 ln(a/A) in the sphere.
     Bore(f64),
     /// Pi = Po.
     Level,
@@ -285,14 +285,14 @@ impl<'a> Integrals<'a> {
         match given.control {
             Control::Swell(g) => (self.unknown(BORE).less(g), 1.0),
             Control::Load(load) => (self.load(given.dead).less(load), scale),
-            Control::Bore(stretch) => {
-                // 2 ln(a/A) = g - e in the tube, 3 ln(a/A) = g in the sphere
+            Control::Bore(place) => {
+                // g - e in the tube, g in the sphere
                 let mut row = self.unknown(BORE);
                 if self.mesh.wall.shape == Shape::Tube {
                     row.value -= self.extra(STRETCH);
                     row.by[n + STRETCH] = -1.0;
                 }
-                (row.less(self.mesh.wall.shape.power() * stretch.ln()), 1.0)
+                (row.less(place), 1.0)
             }
             Control::Level => {
                 let mut row = self.unknown(INNER);

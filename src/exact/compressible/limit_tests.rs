@@ -4,7 +4,9 @@ use super::tests::{FREE, coupled, mooney, near, of, soft, solved, sphere, split,
 use super::*;
 use crate::exact::Ends;
 use crate::exact::solution::ExactSolution;
-use crate::materials::{Differences, Formula, MooneyRivlin, NeoHookean, Number, Parameter};
+use crate::materials::{
+    Demiray, Differences, Formula, MooneyRivlin, NeoHookean, Number, Parameter,
+};
 use crate::mechanics::Point;
 use std::f64::consts::PI;
 
@@ -304,6 +306,15 @@ fn around_the_wall_the_formulas_go_on() {
         let outside = ball.at(Point::new(0.0, 1.01, 0.0)).unwrap().stress.yy;
         assert!((inside + outside + 0.1).abs() < 2e-3, "{inside} {outside}");
     }
+}
+
+// An exponential law has no limit, and the path ends where its numbers leave the range of doubles.
+#[test]
+fn a_stiffening_law_has_no_limit() {
+    let law = split(Demiray { c: 1.0, b: 2.0 }, VolumetricForm::Quadratic, 1e3);
+    let limit = *solved(&tube((1.0, 1.5), Ends::PlaneStrain, law, 0.5)).limit();
+    assert!(matches!(limit, Limit::None { .. }), "{limit:?}");
+    assert!(limit.pressure().unwrap_err().contains("no limit"));
 }
 
 #[test]

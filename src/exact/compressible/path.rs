@@ -1,8 +1,9 @@
-//! The branch of states from the unloaded wall, followed in g, and where the load has its maximum on it.
+//! The branch of states from the unloaded wall, followed in the bore's radius, and where the load has its maximum on it.
 //!
 //! The outer pressure and the axial condition are applied first, with the same pressure inside; then the inner load
-//! changes alone while the bore grows or shrinks. With g as the parameter and the load as an unknown, a maximum of the
-//! load is a point like any other. Followed on a coarse mesh; what is printed is solved again on a fine one (`solve`).
+//! changes alone while the bore grows or shrinks. With ln(a/A) as the parameter and the load as an unknown, a maximum
+//! of the load is a point like any other, and so is one of the volume (a locking tube that draws in). Followed on a
+//! coarse mesh; what is printed is solved again on a fine one (`solve`).
 
 use super::integrals::{Axial, BORE, Conditions, Control, Integrals, STRETCH};
 use super::mesh::{Mesh, Shape, Wall};
@@ -18,8 +19,10 @@ const NODES: usize = 10;
 const TAIL: f64 = 1e-4;
 /// Newton's tolerance on the path.
 const CLOSE: f64 = 1e-9;
-/// Largest |g| followed.
+/// Largest parameter followed.
 const FARTHEST: f64 = 40.0;
+/// A load this many times the modulus where the path ends is that of a law that locks or grows exponentially: no limit.
+const STIFFENED: f64 = 1e3;
 /// Most stations of a march, so that it always ends.
 const MOST_STATIONS: usize = 400;
 /// Most panels of a mesh: a bound on the work, far above what smooth walls need.
@@ -30,14 +33,16 @@ pub(super) const MOST_PANELS: usize = 20;
 pub(super) struct Station {
     pub mesh: Arc<Mesh>,
     pub y: DVector<f64>,
-    /// dy/dg along the path.
+    /// dy/dplace along the path.
     pub tangent: DVector<f64>,
     pub g: f64,
+    /// The path's parameter: 2 ln(a/A), 3 ln(a/A) in the sphere.
+    pub place: f64,
     /// ln(a/A).
     pub bore: f64,
     /// Inner load: Pi, nominal for dead loads.
     pub load: f64,
-    /// d load/dg along the path.
+    /// d load/dplace along the path.
     pub slope: f64,
 }
 
@@ -95,8 +100,12 @@ impl Path {
         let mut right = DVector::zeros(y.len());
         right[y.len() - 1] = 1.0;
         let tangent = found.lu.solve(&right)?;
-        // whatever the control was, along the path g grows at the rate of one
-        let tangent = &tangent / tangent[n + BORE];
+        // whatever the control was, along the path its parameter grows at the rate of one
+        let rate = match self.wall.shape {
+            Shape::Tube => tangent[n + BORE] - tangent[n + STRETCH],
+            Shape::Sphere => tangent[n + BORE],
+        };
+        let tangent = &tangent / rate;
         let all = Integrals::new(mesh, &y, &found.system.states);
         let load = all.load(self.dead);
         let g = y[n + BORE];
@@ -108,6 +117,7 @@ impl Path {
         let station = Station {
             mesh: mesh.clone(),
             g,
+            place: self.wall.shape.power() * bore,
             bore,
             load: load.value,
             slope,
@@ -117,12 +127,12 @@ impl Path {
         (slope.is_finite() && station.load.is_finite()).then_some(station)
     }
 
-    /// The state at `g` from a neighbouring one, and how many steps it took.
-    pub fn at(&self, from: &Station, g: f64, tolerance: f64) -> Option<(Station, usize)> {
-        let guess = &from.y + &from.tangent * (g - from.g);
+    /// The state at a place from a neighbouring one, and how many steps it took.
+    pub fn at(&self, from: &Station, place: f64, tolerance: f64) -> Option<(Station, usize)> {
+        let guess = &from.y + &from.tangent * (place - from.place);
         let found = newton(
             &from.mesh,
-            &self.conditions(Control::Swell(g)),
+            &self.conditions(Control::Bore(place)),
             guess,
             tolerance,
         )?;
@@ -176,11 +186,27 @@ impl Path {
         let panels = super::refine::halved(&station.mesh.panels, &bad);
         let mesh = Arc::new(Mesh::new(&self.wall, &station.mesh.rule, panels));
         let y = super::refine::transfer(&station.mesh, &station.y, &mesh);
-        let found = newton(&mesh, &self.conditions(Control::Swell(station.g)), y, CLOSE)?;
+        let found = newton(
+            &mesh,
+            &self.conditions(Control::Bore(station.place)),
+            y,
+            CLOSE,
+        )?;
         self.station(&mesh, found)
     }
 
-    /// Follows the path from `start` to growing g (`sign` = 1) or falling g (-1) until `stop` or its end. A maximum of the
+    /// The end at a station beyond which there is none.
+    fn stuck(&self, start: &Station, here: Station) -> End {
+        let risen = (here.load - start.load) / self.wall.pressure_scale();
+        let end = if risen > STIFFENED {
+            End::Open
+        } else {
+            End::Lost
+        };
+        end(Box::new(here))
+    }
+
+    /// Follows the path from `start` to growing (`sign` = 1) or shrinking bores (-1) until `stop` or its end. A maximum of the
     /// load is an end only with `to_maximum`. All stations passed, in order; no end when `stop` said so.
     pub fn march(
         &self,
@@ -197,9 +223,9 @@ impl Path {
                 return (trail, None);
             }
             if trail.len() > MOST_STATIONS {
-                return (trail, Some(End::Lost(Box::new(here))));
+                return (trail, Some(self.stuck(start, here)));
             }
-            if here.g.abs() >= FARTHEST {
+            if here.place.abs() >= FARTHEST {
                 let end = if saturated(&trail, &here) {
                     End::Asymptote(here.load)
                 } else {
@@ -207,12 +233,12 @@ impl Path {
                 };
                 return (trail, Some(end));
             }
-            let next = self.at(&here, here.g + sign * step, CLOSE);
+            let next = self.at(&here, here.place + sign * step, CLOSE);
             let next = next.and_then(|(s, steps)| Some((self.resolved(s)?, steps)));
             let Some((next, steps)) = next else {
                 step *= 0.5;
                 if step < 1e-6 {
-                    return (trail, Some(End::Lost(Box::new(here))));
+                    return (trail, Some(self.stuck(start, here)));
                 }
                 continue;
             };
@@ -238,9 +264,12 @@ impl Path {
     }
 }
 
-/// Whether the load moved by less than 1e-9 of itself over the last unit of g: before a true maximum it moves by 4e-2 or
+/// Whether the load moved by less than 1e-9 of itself over the last unit of the path: before a true maximum it moves by 4e-2 or
 /// more, at an asymptote by round-off (numerics.md 1).
 fn saturated(trail: &[Station], here: &Station) -> bool {
-    let before = trail.iter().rev().find(|s| (s.g - here.g).abs() >= 1.0);
+    let before = trail
+        .iter()
+        .rev()
+        .find(|s| (s.place - here.place).abs() >= 1.0);
     before.is_some_and(|s| (here.load - s.load).abs() < 1e-9 * here.load.abs())
 }

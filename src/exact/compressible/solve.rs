@@ -129,9 +129,9 @@ pub(super) fn solve(path: &Path, drive: Drive) -> Result<Solved, Refusal> {
         let message = "the wall could not be solved to round-off at these loads".to_string();
         refuse("", message, "choose a smaller load")
     };
-    // next to a maximum of the load its equation has no digits left that g does not have
+    // next to a maximum of the load its equation has no digits left that the bore does not have
     let station = fine(path, &near, control, NODES)
-        .or_else(|| fine(path, &near, Control::Swell(near.g), NODES))
+        .or_else(|| fine(path, &near, Control::Bore(near.place), NODES))
         .ok_or_else(unsettled)?;
     Ok(Solved {
         station,
@@ -144,7 +144,7 @@ fn control_of(path: &Path, drive: Drive) -> Control {
     let (shape, a) = (path.wall.shape, path.wall.inner);
     match drive {
         Drive::InnerPressure(p) => Control::Load(p),
-        Drive::InnerWallStretch(stretch) => Control::Bore(stretch),
+        Drive::InnerWallStretch(stretch) => Control::Bore(shape.power() * stretch.ln()),
         Drive::EnclosedVolume(volume) => Control::Swell((volume / shape_volume(shape, a)).ln()),
     }
 }
@@ -241,17 +241,20 @@ fn limit_of(path: &Path, start: &Station, end: Option<End>) -> (Limit, Option<St
 
 /// The station of zero slope between two stations, first on the path's mesh, then on a fine one.
 fn maximum(path: &Path, before: &Station, after: &Station) -> Option<Station> {
-    let slope = |g: f64| path.at(before, g, 1e-9).map_or(f64::NAN, |(s, _)| s.slope);
-    let g = find_root(before.g, after.g, slope).ok()?;
-    let (coarse, _) = path.at(before, g, 1e-9)?;
-    let mut here = fine(path, &coarse, Control::Swell(g), NODES)?;
-    let (mut other, _) = path.at(&here, g + 1e-4 * (after.g - before.g), 0.0)?;
+    let slope = |place: f64| {
+        path.at(before, place, 1e-9)
+            .map_or(f64::NAN, |(s, _)| s.slope)
+    };
+    let place = find_root(before.place, after.place, slope).ok()?;
+    let (coarse, _) = path.at(before, place, 1e-9)?;
+    let mut here = fine(path, &coarse, Control::Bore(place), NODES)?;
+    let (mut other, _) = path.at(&here, place + 1e-4 * (after.place - before.place), 0.0)?;
     for _ in 0..8 {
-        let step = here.slope * (here.g - other.g) / (here.slope - other.slope);
-        if !step.is_finite() || step.abs() <= 1e-12 * (1.0 + g.abs()) {
+        let step = here.slope * (here.place - other.place) / (here.slope - other.slope);
+        if !step.is_finite() || step.abs() <= 1e-12 * (1.0 + place.abs()) {
             break;
         }
-        let (next, _) = path.at(&here, here.g - step, 0.0)?;
+        let (next, _) = path.at(&here, here.place - step, 0.0)?;
         // no closer: round-off
         if next.slope.abs() >= here.slope.abs() {
             break;
@@ -298,15 +301,15 @@ fn enclosing(trail: &[Station], beyond: impl Fn(&Station) -> bool) -> Option<(&S
 
 /// The station of this load between two stations that enclose it: first on the path's mesh, then on a fine one.
 fn between(path: &Path, low: &Station, high: &Station, load: f64) -> Option<Station> {
-    let range = (low.g, high.g);
+    let range = (low.place, high.place);
     let share = (load - low.load) / (high.load - low.load);
-    let (guess, _) = path.at(low, low.g + share * (high.g - low.g), 1e-9)?;
+    let (guess, _) = path.at(low, low.place + share * (high.place - low.place), 1e-9)?;
     let coarse = searched(path, guess, range, load, 1e-6)?;
-    let fine = fine(path, &coarse, Control::Swell(coarse.g), NODES)?;
+    let fine = fine(path, &coarse, Control::Bore(coarse.place), NODES)?;
     searched(path, fine, range, load, 1e-13)
 }
 
-/// Newton's method on the load in g, kept inside a bracket on which the load is monotone.
+/// Newton's method on the load in the bore, kept inside a bracket on which the load is monotone.
 fn searched(
     path: &Path,
     mut here: Station,
@@ -322,27 +325,27 @@ fn searched(
             break;
         }
         if (miss > 0.0) == rising {
-            high = here.g;
+            high = here.place;
         } else {
-            low = here.g;
+            low = here.place;
         }
-        let newton = here.g - miss / here.slope;
+        let newton = here.place - miss / here.slope;
         let inside = (newton - low) * (newton - high) < 0.0;
-        let g = if inside { newton } else { 0.5 * (low + high) };
-        let step = (g - here.g).abs();
-        if step <= close * g.abs() || (step <= 1e-9 * g.abs() && step >= 0.5 * last) {
+        let place = if inside { newton } else { 0.5 * (low + high) };
+        let step = (place - here.place).abs();
+        if step <= close * place.abs() || (step <= 1e-9 * place.abs() && step >= 0.5 * last) {
             break;
         }
         last = step;
-        (here, _) = path.at(&here, g, if close < 1e-9 { 0.0 } else { 1e-9 })?;
+        (here, _) = path.at(&here, place, if close < 1e-9 { 0.0 } else { 1e-9 })?;
     }
     Some(here)
 }
 
-/// The state at a prescribed bore, on the branch from the unloaded wall and past maxima of the load.
+/// The state at a prescribed bore or volume, on the branch from the unloaded wall and past maxima of the load.
 fn at_bore(path: &Path, start: &Station, control: Control) -> Result<Station, Refusal> {
     let miss = |s: &Station| match control {
-        Control::Bore(stretch) => s.bore - stretch.ln(),
+        Control::Bore(place) => s.place - place,
         Control::Swell(g) => s.g - g,
         _ => f64::NAN,
     };
@@ -355,7 +358,7 @@ fn at_bore(path: &Path, start: &Station, control: Control) -> Result<Station, Re
     let (trail, _) = path.march(start, sign, false, reached);
     let found = enclosing(&trail, reached).and_then(|(low, high)| {
         let share = miss(low) / (miss(low) - miss(high));
-        let (guess, _) = path.at(low, low.g + share * (high.g - low.g), 1e-9)?;
+        let (guess, _) = path.at(low, low.place + share * (high.place - low.place), 1e-9)?;
         let n = guess.mesh.len();
         let found = newton(
             &guess.mesh,
