@@ -302,6 +302,9 @@ impl ExactSolution for ShrinkFit {
              inner ring's there by the interference; no friction"
                 .to_string(),
         );
+        if self.words.ends == Ends::PlaneStress {
+            description.totals.retain(|name| *name != "axial_stretch");
+        }
         description.sketch = None;
         description
     }
