@@ -127,6 +127,11 @@ pub trait ExactSolution: Send + Sync + std::fmt::Debug {
         0.0
     }
 
+    /// Whether it has a state at every point, or consists of single numbers.
+    fn has_fields(&self) -> bool {
+        true
+    }
+
     /// Single numbers known beside, or instead of, the fields.
     fn known_values(&self) -> &[KnownValue] {
         &[]

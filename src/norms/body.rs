@@ -95,6 +95,7 @@ pub fn compare(
     look.nodes_on_body(&mut report);
     look.walls(boundary, &mut report);
     look.axial_extent(declared, &mut report);
+    look.outline(boundary, &mut report);
     look.share(declared, mesh_volume, boundary, &mut report);
     report
 }
@@ -306,7 +307,7 @@ impl Look<'_> {
                     Weight::Caution,
                     "straight-wall-sides",
                     place,
-                    "the mid-side nodes on the walls lie on straight chords, not on the circles",
+                    "the mid-side nodes on the walls lie on straight chords, not on the walls",
                 )
                 .expected("mid-side nodes on the wall")
                 .hint("straight sides cost one order of the displacement in L2; move the mid-side nodes onto the wall"),
@@ -316,7 +317,7 @@ impl Look<'_> {
                     Weight::Caution,
                     "mixed-wall-sides",
                     place,
-                    format!("mid-side nodes on the walls: {curved} on the circle, {straight} on the chord, {astray} elsewhere"),
+                    format!("mid-side nodes on the walls: {curved} on the wall, {straight} on the chord, {astray} elsewhere"),
                 )
                 .expected("all on the wall"),
             ),
