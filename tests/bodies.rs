@@ -65,7 +65,12 @@ impl Body {
     fn accept(&self) -> Vec<String> {
         let at_most = |m: &&str| format!("{{ error: {m}, at-most: {ROUND_OFF:e} }}");
         let mut accept: Vec<String> = self.measured.iter().map(at_most).collect();
-        for measure in ["displacement-L2", "displacement-H1"] {
+        // a field that the shapes hold exactly has no order
+        let exact = self.measured.contains(&"displacement-L2");
+        for measure in ["displacement-L2", "displacement-H1"]
+            .into_iter()
+            .filter(|_| !exact)
+        {
             accept.push(format!("{{ order: {measure}, within: {WITHIN} }}"));
             accept.push(format!("{{ error: {measure}, at-most: 5 % }}"));
         }
@@ -435,7 +440,7 @@ fn bodies() -> Vec<Body> {
             "inner-wall-stt",
             "inner-wall-displacement",
         ],
-        Box::new(|n| quarter(Shape::Quad9, 2 * n, 10.0, 40.0)),
+        Box::new(|n| quarter(Shape::Quad9, 2 * n, 10.0, 25.0)),
     );
     for shape in [Shape::Quad8, Shape::Quad9] {
         add(
@@ -474,12 +479,23 @@ fn bodies() -> Vec<Body> {
             [10.0, 10.0],
         ),
     ] {
+        // the field of a round bar is held by the shapes
+        let measured: &[&str] = match axes[0] == axes[1] {
+            true => &[
+                "stress-L2",
+                "displacement-L2",
+                "displacement-H1",
+                "torque",
+                "strain-energy",
+            ],
+            false => &["stress-L2", "energy-density-L2", "torque", "strain-energy"],
+        };
         add(
             name,
             problem,
             "    section: 1/4\n",
             Shape::Hex20,
-            &["stress-L2", "energy-density-L2", "torque", "strain-energy"],
+            measured,
             Box::new(move |n| solid_quarter(Shape::Hex20, n, axes, 20.0)),
         );
     }
@@ -501,7 +517,7 @@ fn bodies() -> Vec<Body> {
     );
     add(
         "layered tube",
-        "layered-tube: { radii: [5, 7, 10], materials: [soft, stiff], ends: plane-strain, inner-pressure: 0.3 }",
+        "layered-tube: { radii: [5, 7, 10], materials: [soft, stiff], ends: plane-strain, inner-pressure: 0.2 }",
         "    section: 1/4\n",
         Shape::Quad9,
         &[
@@ -518,7 +534,7 @@ fn bodies() -> Vec<Body> {
         "compressible tube",
         "pressurised-tube: { inner-radius: 8, outer-radius: 12, ends: closed, material: split, inner-pressure: 0.05 }",
         "    section: 1/4\n",
-        Shape::Hex20,
+        Shape::Quad9,
         &[
             "stress-L2",
             "pressure-L2",
@@ -527,15 +543,25 @@ fn bodies() -> Vec<Body> {
             "axial-stretch",
             "axial-force",
         ],
-        Box::new(|n| quarter(Shape::Hex20, n, 8.0, 12.0)),
+        Box::new(|n| quarter(Shape::Quad9, n, 8.0, 12.0)),
     );
     add(
         "shrink fit",
         "shrink-fit-tube: { radii: [20, 30, 45], radial-interference: 0.02, materials: [steel, bronze], ends: plane-strain }",
         "    section: 1/4\n",
         Shape::Quad9,
-        &["stress-L2", "inner-wall-stt"],
-        Box::new(|n| layered(Shape::Quad9, n, &[20.0, 30.0, 45.0], FRAC_PI_2).with(0.25, 1.0)),
+        &[
+            "stress-L2",
+            "inner-wall-stt",
+            "displacement-largest",
+            "outer-wall-displacement",
+        ],
+        // two rings with nodes of their own, which need not match
+        Box::new(|n| {
+            let inner = layered(Shape::Quad9, n, &[20.0, 30.0], FRAC_PI_2);
+            let outer = layered(Shape::Quad9, n + n / 2, &[30.0, 45.0], FRAC_PI_2);
+            Mesh::apart(&[inner, outer]).with(0.25, 1.0)
+        }),
     );
     add(
         "twisted rubber bar",
@@ -848,9 +874,14 @@ fn a_model_that_cannot_stand_for_the_body_is_refused() {
             element: Shape::Quad9,
             ..body(name)
         };
+        let from = if name.starts_with("stated") {
+            0.0
+        } else {
+            10.0
+        };
         let half = |n: usize| Mesh {
             axisymmetric: true,
-            ..Mesh::bent(Shape::Quad9, [n, n, 1], &|[i, j, _]| [10.0 + i, 0.0, j])
+            ..Mesh::bent(Shape::Quad9, [n, n, 1], &|[i, j, _]| [from + i, 0.0, j])
         };
         let exact = it.exact();
         let exports =
@@ -1188,7 +1219,7 @@ fn a_published_value_is_judged_with_its_digits() {
     let one = "{ error: known-value, at-most: 1 % }";
     for (uy, accept, word) in [
         (23.9667, one, "Pass"),
-        (23.73, one, "Pass"),
+        (23.74, one, "Pass"),
         (23.722, one, "Inconclusive"),
         (23.0, one, "Fail"),
         (-23.9667, one, "Fail"),
@@ -1528,7 +1559,9 @@ fn every_command_answers_for_every_body() {
         let suite = body.suite(body.problem, body.more, &body.accept());
         std::fs::write(at.join("suite.yaml"), &suite).unwrap();
         write(&body.exports(Dialect::default()), at);
-        std::fs::write(at.join("points.csv"), "X,Y,Z,NX,NY\n10.5,1,0,1,0\n").unwrap();
+        let [x, y, z] = (body.mesh)(2).nodes[1];
+        let place = format!("X,Y,Z,NX,NY\n{x},{y},{z},1,0\n");
+        std::fs::write(at.join("points.csv"), place).unwrap();
         let name = body.name;
         let answer = |arguments: &[&str]| {
             let (status, said, errors) = program(at, arguments);
@@ -1558,7 +1591,6 @@ fn every_command_answers_for_every_body() {
         let totals = answer(&["exact", "suite.yaml", "--case", "it", "--totals"]);
         println!("{totals}");
         for way in ["--points", "--loads"] {
-            // the point lies off some of the bodies, where their formulas are continued
             let rows = answer(&["exact", "suite.yaml", "--case", "it", way, "points.csv"]);
             assert_eq!(rows.lines().count(), 2, "{name}");
             println!("{rows}");

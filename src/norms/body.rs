@@ -59,12 +59,14 @@ pub struct BodyReport {
 
 /// What is declared of the mesh.
 #[derive(Debug, Clone, Copy)]
-pub struct Declared {
+pub struct Declared<'a> {
     /// Share of the section.
     pub share: f64,
     pub axial_length: Option<f64>,
     /// How far a node may lie off the body, where it is not [`tolerance`].
     pub node_tolerance: Option<f64>,
+    /// Radii where parts may be meshed apart.
+    pub interfaces: &'a [f64],
 }
 
 /// How far a node may be from where it belongs: a millionth of the wall, and what single precision leaves.
@@ -95,7 +97,7 @@ pub fn compare(
     look.nodes_on_body(&mut report);
     look.walls(boundary, &mut report);
     look.axial_extent(declared, &mut report);
-    look.outline(boundary, &mut report);
+    look.outline(declared, boundary, &mut report);
     look.share(declared, mesh_volume, boundary, &mut report);
     report
 }
@@ -358,7 +360,7 @@ impl Look<'_> {
     }
 }
 
-fn mean(points: impl Iterator<Item = [f64; 3]>) -> [f64; 3] {
+pub(super) fn mean(points: impl Iterator<Item = [f64; 3]>) -> [f64; 3] {
     let (mut sum, mut count) = ([0.0; 3], 0.0);
     for p in points {
         for (s, c) in sum.iter_mut().zip(p) {

@@ -1,12 +1,13 @@
 //! Where the mesh ends, the body must end or be cut: no hole and no missing piece may hide in what coarse sides explain of
 //! the volume. And the mesh reaches as far as its share does: a part of it meshed twice has the volume, not the reach.
 
-use super::body::{BodyReport, Declared, Look, Wall};
+use super::body::{BodyReport, Declared, Look, Wall, mean};
 use crate::exact::Body;
 use crate::input::Finding;
 use crate::mechanics::Point;
 use crate::results::ModelKind;
 use crate::results::sanity::Side;
+use std::collections::BTreeMap;
 use std::f64::consts::PI;
 
 /// Findings of one kind that are listed; the rest are counted.
@@ -32,13 +33,13 @@ impl Look<'_> {
         (corners, first.filter(|_| all))
     }
 
-    /// Every free side is on a wall, on an end, or on a cut that such a body can have.
-    pub(super) fn outline(&self, boundary: &[Side], report: &mut BodyReport) {
+    /// Every free side is on a wall, on an end, on a cut that such a body can have, or where parts meet.
+    pub(super) fn outline(&self, declared: Declared, boundary: &[Side], report: &mut BodyReport) {
         if matches!(self.body, Body::Free { .. }) {
             return;
         }
         let (low, high) = self.bounds();
-        let mut stray = 0;
+        let mut inside: Vec<Side> = Vec::new();
         for side in boundary {
             let (corners, wall) = self.corners(*side);
             let at = |axis: usize, place: f64| {
@@ -56,25 +57,29 @@ impl Look<'_> {
                 (_, ModelKind::Axisymmetric) => at(0, 0.0),
                 _ => self.through_axis(&corners),
             };
-            if wall.is_some() || end || cut {
-                continue;
+            let meet = |at: f64| {
+                let off = |c: &[f64; 3]| (self.radius(*c) - at).abs();
+                corners.iter().all(|c| off(c) <= self.slack)
+            };
+            let meets = declared.interfaces.iter().any(|at| meet(*at));
+            if !(wall.is_some() || end || cut || meets) {
+                inside.push(*side);
             }
-            stray += 1;
-            if stray <= LISTED {
-                let element = side.element as usize;
-                let [x, y, z] = corners.first().copied().unwrap_or_default();
-                let id = self.mesh.elements.ids[element];
-                let found = format!(
-                    "element {id} has a free side inside the body, at X = {x:.6}, Y = {y:.6}, Z = {z:.6}"
-                );
-                report.findings.push(
-                    Finding::refused("edge-of-body", self.mesh.elements.place(element), found)
-                        .expected("free sides on the walls, on the ends and on plane cuts only")
-                        .hint(
-                            "is a hole or a gap in the mesh, or are neighbours not joined there?",
-                        ),
-                );
-            }
+        }
+        let inside = self.alone(inside);
+        let stray = inside.len();
+        for side in inside.iter().take(LISTED) {
+            let element = side.element as usize;
+            let [x, y, z] = self.corners(*side).0.first().copied().unwrap_or_default();
+            let id = self.mesh.elements.ids[element];
+            let found = format!(
+                "element {id} has a free side inside the body, at X = {x:.6}, Y = {y:.6}, Z = {z:.6}"
+            );
+            report.findings.push(
+                Finding::refused("edge-of-body", self.mesh.elements.place(element), found)
+                    .expected("free sides on the walls, on the ends and on plane cuts only")
+                    .hint("is a hole or a gap in the mesh, or are neighbours not joined there?"),
+            );
         }
         if stray > LISTED {
             let found = format!("{} more free sides lie inside the body", stray - LISTED);
@@ -83,6 +88,56 @@ impl Look<'_> {
                 .findings
                 .push(Finding::refused("edge-of-body", place, found));
         }
+    }
+
+    /// The sides that have no counterpart: two elements with nodes of their own may meet in the same place, one from each side
+    /// (the reader says that nodes coincide). A copy of an element lies on the same side.
+    fn alone(&self, sides: Vec<Side>) -> Vec<Side> {
+        let size = 8.0 * self.slack.max(1e-9 * self.body.extent());
+        let key = |side: &Side| {
+            let corners = self.corners(*side).0;
+            let mut keys: Vec<_> = corners
+                .iter()
+                .map(|c| c.map(|x| (x / size).round() as i64))
+                .collect();
+            keys.sort_unstable();
+            keys
+        };
+        // which way out of the element the side looks
+        let outward = |side: &Side| {
+            let element = side.element as usize;
+            let nodes = self.mesh.elements.nodes(element);
+            let count = self.mesh.elements.shapes[element].corner_count();
+            let whole = mean(
+                nodes[..count]
+                    .iter()
+                    .map(|&n| self.mesh.nodes.positions[n as usize]),
+            );
+            let here = mean(self.corners(*side).0.into_iter());
+            std::array::from_fn::<f64, 3, _>(|i| here[i] - whole[i])
+        };
+        let mut places: BTreeMap<Vec<[i64; 3]>, Vec<Side>> = BTreeMap::new();
+        for side in sides {
+            places.entry(key(&side)).or_default().push(side);
+        }
+        let opposite = |pair: &[Side]| match pair {
+            [a, b] => {
+                outward(a)
+                    .iter()
+                    .zip(outward(b))
+                    .map(|(x, y)| x * y)
+                    .sum::<f64>()
+                    < 0.0
+            }
+            _ => false,
+        };
+        let mut alone: Vec<Side> = places
+            .into_values()
+            .filter(|here| !opposite(here))
+            .flatten()
+            .collect();
+        alone.sort_unstable();
+        alone
     }
 
     /// Smallest and largest coordinates of the nodes.

@@ -61,10 +61,11 @@ pub fn radial_displacement(
     exact: &dyn ExactSolution,
 ) -> Result<Option<AtPlace>, String> {
     let body = exact.body();
+    let places = model::NodePlaces::new(mesh, exact);
     let mut candidates = Vec::with_capacity(nodes.len());
     for &node in nodes {
         let point = mesh.node(node);
-        let state = exact.at(point).map_err(|r| r.to_string())?;
+        let state = exact.at(places.of(node)).map_err(|r| r.to_string())?;
         let outward = |u: [f64; 3]| outward(&body, &point, u);
         candidates.push(AtPlace {
             computed: outward(displacements[node]),

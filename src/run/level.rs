@@ -220,7 +220,9 @@ fn compare_with_body(
         // a single number says nothing of the body
         return Ok((None, Some(volume)));
     }
+    let interfaces = case.exact.interfaces();
     let declared = Declared {
+        interfaces: &interfaces,
         share: case.share,
         axial_length: case.axial_length,
         node_tolerance: case.node_tolerance,

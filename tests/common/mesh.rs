@@ -238,6 +238,24 @@ impl Mesh {
         joined
     }
 
+    /// Several meshes in one file, each with nodes of its own.
+    pub fn apart(meshes: &[Mesh]) -> Self {
+        let mut whole = Self {
+            nodes: Vec::new(),
+            elements: Vec::new(),
+            ..meshes[0].clone()
+        };
+        for mesh in meshes {
+            let before = whole.nodes.len();
+            let elements = mesh.elements.iter();
+            whole
+                .elements
+                .extend(elements.map(|nodes| nodes.iter().map(|n| n + before).collect::<Vec<_>>()));
+            whole.nodes.extend(&mesh.nodes);
+        }
+        whole
+    }
+
     /// Without the elements whose mean place is refused, and without nodes that belong to none.
     pub fn keep(&self, wanted: impl Fn([f64; 3]) -> bool) -> Self {
         let mean = |nodes: &Vec<usize>| {

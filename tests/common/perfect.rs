@@ -302,12 +302,14 @@ impl Export {
             exact,
             dialect,
         };
-        let tables = BTreeMap::from([
+        let mut tables = BTreeMap::from([
             ("nodes", writer.nodes()),
             ("elements", writer.elements()),
             ("points", writer.points()),
             ("totals", writer.totals()),
         ]);
+        // a solution without totals
+        tables.retain(|_, table| !table.rows.is_empty());
         Self { tables }
     }
 
@@ -400,8 +402,9 @@ impl Writer<'_> {
     fn nodes(&self) -> Table {
         let mut table = Table::default();
         let count = if self.solid() { 3 } else { 2 };
+        let inside = self.inside();
         for (i, &at) in self.mesh.nodes.iter().enumerate() {
-            let u = self.state(at).displacement * self.dialect.per_mm;
+            let u = self.state(inside[i]).displacement * self.dialect.per_mm;
             let (c, s) = direction(at);
             let mut row = vec![("node".to_string(), (i + 1).to_string())];
             row.extend(self.place(at));
@@ -422,6 +425,22 @@ impl Writer<'_> {
             table.push(row);
         }
         table
+    }
+
+    /// The places of the nodes; where parts meet, a little inside the part that the node belongs to.
+    fn inside(&self) -> Vec<[f64; 3]> {
+        let mut places = self.mesh.nodes.clone();
+        for at in self.exact.interfaces() {
+            for nodes in &self.mesh.elements {
+                let radius = |n: usize| self.mesh.nodes[n][0].hypot(self.mesh.nodes[n][1]);
+                let mean = nodes.iter().map(|&n| radius(n)).sum::<f64>() / nodes.len() as f64;
+                for &n in nodes.iter().filter(|&&n| (radius(n) - at).abs() < 1e-9) {
+                    let factor = 1.0 + 1e-12 * (mean - at).signum();
+                    places[n] = self.mesh.nodes[n].map(|x| x * factor);
+                }
+            }
+        }
+        places
     }
 
     fn elements(&self) -> Table {
