@@ -3,7 +3,7 @@
 use super::facts;
 use super::plan::{CasePlan, Plan};
 use crate::elements::Shape;
-use crate::exact::Kinematics;
+use crate::exact::{Body, Kinematics};
 use crate::materials::Material;
 use crate::mechanics::StressMeasure;
 use crate::norms::catalogue;
@@ -89,7 +89,13 @@ fn cuts(case: &CasePlan) -> String {
     if case.share == 1.0 {
         return String::new();
     }
-    "no displacement normal to the cuts, no friction on them".to_string()
+    let round = matches!(case.exact.body(), Body::Tube { .. } | Body::Sphere { .. });
+    if round && !case.exact.turns() {
+        "no displacement normal to the cuts, no friction on them".to_string()
+    } else {
+        "on cuts that are no planes of symmetry: the exact displacements (`truebore exact --points`)"
+            .to_string()
+    }
 }
 
 /// The constants of small strain, by the names other codes ask for.
@@ -135,7 +141,7 @@ fn meshes(case: &CasePlan) -> Vec<(&'static str, String)> {
         lines.push(("Meshes", text));
         lines.push((
             "",
-            "the same family of meshes throughout; mid-side nodes on the true circles".to_string(),
+            "the same family of meshes throughout; mid-side nodes on the true walls".to_string(),
         ));
     } else {
         lines.push((
@@ -164,6 +170,11 @@ fn solid(case: &CasePlan) -> bool {
     dimensions(case).contains(&3)
 }
 
+/// Whether a model in two dimensions can only be a half section in R and Z.
+fn half_section(case: &CasePlan) -> bool {
+    !solid(case) && matches!(case.exact.body(), Body::Sphere { .. })
+}
+
 /// Names of the exchange format as the case's own headers.
 fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
     let header = |name: &&str| {
@@ -180,6 +191,8 @@ fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
 pub fn nodes_header(case: &CasePlan) -> String {
     let mut names = if solid(case) {
         vec!["node", "X", "Y", "Z", "ux", "uy", "uz"]
+    } else if half_section(case) {
+        vec!["node", "R", "Z", "ur", "uz"]
     } else {
         vec!["node", "X", "Y", "ux", "uy"]
     };
@@ -205,7 +218,12 @@ pub fn elements_header(case: &CasePlan) -> String {
 
 /// Header of points.csv.
 pub fn points_header(case: &CasePlan) -> String {
-    let mut names = vec!["element", "point", "X", "Y"];
+    let place = if half_section(case) {
+        ["R", "Z"]
+    } else {
+        ["X", "Y"]
+    };
+    let mut names = [["element", "point"], place].concat();
     if solid(case) {
         names.push("Z");
     }
@@ -225,6 +243,8 @@ pub fn points_header(case: &CasePlan) -> String {
 fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
     let cauchy: &[&str] = if solid(case) {
         &["sxx", "syy", "szz", "sxy", "syz", "szx"]
+    } else if half_section(case) {
+        &["srr", "stt", "szz", "szr"]
     } else {
         &["sxx", "syy", "szz", "sxy"]
     };

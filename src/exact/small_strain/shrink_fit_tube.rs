@@ -258,6 +258,10 @@ impl ExactSolution for ShrinkFit {
         ring.at(point).state(point, &ring.law)
     }
 
+    fn interfaces(&self) -> Vec<f64> {
+        vec![self.rings[1].inner]
+    }
+
     fn totals(&self) -> &[Total] {
         &self.totals
     }
