@@ -3,7 +3,7 @@
 use super::facts;
 use super::plan::{CasePlan, Plan};
 use crate::elements::Shape;
-use crate::exact::Kinematics;
+use crate::exact::{Body, Kinematics};
 use crate::materials::Material;
 use crate::mechanics::StressMeasure;
 use crate::norms::catalogue;
@@ -37,7 +37,11 @@ fn brief_case(case: &CasePlan) -> String {
         ("Material", facts::material(case)),
     ];
     for material in case.given.materials() {
-        lines.push(("", material.energy_text()));
+        // layers of one law: its energy once
+        let energy = ("", material.energy_text());
+        if !lines.contains(&energy) {
+            lines.push(energy);
+        }
         lines.push(("", constants(case, material)));
     }
     let description = facts::description(case);
@@ -56,7 +60,10 @@ fn brief_case(case: &CasePlan) -> String {
     lines.push(("points.csv", points_header(case)));
     lines.push((
         "totals.csv",
-        format!("quantity,value  with {}", totals(case).join(", ")),
+        match totals(case) {
+            none if none.is_empty() => "not needed".to_string(),
+            wanted => format!("quantity,value  with {}", wanted.join(", ")),
+        },
     ));
     let reading = super::level::reading(case);
     lines.push(("as declared", reading.conventions.describe()));
@@ -72,10 +79,14 @@ fn brief_case(case: &CasePlan) -> String {
         "",
         format!("files in {length} and {stress}; W per reference volume; J = {j};"),
     ));
+    let ring = if axisymmetric(case) {
+        " times 2 pi R"
+    } else {
+        ""
+    };
     lines.push((
         "",
-        "weight = quadrature weight times det(dX/dxi); other conventions must be declared"
-            .to_string(),
+        format!("weight = quadrature weight times det(dX/dxi){ring}; other conventions must be declared"),
     ));
     lines.extend(criteria(case));
     let mut text = format!("{}: {}\n", case.id, case.title);
@@ -88,6 +99,11 @@ fn brief_case(case: &CasePlan) -> String {
 fn cuts(case: &CasePlan) -> String {
     if case.share == 1.0 {
         return String::new();
+    }
+    // what turns about the axis moves across every plane through it
+    if case.exact.turns() || matches!(case.exact.body(), Body::Ellipse { .. }) {
+        return "the cuts are no planes of symmetry: prescribe the exact displacements there"
+            .to_string();
     }
     "no displacement normal to the cuts, no friction on them".to_string()
 }
@@ -133,9 +149,14 @@ fn meshes(case: &CasePlan) -> Vec<(&'static str, String)> {
             "{count} levels, coarsest first, each with about half the element size of the one before"
         );
         lines.push(("Meshes", text));
+        let family = "the same family of meshes throughout";
+        let curved = case.exact.body().walls() != (None, None);
         lines.push((
             "",
-            "the same family of meshes throughout; mid-side nodes on the true circles".to_string(),
+            match curved {
+                true => format!("{family}; mid-side nodes on the true walls"),
+                false => family.to_string(),
+            },
         ));
     } else {
         lines.push((
@@ -164,6 +185,11 @@ fn solid(case: &CasePlan) -> bool {
     dimensions(case).contains(&3)
 }
 
+/// Whether a model of two dimensions is a plane through the axis.
+fn axisymmetric(case: &CasePlan) -> bool {
+    matches!(case.exact.body(), Body::Sphere { .. }) && !solid(case)
+}
+
 /// Names of the exchange format as the case's own headers.
 fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
     let header = |name: &&str| {
@@ -180,6 +206,8 @@ fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
 pub fn nodes_header(case: &CasePlan) -> String {
     let mut names = if solid(case) {
         vec!["node", "X", "Y", "Z", "ux", "uy", "uz"]
+    } else if axisymmetric(case) {
+        vec!["node", "R", "Z", "ur", "uz"]
     } else {
         vec!["node", "X", "Y", "ux", "uy"]
     };
@@ -205,10 +233,12 @@ pub fn elements_header(case: &CasePlan) -> String {
 
 /// Header of points.csv.
 pub fn points_header(case: &CasePlan) -> String {
-    let mut names = vec!["element", "point", "X", "Y"];
-    if solid(case) {
-        names.push("Z");
-    }
+    let mut names = vec!["element", "point"];
+    names.extend_from_slice(match (solid(case), axisymmetric(case)) {
+        (true, _) => &["X", "Y", "Z"],
+        (_, true) => &["R", "Z"],
+        _ => &["X", "Y"],
+    });
     names.push("weight");
     names.extend(stress_columns(case));
     // J may already stand with the stress that it converts
@@ -225,6 +255,8 @@ pub fn points_header(case: &CasePlan) -> String {
 fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
     let cauchy: &[&str] = if solid(case) {
         &["sxx", "syy", "szz", "sxy", "syz", "szx"]
+    } else if axisymmetric(case) {
+        &["srr", "stt", "szz", "szr"]
     } else {
         &["sxx", "syy", "szz", "sxy"]
     };
@@ -236,6 +268,11 @@ fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
             &[
                 "F11", "F12", "F13", "F21", "F22", "F23", "F31", "F32", "F33",
             ],
+        )
+    } else if axisymmetric(case) {
+        (
+            &["P11", "P13", "P22", "P31", "P33"],
+            &["F11", "F13", "F22", "F31", "F33"],
         )
     } else {
         (
