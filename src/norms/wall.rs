@@ -3,8 +3,9 @@
 use super::accumulate::Largest;
 use super::model::{self, Mesh};
 use super::points::KeptPoint;
-use crate::exact::{Body, ExactSolution};
+use crate::exact::{Body, ExactSolution, Frame};
 use crate::mechanics::Point;
+use crate::results::ModelKind;
 
 /// A number at a place with the exact one it is held against.
 #[derive(Debug, Clone, PartialEq)]
@@ -32,6 +33,19 @@ fn worst(candidates: impl IntoIterator<Item = AtPlace>) -> Option<AtPlace> {
 
 fn words(radius: f64, theta: f64) -> String {
     format!("(R {radius:.6}, {:.3} deg)", theta.to_degrees())
+}
+
+/// A node and where it is: about the axis where the body has one, else by its coordinates.
+pub fn node_in_words(mesh: Mesh, node: usize, body: &Body) -> String {
+    let (id, point) = (mesh.nodes.ids[node], mesh.node(node));
+    let Point { x, y, z } = point;
+    let place = match (body.frame(), mesh.kind()) {
+        (Frame::Cylindrical, _) => words(body.radius(&point), point.theta()),
+        (_, ModelKind::Planar) => format!("(X {x:.6}, Y {y:.6})"),
+        (_, ModelKind::Axisymmetric) => format!("(R {x:.6}, Z {z:.6})"),
+        (_, ModelKind::Solid) => format!("(X {x:.6}, Y {y:.6}, Z {z:.6})"),
+    };
+    format!("node {id} {place}")
 }
 
 /// The part of a displacement that points from the axis, or from the centre of a sphere, to the particle.
@@ -70,11 +84,7 @@ pub fn radial_displacement(
         candidates.push(AtPlace {
             computed: outward(displacements[node]),
             exact: outward(state.displacement.into()),
-            place: format!(
-                "node {} {}",
-                mesh.nodes.ids[node],
-                words(body.radius(&point), point.theta())
-            ),
+            place: node_in_words(mesh, node, &body),
         });
     }
     Ok(worst(candidates))
@@ -112,11 +122,7 @@ pub fn nodal_stress(
         candidates.push(AtPlace {
             computed: local[component],
             exact: state.local_stress.to_array()[component],
-            place: format!(
-                "node {} {}",
-                mesh.nodes.ids[node],
-                words(body.radius(&point), point.theta())
-            ),
+            place: node_in_words(mesh, node, &body),
         });
     }
     Ok(worst(candidates))

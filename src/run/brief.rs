@@ -37,7 +37,11 @@ fn brief_case(case: &CasePlan) -> String {
         ("Material", facts::material(case)),
     ];
     for material in case.given.materials() {
-        lines.push(("", material.energy_text()));
+        // layers of one law: its energy once
+        let energy = ("", material.energy_text());
+        if !lines.contains(&energy) {
+            lines.push(energy);
+        }
         lines.push(("", constants(case, material)));
     }
     let description = facts::description(case);
@@ -56,7 +60,10 @@ fn brief_case(case: &CasePlan) -> String {
     lines.push(("points.csv", points_header(case)));
     lines.push((
         "totals.csv",
-        format!("quantity,value  with {}", totals(case).join(", ")),
+        match totals(case) {
+            none if none.is_empty() => "not needed".to_string(),
+            wanted => format!("quantity,value  with {}", wanted.join(", ")),
+        },
     ));
     let reading = super::level::reading(case);
     lines.push(("as declared", reading.conventions.describe()));
@@ -72,10 +79,14 @@ fn brief_case(case: &CasePlan) -> String {
         "",
         format!("files in {length} and {stress}; W per reference volume; J = {j};"),
     ));
+    let ring = if axisymmetric(case) {
+        " times 2 pi R"
+    } else {
+        ""
+    };
     lines.push((
         "",
-        "weight = quadrature weight times det(dX/dxi); other conventions must be declared"
-            .to_string(),
+        format!("weight = quadrature weight times det(dX/dxi){ring}; other conventions must be declared"),
     ));
     lines.extend(criteria(case));
     let mut text = format!("{}: {}\n", case.id, case.title);
@@ -139,9 +150,14 @@ fn meshes(case: &CasePlan) -> Vec<(&'static str, String)> {
             "{count} levels, coarsest first, each with about half the element size of the one before"
         );
         lines.push(("Meshes", text));
+        let family = "the same family of meshes throughout";
+        let curved = case.exact.body().walls() != (None, None);
         lines.push((
             "",
-            "the same family of meshes throughout; mid-side nodes on the true walls".to_string(),
+            match curved {
+                true => format!("{family}; mid-side nodes on the true walls"),
+                false => family.to_string(),
+            },
         ));
     } else {
         lines.push((
@@ -256,6 +272,11 @@ fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
             &[
                 "F11", "F12", "F13", "F21", "F22", "F23", "F31", "F32", "F33",
             ],
+        )
+    } else if axisymmetric(case) {
+        (
+            &["P11", "P13", "P22", "P31", "P33"],
+            &["F11", "F13", "F22", "F31", "F33"],
         )
     } else {
         (
