@@ -209,7 +209,7 @@ const ABOUT_THE_AXIS: &[&str] = &[
     "heated-tube: { inner-radius: 8, outer-radius: 12, material: steel, expansion: 1e-5, inner-temperature: 80, outer-temperature: 0, ends: plane-strain }",
     "rotating-disk: { outer-radius: 12, material: steel, density-speed-squared: 1e-4 }",
     "rotating-cylinder: { inner-radius: 8, outer-radius: 12, material: steel, density-speed-squared: 1e-4, ends: plane-strain }",
-    "elastic-plastic-tube: { inner-radius: 8, outer-radius: 12, material: plastic, inner-pressure: 0.08 }",
+    "elastic-plastic-tube: { inner-radius: 8, outer-radius: 12, material: plastic, inner-pressure: 0.08, stage: loaded }",
     "bar-torsion: { semi-axes: [12, 12], twist: 0.01, material: steel }",
     "torsion-extension: { outer-radius: 12, axial-stretch: 1.1, twist: 0.05, material: rubber }",
     "torsion-extension: { inner-radius: 8, outer-radius: 12, axial-force: 0, twist: 0.05, material: rubber }",

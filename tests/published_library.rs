@@ -102,7 +102,7 @@ fn the_energy_of_a_neo_hookean_tube() {
         near(
             energy(stretch),
             PI * (stretch * stretch - 1.0) * (stretch / outer).ln(),
-            1e-12,
+            1e-11,
         );
         let step = 1e-5 * stretch;
         let slope = (energy(stretch + step) - energy(stretch - step)) / (2.0 * step);
@@ -174,7 +174,7 @@ fn poissons_ratio_of_a_penalised_law() {
 // library's Tresca tube at sqrt(3)/2 of either. Red when one is taken for the other.
 #[test]
 fn hills_tube_is_trescas_here() {
-    let problem = "elastic-plastic-tube: { inner-radius: 1, outer-radius: 2, material: m, inner-pressure: 0.5 }";
+    let problem = "elastic-plastic-tube: { inner-radius: 1, outer-radius: 2, material: m, inner-pressure: 0.5, stage: loaded }";
     let exact = solved(
         "m: { elastic-perfectly-plastic: { E: 200, nu: 0.3, yield-stress: 1 } }",
         problem,

@@ -11,7 +11,7 @@ materials:
   typed: { stated: { energy: "0.2*(I1-3) - 0.02*(I1-3)^2" } }
 cases:
   - id: wall
-    problem: { pressurised-tube: { inner-radius: 1, outer-radius: 2, ends: plane-strain, material: typed, inner-wall-stretch: [1.2, 3.5] } }
+    problem: { pressurised-tube: { inner-radius: 1, outer-radius: 2, ends: plane-strain, material: typed, inner-wall-stretch: [1.2, 3.0] } }
     results: "results/{inner-wall-stretch}/level-{level}"
     levels: [1]
     accept: [ { error: displacement-L2, at-most: 1 % } ]
@@ -53,7 +53,7 @@ fn an_unstable_law_is_told_everywhere() {
         "{brief}"
     );
     assert!(
-        brief.split(id.as_str()).nth(1).unwrap().contains("Caution"),
+        brief.split(&format!("{id}: ")).nth(1).unwrap().contains("Caution"),
         "{brief}"
     );
     let (totals, caution) = truebore(

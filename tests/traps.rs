@@ -115,7 +115,7 @@ fn thin_walls_and_small_strains_keep_their_digits() {
             );
             ours = ours.max((total(&found, "inner_pressure") / exact - 1.0).abs());
             let lost = (printed_form(stretch, outer) / exact - 1.0).abs();
-            if wall < 3e-4 && strain > 1e-2 {
+            if wall < 3e-4 && strain > 1e-4 && strain < 1e-2 {
                 theirs = theirs.max(lost);
             }
             // the pressure brings the displacement back, to more digits than a - A has
@@ -129,10 +129,10 @@ fn thin_walls_and_small_strains_keep_their_digits() {
         }
     }
     println!(
-        "pressure: ours {ours:.1e}, printed form at B/A 1.0002 and strain above 0.1 {theirs:.1e}"
+        "pressure: ours {ours:.1e}, printed form at B/A 1.0002 and strain 1e-3 {theirs:.1e}"
     );
-    assert!(ours < 2e-15 * 10.0, "{ours:e}");
-    assert!(theirs > 1e-13, "{theirs:e}");
+    assert!(ours < 4e-15, "{ours:e}");
+    assert!(theirs > 1e-11, "{theirs:e}");
     // of a itself the strain's digits cannot be had
     let tiny = tube(NEO, 2.0, "plane-strain", "inner-pressure: 1e-7");
     let by_radius = total(&tiny, "inner_radius") - 1.0;
@@ -199,7 +199,7 @@ impl Fibred {
 #[test]
 fn fibres_that_switch_on_inside_the_wall_keep_the_digits() {
     let mut least_lost = f64::INFINITY;
-    for (degrees, axial, bore) in [(60.0, 0.95, 1.4), (36.0, 1.1, 0.92), (50.0, 0.9, 1.35)] {
+    for (degrees, axial, bore) in [(60.0, 0.95, 1.4), (36.0, 1.1, 0.92), (50.0, 0.9, 1.23)] {
         let beta = f64::to_radians(degrees);
         let constants = [("mu", 0.4), ("k1", 0.5), ("k2", 0.8), ("beta", beta)];
         let wall = Fibred {
@@ -237,10 +237,10 @@ fn fibres_that_switch_on_inside_the_wall_keep_the_digits() {
 #[test]
 fn the_mean_stress_does_not_depend_on_how_the_energy_is_written() {
     let forms = [
-        "Mooney-Rivlin: { c10: 0.1, c01: 0.1 }",
-        "stated: { energy: \"0.1*(I1-3) + 0.1*(I2-3)\" }",
-        "stated: { energy: \"0.1*(l1^2+l2^2+l3^2-3) + 0.1*(l1^-2+l2^-2+l3^-2-3)\" }",
-        "stated: { energy: \"0.1*(l1^2+l2^2+l3^2-3) + 0.1*(l1^2*l2^2+l2^2*l3^2+l3^2*l1^2-3)\" }",
+        "Mooney-Rivlin: { c10: 0.15, c01: 0.05 }",
+        "stated: { energy: \"0.15*(I1-3) + 0.05*(I2-3)\" }",
+        "stated: { energy: \"0.15*(l1^2+l2^2+l3^2-3) + 0.05*(l1^-2+l2^-2+l3^-2-3)\" }",
+        "stated: { energy: \"0.15*(l1^2+l2^2+l3^2-3) + 0.05*(l1^2*l2^2+l2^2*l3^2+l3^2*l1^2-3)\" }",
     ];
     let states: Vec<_> = forms
         .iter()
@@ -254,8 +254,8 @@ fn the_mean_stress_does_not_depend_on_how_the_energy_is_written() {
     // l dW/dl - srr, of the radial direction, for the two ways to write I2
     let [lr, lt, lz] = states[0].stretches;
     let srr = states[0].local_stress.xx;
-    let by_inverse = 0.2 * lr * lr - 0.2 / (lr * lr) - srr;
-    let by_product = 0.2 * lr * lr + 0.2 * lr * lr * (lt * lt + lz * lz) - srr;
+    let by_inverse = 0.3 * lr * lr - 0.1 / (lr * lr) - srr;
+    let by_product = 0.3 * lr * lr + 0.1 * lr * lr * (lt * lt + lz * lz) - srr;
     println!(
         "-tr/3 {:.4}, multipliers {by_inverse:.4} and {by_product:.4}",
         states[0].pressure
@@ -359,7 +359,7 @@ fn bore_with(beta: &str) -> f64 {
             &FIBRES.replace("BETA", beta),
             1.5,
             "plane-strain",
-            "inner-pressure: 0.2",
+            "inner-pressure: 0.1",
         ),
         1.0,
     )
@@ -380,7 +380,7 @@ fn fibre_angles_are_from_the_hoop_direction() {
             "neo-Hookean: { mu: 0.4 }",
             1.5,
             "plane-strain",
-            "inner-pressure: 0.2",
+            "inner-pressure: 0.1",
         ),
         1.0,
     );

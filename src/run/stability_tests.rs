@@ -21,7 +21,7 @@ fn cautions(materials: &str, problem: &str) -> Vec<Option<Finding>> {
 #[test]
 fn a_softened_bore_is_told_with_its_place() {
     let tube = "{ pressurised-tube: { inner-radius: 1, outer-radius: 2, ends: plane-strain, material: m, \
-                inner-wall-stretch: [1.2, 2.67, 2.68, 3.5] } }";
+                inner-wall-stretch: [1.2, 2.67, 2.68, 3.0] } }";
     let found = cautions(&format!("{{ m: {SOFTENING} }}"), tube);
     let told: Vec<_> = found.iter().map(Option::is_some).collect();
     assert_eq!(told, [false, false, true, true]);
@@ -33,7 +33,7 @@ fn a_softened_bore_is_told_with_its_place() {
     assert!(
         finding
             .found
-            .contains("at X 1, Y 0, Z 0 the stretch 3.5 carries"),
+            .contains("at X 1, Y 0, Z 0 the stretch 3 carries"),
         "{finding}"
     );
     assert!(
@@ -45,7 +45,7 @@ fn a_softened_bore_is_told_with_its_place() {
 // The outer layer alone is unstable, and its fault lies inside the line.
 #[test]
 fn each_layer_is_looked_at() {
-    let tube = "{ layered-tube: { radii: [1, 1.2, 1.4], materials: [ok, m], ends: plane-strain, inner-wall-stretch: [2.0, 3.5] } }";
+    let tube = "{ layered-tube: { radii: [1, 1.1, 1.4], materials: [ok, m], ends: plane-strain, inner-wall-stretch: [2.0, 3.0] } }";
     let found = cautions(
         &format!("{{ ok: {{ neo-Hookean: {{ mu: 0.4 }} }}, m: {SOFTENING} }}"),
         tube,
@@ -59,7 +59,7 @@ fn each_layer_is_looked_at() {
         .trim()
         .parse::<f64>()
         .unwrap();
-    assert!(place > 1.2 && place < 1.21, "{text}");
+    assert!(place > 1.1 && place < 1.12, "{text}");
 }
 
 // With a bulk modulus, and where the mesh decides the body. Red when the strain is taken from the wrong tensor.

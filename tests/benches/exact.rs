@@ -339,7 +339,7 @@ kind!(
         ),
         (
             "elastic-plastic tube",
-            "elastic-plastic-tube: { inner-radius: 8, outer-radius: 12, material: plastic, inner-pressure: 0.08 }"
+            "elastic-plastic-tube: { inner-radius: 8, outer-radius: 12, material: plastic, inner-pressure: 0.08, stage: loaded }"
         ),
         (
             "elastic-plastic tube, unloaded",
