@@ -103,6 +103,13 @@ fn computed(exact: &dyn ExactSolution, row: &Row) -> Result<f64, String> {
         "ux" => u[0],
         "uy" => u[1],
         "uz" => u[2],
+        // at small strain the component along the radius, which is not how far the radius grows
+        "u_r" if exact.kinematics() == Kinematics::SmallStrain => {
+            let three = exact.body().frame() == truebore::exact::Frame::Spherical;
+            let z = if three { point.z * u[2] } else { 0.0 };
+            let along = point.x * u[0] + point.y * u[1] + z;
+            if along == 0.0 { 0.0 } else { along / small }
+        }
         "u_r" => {
             let three = exact.body().frame() == truebore::exact::Frame::Spherical;
             let x = [point.x, point.y, if three { point.z } else { 0.0 }];

@@ -25,6 +25,8 @@ pub mod tube_shear;
 pub mod catalogue;
 
 mod demands;
+#[cfg(test)]
+mod laws_tests;
 mod totals;
 mod tube_entries;
 mod tube_words;

@@ -2,9 +2,10 @@
 
 use super::*;
 use crate::exact::given::Value;
+use crate::exact::laws_tests;
 use crate::materials::{
     Compressible, CompressibleNeoHookean, LinearElastic, MooneyRivlin, NeoHookean, Volumetric,
-    VolumetricForm, Yeoh,
+    VolumetricForm,
 };
 use std::sync::Arc;
 
@@ -80,7 +81,8 @@ fn materials() -> Vec<Material> {
     let mut list = vec![
         rubber(),
         Material::incompressible(NeoHookean { mu: 1.0 }),
-        Material::incompressible(Yeoh::three_terms(0.5, 0.01, 1e-3)),
+        laws_tests::yeoh(),
+        laws_tests::locking(),
         Material::Compressible(Compressible::Coupled(CompressibleNeoHookean {
             mu: 1.0,
             lambda: 2.0,

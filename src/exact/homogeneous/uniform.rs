@@ -99,19 +99,23 @@ pub(super) fn incompressible(law: &dyn IncompressibleLaw, mode: Mode) -> Result<
         Mode::Shear(_) => [0.0; 3],
     };
     // the stretched axis in the place of the axial one where two others are equal: differences of equal numbers are zero then
-    let (d, e, stress): (f64, f64, fn(f64, f64) -> [f64; 3]) = match mode {
-        Mode::Uniaxial(_) => (0.0, logs[0], |_, axial| [axial, 0.0, 0.0]),
-        Mode::Equibiaxial(_) => (0.0, logs[2], |_, axial| [-axial, -axial, 0.0]),
-        Mode::Planar(_) => (2.0 * logs[0], 0.0, |hoop, axial| [hoop, 0.0, axial]),
-        _ => (logs[1] - logs[0], logs[2], |hoop, axial| {
-            [-axial, hoop - axial, 0.0]
-        }),
+    let (d, e) = match mode {
+        Mode::Uniaxial(_) => (0.0, logs[0]),
+        Mode::Equibiaxial(_) => (0.0, logs[2]),
+        Mode::Planar(_) => (2.0 * logs[0], 0.0),
+        _ => (logs[1] - logs[0], logs[2]),
     };
     let found = law.at(d, e);
+    let stress = match mode {
+        Mode::Uniaxial(_) => [found.axial, 0.0, 0.0],
+        Mode::Equibiaxial(_) => [-found.axial, -found.axial, 0.0],
+        Mode::Planar(_) => [found.hoop, 0.0, found.axial],
+        _ => [-found.axial, found.hoop - found.axial, 0.0],
+    };
     let loss = law.hardening(d, e).loss;
     Ok(Uniform {
         error: ROUND_OFF * (1.0 + loss),
-        ..stretched(logs, mode, stress(found.hoop, found.axial), found.energy)
+        ..stretched(logs, mode, stress, found.energy)
     })
 }
 

@@ -21,6 +21,9 @@ pub(super) const CHECK_POINTS: usize = 24;
 pub(super) const LEAST_STRETCH: f64 = 0.05;
 pub(super) const MOST_STRETCH: f64 = 1e3;
 
+/// Next to a lock the stress has 16 digits less the logarithm of this: nothing is searched beyond.
+const MOST_LOSS: f64 = 1e8;
+
 /// Stresses beyond this leave no room for their sums.
 const LARGEST: f64 = 1e200;
 
@@ -87,7 +90,11 @@ impl Curve {
     /// The last d on the way to `far` at which the law has a stress.
     fn end(&self, far: f64) -> f64 {
         let below = |x: f64| x.abs() < LARGEST;
-        let holds = |d: f64| below(self.density(d)) && below(self.law.at(d, d / 3.0).energy);
+        let holds = |d: f64| {
+            let loss = self.law.hardening(d, d / 3.0).loss;
+            let energy = self.law.at(d, d / 3.0).energy;
+            below(self.density(d)) && below(energy) && loss < MOST_LOSS
+        };
         match holds(far) {
             true => far,
             false => crate::exact::demands::last_where(0.0, far, holds),
@@ -134,7 +141,11 @@ impl Curve {
     pub fn pressure(&self, d: f64, points: usize) -> Sized {
         let (from, span) = (self.outer_difference(d), self.span(d));
         // as distances from dB, so that a thin wall keeps its thickness
-        let ends = panels((0.0, span), &mut |x| self.density(from + x));
+        let ends = panels_in_noise((0.0, span), &mut |x| {
+            let (d, q) = (from + x, self.density(from + x));
+            let loss = self.law.hardening(d, d / 3.0).loss;
+            (q, 8.0 * f64::EPSILON * loss * q.abs())
+        });
         let rule = GaussRule::of(points);
         let (mut sum, mut size) = (CompensatedSum::new(), 0.0);
         for panel in ends.windows(2) {

@@ -179,15 +179,18 @@ impl Branches {
     }
 }
 
-/// An interval whose upper pressure is within reach of a root finder: a law that stiffens without bound has 1e190 at its own end.
+/// An interval whose pressures are within reach of a root finder: a law that stiffens without bound has 1e190 at the end of its range.
 fn tamed((mut lower, mut upper): (f64, f64), scale: f64, off: impl Fn(f64) -> f64) -> (f64, f64) {
-    let sign = off(upper).signum();
+    let (at_lower, at_upper) = (off(lower), off(upper));
+    if at_lower.signum() == at_upper.signum() {
+        return (lower, upper);
+    }
     for _ in 0..200 {
-        if off(upper).abs() <= 1e6 * scale {
+        if off(lower).abs().max(off(upper).abs()) <= 1e6 * scale {
             break;
         }
         let middle = 0.5 * (lower + upper);
-        if off(middle).signum() == sign {
+        if off(middle).signum() == at_upper.signum() {
             upper = middle;
         } else {
             lower = middle;

@@ -203,17 +203,14 @@ impl PlasticTube {
             let falling = decaying * (outside / square) / bb;
             (-falling, 2.0 * decaying / bb + falling)
         };
-        let (mut srr, mut stt) = lame(self.decaying);
+        let gone = if self.unloaded { self.elastic } else { 0.0 };
+        let decaying = self.decaying - gone;
+        let (mut srr, mut stt) = lame(decaying);
         if self.is_plastic() && square < self.front {
             let rise = 0.5 * (inside / (self.inner * self.inner)).ln_1p();
-            srr = -self.pressure + self.law.yield_stress * rise;
-            stt = srr + self.law.yield_stress;
-        }
-        let mut decaying = self.decaying;
-        if self.unloaded {
-            let (radial, hoop) = lame(self.elastic);
-            (srr, stt) = (srr - radial, stt - hoop);
-            decaying -= self.elastic;
+            let (radial, hoop) = lame(gone);
+            let loaded = -self.pressure + self.law.yield_stress * rise;
+            (srr, stt) = (loaded - radial, loaded + self.law.yield_stress - hoop);
         }
         let volume = (1.0 + nu) * self.law.elastic.compressibility() / e;
         let hoop = volume * srr + 2.0 * (1.0 - nu) * (1.0 + nu) * decaying / (e * square);

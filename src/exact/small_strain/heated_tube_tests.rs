@@ -1,6 +1,6 @@
 //! Traps of heated tubes: what plane stress and free ends share and what they do not; thin walls; textbook logarithms.
 
-use super::super::field_tests::{Check, number, steel};
+use super::super::field_tests::{Check, number, slopes_of_thickness, steel};
 use super::*;
 use crate::exact::{Value, build};
 use proptest::prelude::*;
@@ -94,6 +94,28 @@ fn plane_stress_and_free_ends_share_the_walls_but_not_the_stress() {
     }
 }
 
+// Without heat they are one state: the Lame tube has a uniform axial strain either way. Red when the trap is mended too much.
+#[test]
+fn without_heat_plane_stress_is_the_state_of_free_ends() {
+    let lame = |ends: Ends| {
+        let given = Given::default()
+            .number("inner-radius", 3.0)
+            .number("outer-radius", 9.0)
+            .with("material", steel(LAW))
+            .number("inner-pressure", 50.0)
+            .with("ends", Value::Ends(ends));
+        build("lame-tube", given).unwrap()
+    };
+    let [flat, free] = [lame(Ends::PlaneStress), lame(FREE)];
+    for r in [3.0, 5.0, 9.0] {
+        let point = Point::new(0.6 * r, 0.8 * r, 1.0);
+        let (x, y) = (flat.at(point).unwrap(), free.at(point).unwrap());
+        assert!((x.displacement - y.displacement).norm() < 1e-17);
+        let off = x.stress.to_matrix() - y.stress.to_matrix();
+        assert!(off.abs().max() < 1e-13, "{off}");
+    }
+}
+
 // The textbook's form, good to about seven digits at B/A = 1.1 and full digits at 10.
 #[test]
 fn the_textbook_logarithms_agree_where_they_do_not_cancel() {
@@ -130,6 +152,12 @@ fn thin_walls_scale_smoothly() {
         let middle = at(1.0 + 0.5 * h).xx / (unit * h);
         assert!((middle + 0.125).abs() < 0.15 * h, "{h} {middle}");
     }
+}
+
+#[test]
+fn the_thickness_strain_has_its_slopes() {
+    let tube = tube(2.0, 5.0, LAW, [80.0, -10.0], Ends::PlaneStress);
+    slopes_of_thickness(tube.as_ref(), Point::new(2.1, -1.4, 2.5));
 }
 
 #[test]

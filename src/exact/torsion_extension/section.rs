@@ -97,7 +97,7 @@ impl Section {
     }
 
     /// The coordinate less its value at the outer wall, with all digits next to it.
-    pub fn from_outer(&self, radius: f64) -> f64 {
+    pub fn off_outer(&self, radius: f64) -> f64 {
         let off = (radius - self.outer) / self.outer;
         if self.solid() {
             off * ((radius + self.outer) / self.outer)
