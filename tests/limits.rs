@@ -7,7 +7,7 @@ use nalgebra::{Matrix3, Vector3};
 use proptest::prelude::*;
 use solved::{at, solved, total, u};
 use std::sync::Arc;
-use truebore::exact::{ExactSolution, State};
+use truebore::exact::{ExactSolution, Frame, State};
 use truebore::mechanics::Point;
 
 /// Slopes of ln(error) over ln(size) between neighbours.
@@ -21,7 +21,7 @@ fn rates(sizes: &[f64], errors: &[f64]) -> Vec<f64> {
 #[track_caller]
 fn first_order(what: &str, sizes: &[f64], errors: &[f64]) {
     let found = rates(sizes, errors);
-    println!("{what}: errors {errors:.2e?}, rates {found:.3?}");
+    println!("{what}: errors {errors:?}, rates {found:.3?}");
     assert!(
         found.iter().all(|rate| (rate - 1.0).abs() < 0.03),
         "{what}: {found:?}"
@@ -169,26 +169,26 @@ fn turned(q: &Matrix3<f64>, point: Point) -> Point {
 }
 
 /// Largest difference of the state `b` from the state `a` turned by `q`, relative to the size of each quantity.
-fn apart(q: &Matrix3<f64>, a: &State, b: &State) -> f64 {
+fn apart(q: &Matrix3<f64>, a: &State, b: &State, own_axes: bool) -> f64 {
     let stress = q * a.stress.to_matrix() * q.transpose();
     let gradient = q * a.displacement_gradient * q.transpose();
     let motion = q * a.displacement;
-    let scalars = [
+    let mut parts = vec![
         ((a.pressure - b.pressure).abs(), stress.amax()),
         ((a.volume_ratio - b.volume_ratio).abs(), 1.0),
         (
             (a.energy_density - b.energy_density).abs(),
             a.energy_density.abs(),
         ),
-        (
-            (a.local_stress.to_matrix() - b.local_stress.to_matrix()).amax(),
-            stress.amax(),
-        ),
         ((stress - b.stress.to_matrix()).amax(), stress.amax()),
         ((gradient - b.displacement_gradient).amax(), gradient.amax()),
         ((motion - b.displacement).amax(), motion.amax()),
     ];
-    scalars
+    if own_axes {
+        let local = a.local_stress.to_matrix() - b.local_stress.to_matrix();
+        parts.push((local.amax(), stress.amax()));
+    }
+    parts
         .iter()
         .fold(0.0_f64, |m, (off, size)| m.max(off / size.max(1e-300)))
 }
@@ -230,7 +230,8 @@ fn agree(problems: &[&str], q: &Matrix3<f64>, point: Point) -> Result<(), TestCa
             exact.at(point).unwrap(),
             exact.at(turned(q, point)).unwrap(),
         );
-        let off = apart(q, &a, &b);
+        // a bar has the axes X, Y, Z
+        let off = apart(q, &a, &b, exact.body().frame() != Frame::Cartesian);
         // both places are rounded: a thin wall's share of the radius
         prop_assert!(off < 2e-13, "{problem} {point:?}: {off:e}");
         // the stress is symmetric and true to its own axes

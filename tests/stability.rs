@@ -53,7 +53,11 @@ fn an_unstable_law_is_told_everywhere() {
         "{brief}"
     );
     assert!(
-        brief.split(&format!("{id}: ")).nth(1).unwrap().contains("Caution"),
+        brief
+            .split(&format!("{id}: "))
+            .nth(1)
+            .unwrap()
+            .contains("Caution"),
         "{brief}"
     );
     let (totals, caution) = truebore(

@@ -128,9 +128,7 @@ fn thin_walls_and_small_strains_keep_their_digits() {
             near(u(&back, 1.0), strain, 3e-14);
         }
     }
-    println!(
-        "pressure: ours {ours:.1e}, printed form at B/A 1.0002 and strain 1e-3 {theirs:.1e}"
-    );
+    println!("pressure: ours {ours:.1e}, printed form at B/A 1.0002 and strain 1e-3 {theirs:.1e}");
     assert!(ours < 4e-15, "{ours:e}");
     assert!(theirs > 1e-11, "{theirs:e}");
     // of a itself the strain's digits cannot be had
