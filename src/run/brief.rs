@@ -2,6 +2,7 @@
 
 use super::facts;
 use super::plan::{CasePlan, Plan};
+use super::stability;
 use crate::elements::Shape;
 use crate::exact::{Body, Kinematics};
 use crate::materials::Material;
@@ -51,6 +52,10 @@ fn brief_case(case: &CasePlan) -> String {
     }
     let notes = description.modelling.into_iter().enumerate();
     lines.extend(notes.map(|(i, note)| (if i == 0 { "Modelling" } else { "" }, note)));
+    if let Some(caution) = stability::caution(case) {
+        lines.push(("Caution", caution.found));
+        lines.push(("", caution.hint));
+    }
     if let Some(element) = &case.element {
         lines.push(("Element", element.text.clone()));
     }
