@@ -84,14 +84,16 @@ fn brief_case(case: &CasePlan) -> String {
         "",
         format!("files in {length} and {stress}; W per reference volume; J = {j};"),
     ));
-    let ring = if axisymmetric(case) {
+    let ring = if half_section(case) {
         " times 2 pi R"
     } else {
         ""
     };
     lines.push((
         "",
-        format!("weight = quadrature weight times det(dX/dxi){ring}; other conventions must be declared"),
+        format!(
+            "weight = quadrature weight times det(dX/dxi){ring}; other conventions must be declared"
+        ),
     ));
     lines.extend(criteria(case));
     let mut text = format!("{}: {}\n", case.id, case.title);
@@ -278,7 +280,7 @@ fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
                 "F11", "F12", "F13", "F21", "F22", "F23", "F31", "F32", "F33",
             ],
         )
-    } else if axisymmetric(case) {
+    } else if half_section(case) {
         (
             &["P11", "P13", "P22", "P31", "P33"],
             &["F11", "F13", "F22", "F31", "F33"],
