@@ -21,7 +21,7 @@ fn tube(a: f64, b: f64, nu: f64, pressure: f64, stage: &str) -> Box<dyn ExactSol
 }
 
 proptest! {
-    // Tried red: the plastic log without its 1/2; 2 (1-nu^2) -> (1-nu^2) in u; residual state without the elastic K.
+    // Tried red: the plastic log without its 1/2; 2 (1-nu^2) -> (1-nu^2) in u; residual state with w for f(w), or without its Y x; sign of f(w) in the root for the front.
     #[test]
     fn random_tubes_obey_every_equation(
         thickness in -2.0..0.3_f64, nu in 0.0..0.5_f64, load in 0.02..0.99_f64, unloaded in any::<bool>(), place in 0.0..1.0_f64,
