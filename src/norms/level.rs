@@ -110,7 +110,9 @@ impl<'a> Level<'a> {
                 Err(why) => Measured::missing(names[2], &length, &why),
                 Ok(found) => {
                     let body = self.exact.body();
-                    let place = found.node.map(|node| wall::node_in_words(mesh, node, &body));
+                    let place = found
+                        .node
+                        .map(|node| wall::node_in_words(mesh, node, &body));
                     let relative = if found.exact == 0.0 {
                         Err(NoNorm::ExactIsZero.to_string())
                     } else {

@@ -86,7 +86,9 @@ fn brief_case(case: &CasePlan) -> String {
     };
     lines.push((
         "",
-        format!("weight = quadrature weight times det(dX/dxi){ring}; other conventions must be declared"),
+        format!(
+            "weight = quadrature weight times det(dX/dxi){ring}; other conventions must be declared"
+        ),
     ));
     lines.extend(criteria(case));
     let mut text = format!("{}: {}\n", case.id, case.title);
