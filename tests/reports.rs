@@ -211,7 +211,7 @@ fn the_page_shows_only_what_there_is() {
     assert!(page.contains("Qualified within the stated range."));
     assert!(page.contains("Both cases pass."));
     assert!(!page.contains("Do this first"), "nothing to do");
-    assert!(!page.contains("Found in the result sets"));
+    assert!(!page.contains("Found in suite and result sets"));
     let page = report::write(Format::Html, &fixture::nothing());
     assert!(page.contains("Not decided.") && page.contains("No case was judged."));
     assert!(!page.contains("id=\"cases\""));

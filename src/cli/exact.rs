@@ -5,7 +5,7 @@ use super::files;
 use super::{Exit, check};
 use crate::run::plan::{CasePlan, Plan};
 use crate::run::point_table::{Wanted, at_points};
-use crate::run::{brief as briefs, tables};
+use crate::run::{brief as briefs, stability, tables};
 use crate::suite::nearest;
 use std::io::Write;
 
@@ -30,6 +30,9 @@ pub fn run(options: &args::Exact) -> Exit {
         Ok(case) => case,
         Err(message) => return check::complain(&message),
     };
+    if let Some(caution) = stability::caution(case) {
+        check::eprint(&format!("caution: {caution}\n"));
+    }
     if let Some(count) = options.what.stations {
         return match tables::stations(case, count) {
             Ok(csv) => done(&csv),

@@ -2,6 +2,7 @@
 
 use super::facts;
 use super::plan::{CasePlan, Plan};
+use super::stability;
 use crate::elements::Shape;
 use crate::exact::{Body, Kinematics};
 use crate::materials::Material;
@@ -51,6 +52,10 @@ fn brief_case(case: &CasePlan) -> String {
     }
     let notes = description.modelling.into_iter().enumerate();
     lines.extend(notes.map(|(i, note)| (if i == 0 { "Modelling" } else { "" }, note)));
+    if let Some(caution) = stability::caution(case) {
+        lines.push(("Caution", caution.found));
+        lines.push(("", caution.hint));
+    }
     if let Some(element) = &case.element {
         lines.push(("Element", element.text.clone()));
     }
@@ -79,7 +84,7 @@ fn brief_case(case: &CasePlan) -> String {
         "",
         format!("files in {length} and {stress}; W per reference volume; J = {j};"),
     ));
-    let ring = if axisymmetric(case) {
+    let ring = if half_section(case) {
         " times 2 pi R"
     } else {
         ""
@@ -102,12 +107,13 @@ fn cuts(case: &CasePlan) -> String {
     if case.share == 1.0 {
         return String::new();
     }
-    // what turns about the axis moves across every plane through it
-    if case.exact.turns() || matches!(case.exact.body(), Body::Ellipse { .. }) {
-        return "the cuts are no planes of symmetry: prescribe the exact displacements there"
-            .to_string();
+    let round = matches!(case.exact.body(), Body::Tube { .. } | Body::Sphere { .. });
+    if round && !case.exact.turns() {
+        "no displacement normal to the cuts, no friction on them".to_string()
+    } else {
+        "on cuts that are no planes of symmetry: the exact displacements (`truebore exact --points`)"
+            .to_string()
     }
-    "no displacement normal to the cuts, no friction on them".to_string()
 }
 
 /// The constants of small strain, by the names other codes ask for.
@@ -187,9 +193,9 @@ fn solid(case: &CasePlan) -> bool {
     dimensions(case).contains(&3)
 }
 
-/// Whether a model of two dimensions is a plane through the axis.
-fn axisymmetric(case: &CasePlan) -> bool {
-    matches!(case.exact.body(), Body::Sphere { .. }) && !solid(case)
+/// Whether a model in two dimensions can only be a half section in R and Z.
+fn half_section(case: &CasePlan) -> bool {
+    !solid(case) && matches!(case.exact.body(), Body::Sphere { .. })
 }
 
 /// Names of the exchange format as the case's own headers.
@@ -208,7 +214,7 @@ fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
 pub fn nodes_header(case: &CasePlan) -> String {
     let mut names = if solid(case) {
         vec!["node", "X", "Y", "Z", "ux", "uy", "uz"]
-    } else if axisymmetric(case) {
+    } else if half_section(case) {
         vec!["node", "R", "Z", "ur", "uz"]
     } else {
         vec!["node", "X", "Y", "ux", "uy"]
@@ -235,12 +241,15 @@ pub fn elements_header(case: &CasePlan) -> String {
 
 /// Header of points.csv.
 pub fn points_header(case: &CasePlan) -> String {
-    let mut names = vec!["element", "point"];
-    names.extend_from_slice(match (solid(case), axisymmetric(case)) {
-        (true, _) => &["X", "Y", "Z"],
-        (_, true) => &["R", "Z"],
-        _ => &["X", "Y"],
-    });
+    let place = if half_section(case) {
+        ["R", "Z"]
+    } else {
+        ["X", "Y"]
+    };
+    let mut names = [["element", "point"], place].concat();
+    if solid(case) {
+        names.push("Z");
+    }
     names.push("weight");
     names.extend(stress_columns(case));
     // J may already stand with the stress that it converts
@@ -257,7 +266,7 @@ pub fn points_header(case: &CasePlan) -> String {
 fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
     let cauchy: &[&str] = if solid(case) {
         &["sxx", "syy", "szz", "sxy", "syz", "szx"]
-    } else if axisymmetric(case) {
+    } else if half_section(case) {
         &["srr", "stt", "szz", "szr"]
     } else {
         &["sxx", "syy", "szz", "sxy"]
@@ -271,7 +280,7 @@ fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
                 "F11", "F12", "F13", "F21", "F22", "F23", "F31", "F32", "F33",
             ],
         )
-    } else if axisymmetric(case) {
+    } else if half_section(case) {
         (
             &["P11", "P13", "P22", "P31", "P33"],
             &["F11", "F13", "F22", "F31", "F33"],

@@ -5,6 +5,7 @@ use super::facts;
 use super::level::{self, LevelResult};
 use super::plan::{CasePlan, LevelPlan, Plan};
 use super::series::{self, LevelData};
+use super::stability;
 use crate::input::{Finding, Weight};
 use crate::norms::body::WallSides;
 use crate::norms::catalogue::{self, Class};
@@ -159,10 +160,12 @@ fn judge_case(case: &CasePlan, levels: Vec<LevelResult>) -> CaseOutcome {
         .map(|criterion| judge_one(case, criterion, &measures, straight, known_bound))
         .collect();
     let (verdict, reason) = case_verdict(case, &levels, &criteria);
-    let mut findings: Vec<Finding> = levels
-        .iter()
-        .flat_map(|level| level.findings.iter().cloned())
-        .collect();
+    let mut findings: Vec<Finding> = stability::caution(case).into_iter().collect();
+    findings.extend(
+        levels
+            .iter()
+            .flat_map(|level| level.findings.iter().cloned()),
+    );
     // cautions first, otherwise in level order
     findings.sort_by_key(|f| std::cmp::Reverse(f.weight));
     CaseOutcome {

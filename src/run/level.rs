@@ -2,6 +2,7 @@
 
 use super::checks;
 use super::plan::{CasePlan, LevelPlan};
+use super::stability;
 use crate::input::{Finding, Place, Weight};
 use crate::norms::body::{self, BodyReport, Declared, WallSides};
 use crate::norms::model::Mesh;
@@ -172,6 +173,7 @@ pub fn measure(
     checks::note_outside(case, plan, &measures, &mut findings);
     checks::note_axial_stress(case, &set, &mut findings);
     checks::note_axial_origin(case, plan, &set, &mut findings);
+    stability::note_at_nodes(case, plan, &set, &mut findings);
     let sides = report.as_ref().map_or(WallSides::default(), |r| r.sides);
     let mesh_size = mesh_size(&set);
     let outcome = outcome(
@@ -216,7 +218,13 @@ fn compare_with_body(
         return Ok((None, None));
     };
     let volume = sanity::mesh_volume(elements, nodes);
+    if !case.exact.has_fields() {
+        // a single number says nothing of the body
+        return Ok((None, Some(volume)));
+    }
+    let interfaces = case.exact.interfaces();
     let declared = Declared {
+        interfaces: &interfaces,
         share: case.share,
         axial_length: case.axial_length,
         node_tolerance: case.node_tolerance,

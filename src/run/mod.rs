@@ -10,6 +10,7 @@ pub mod level;
 pub mod plan;
 pub mod point_table;
 pub mod rules;
+pub mod stability;
 pub mod tables;
 
 mod checks;

@@ -57,6 +57,10 @@ pub const SUITE: &[(&str, &str)] = &[
         "a point lies where the exact solution has a value",
     ),
     (
+        "ordered-stresses",
+        "an isotropic law is stable where the exact solution is: the greater of two principal stretches has the greater stress",
+    ),
+    (
         "results-folder",
         "every level has a folder of its own below the suite's",
     ),

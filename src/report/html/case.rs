@@ -110,7 +110,7 @@ fn findings(findings: &[Finding]) -> String {
     let mut sorted: Vec<&Finding> = findings.iter().collect();
     sorted.sort_by_key(|finding| std::cmp::Reverse(finding.weight));
     let mut out = String::from(
-        "<div class=\"scroll\"><table class=\"findings\"><caption>Found in the result sets</caption><thead><tr>\
+        "<div class=\"scroll\"><table class=\"findings\"><caption>Found in suite and result sets</caption><thead><tr>\
          <th scope=\"col\">Weight</th><th scope=\"col\">Found</th><th scope=\"col\">Where</th><th scope=\"col\">Rule</th>\
          </tr></thead><tbody>\n",
     );
