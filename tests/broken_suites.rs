@@ -536,6 +536,201 @@ const BROKEN: &[(&str, &str, &str)] = &[
         ":6:36",
         "the file is too large, nested too deeply, or repeats itself through aliases too often",
     ),
+    (
+        "variant-unknown",
+        ":8:31: cases[0].problem.homogeneous.biaxial",
+        "unknown key `biaxial`",
+    ),
+    (
+        "variant-none",
+        ":8:29: cases[0].problem.homogeneous",
+        "no deformation is given",
+    ),
+    (
+        "variant-two",
+        ":8:29: cases[0].problem.homogeneous",
+        "more than one deformation is given: uniaxial, planar",
+    ),
+    (
+        "variant-without-block",
+        ":8:39: cases[0].problem.homogeneous.uniaxial",
+        "found nothing",
+    ),
+    (
+        "variant-parameter",
+        ":8:57: cases[0].problem.homogeneous.uniaxial.strain",
+        "unknown key `strain`",
+    ),
+    (
+        "layers-materials-too-few",
+        ":8:39: cases[0].problem.layered-tube.radii",
+        "3 radii and 1 materials: each layer has one material and lies between two radii",
+    ),
+    (
+        "layers-radii-fall",
+        ":8:39: cases[0].problem.layered-tube.radii",
+        "outer-radius = 7 must be larger than radius = 10",
+    ),
+    (
+        "layers-one-radius",
+        ":8:39: cases[0].problem.layered-tube.radii",
+        "1 radii and 1 materials: each layer has one material and lies between two radii",
+    ),
+    (
+        "layers-small-strain-law",
+        ":8:30: cases[0].problem.layered-tube",
+        "a layered-tube cannot be made of linear-elastic",
+    ),
+    (
+        "two-drives",
+        ":8:143: cases[0].problem.pressurised-tube.inner-wall-stretch",
+        "inner-pressure and inner-wall-stretch are given, and one fixes the others",
+    ),
+    (
+        "torsion-two-axial-drives",
+        ":8:69: cases[0].problem.torsion-extension.axial-stretch",
+        "axial-stretch or axial-force: both are given",
+    ),
+    (
+        "torsion-no-axial-drive",
+        ":8:35: cases[0].problem.torsion-extension",
+        "axial-stretch or axial-force: neither is given",
+    ),
+    (
+        "load-word",
+        ":8:129: cases[0].problem.pressurised-tube.load",
+        "unknown word \"live\"",
+    ),
+    (
+        "grading-unknown",
+        ":8:91: cases[0].problem.graded-tube.grading",
+        "unknown word \"linear\"",
+    ),
+    (
+        "grading-table-lengths",
+        ":8:125: cases[0].problem.graded-tube.grading.table.factor",
+        "3 radii and 2 factors",
+    ),
+    (
+        "grading-table-falls",
+        ":8:91: cases[0].problem.graded-tube.grading",
+        "radius 7 of the table follows 10",
+    ),
+    (
+        "grading-table-too-short",
+        ":8:91: cases[0].problem.graded-tube.grading",
+        "the table reaches from 5 to 7, the layer from 5 to 10",
+    ),
+    (
+        "grading-table-negative",
+        ":8:91: cases[0].problem.graded-tube.grading",
+        "the factor -2 at radius 10 must be positive",
+    ),
+    (
+        "state-word",
+        ":8:90: cases[0].problem.plate-with-hole.state",
+        "unknown word \"plain-stress\"",
+    ),
+    (
+        "root-word",
+        ":8:117: cases[0].problem.cantilever-strip.root",
+        "unknown word \"clamped\"",
+    ),
+    (
+        "semi-axes-three",
+        ":8:42: cases[0].problem.bar-torsion.semi-axes",
+        "semi-axes has 3 numbers",
+    ),
+    (
+        "sphere-branch-zero",
+        ":8:119: cases[0].problem.pressurised-sphere.branch",
+        "branch = 0 is not one of 1, 2, 3, ...",
+    ),
+    (
+        "sphere-branch-half",
+        ":8:119: cases[0].problem.pressurised-sphere.branch",
+        "branch = 1.5 is not one of 1, 2, 3, ...",
+    ),
+    (
+        "shrink-fit-apart",
+        ":8:77: cases[0].problem.shrink-fit-tube.radial-interference",
+        "the rings come apart: the contact pressure would be -6.923077e0",
+    ),
+    (
+        "stage-word",
+        ":8:120: cases[0].problem.elastic-plastic-tube.stage",
+        "unknown word \"after\"",
+    ),
+    (
+        "field-unknown-name",
+        ":8:51: cases[0].problem.stated-field.displacement.x",
+        "unknown name \"a\" at the start; expected one of X, Y, Z, R, Theta, pi",
+    ),
+    (
+        "field-open-parenthesis",
+        ":8:51: cases[0].problem.stated-field.displacement.x",
+        "the text ends at character 6, after \"sin(X\"; expected an operator, or \")\" for the \"(\" at character 4",
+    ),
+    (
+        "field-unknown-direction",
+        ":8:64: cases[0].problem.stated-field.displacement.r",
+        "unknown key `r`",
+    ),
+    (
+        "field-needs-a-pressure",
+        ":8:30: cases[0].problem.stated-field",
+        "the law preserves volume, so that the field does not give the pressure",
+    ),
+    (
+        "reference-word",
+        ":9:16: cases[0].reference",
+        "unknown reference \"printed\"",
+    ),
+    (
+        "reference-no-value",
+        ":9:16: cases[0].reference",
+        "no published value belongs to this very problem",
+    ),
+    (
+        "reference-other-numbers",
+        ":9:16: cases[0].reference",
+        "no published value belongs to this very problem",
+    ),
+    (
+        "published-unknown",
+        ":8:36: cases[0].problem.published.value",
+        "there is no published value \"cook-circular\"",
+    ),
+    (
+        "published-with-a-solution",
+        ":8:36: cases[0].problem.published.value",
+        "oden-srr belongs to a problem that has an exact solution",
+    ),
+    (
+        "table-outside",
+        ":8:36: cases[0].problem.tabulated.table",
+        "\"../curve.csv\" is not below the suite's folder",
+    ),
+    (
+        "table-absolute",
+        ":8:36: cases[0].problem.tabulated.table",
+        "\"/curve.csv\" is not below the suite's folder",
+    ),
+    (
+        "table-missing",
+        ":8:36: cases[0].problem.tabulated.table",
+        "\"none.csv\" cannot be read",
+    ),
+    (
+        "table-is-a-folder",
+        ":8:36: cases[0].problem.tabulated.table",
+        "\".\" cannot be read",
+    ),
+    (
+        "no-materials",
+        ":5:75: cases[0].problem.lame-sphere.material",
+        "there is no material \"steel\"",
+    ),
 ];
 
 fn suites() -> PathBuf {

@@ -84,6 +84,19 @@ const WORDS: &[&str] = &[
     "generalized-plane-strain",
     "fixed-stretch",
     "lame-tube",
+    "lame-sphere",
+    "layered-tube",
+    "homogeneous",
+    "uniaxial",
+    "exponential",
+    "published",
+    "{ power: 1e300 }",
+    "{ table: { R: [1], factor: [] } }",
+    "[1, 2, 3, 4]",
+    "../curve.csv",
+    "sin(X",
+    "X^0.5",
+    "1/X",
     "pressurised-tube",
     "soft",
     "filled",
@@ -208,6 +221,87 @@ fn survives(seed: u64, text: &str, run: impl FnOnce()) {
 
 const LAME: &str = include_str!("../suites/locking-element/suite.yaml");
 const HOSE: &str = include_str!("../suites/dosing-pump-hose/suite.yaml");
+
+/// One case of every solution, so that every form of parameter is damaged too.
+const LIBRARY: &str = r#"suite: library
+units: { length: mm, stress: MPa }
+materials:
+  steel: { linear-elastic: { E: 210000, nu: 0.3 } }
+  soft: { neo-Hookean: { mu: 0.4 } }
+  split: { neo-Hookean: { mu: 0.4, volumetric: { quadratic: { K: 4 } } } }
+  yielding: { elastic-perfectly-plastic: { E: 210000, nu: 0.3, yield-stress: 240 } }
+cases:
+  - { id: a, problem: { layered-tube: { radii: [5, 7, 10], materials: [soft, split], ends: closed, inner-pressure: 0.05 } } }
+  - { id: b, problem: { graded-tube: { inner-radius: 5, outer-radius: 10, material: soft, grading: { table: { R: [5, 7, 10], factor: [1, 2, 1] } }, ends: plane-strain, inner-pressure: 0.1 } } }
+  - { id: c, problem: { graded-tube: { inner-radius: 5, outer-radius: 10, material: soft, grading: { power: 1.5 }, ends: closed, inner-pressure: 0.1 } } }
+  - { id: d, problem: { lame-sphere: { inner-radius: 10, outer-radius: 15, material: steel, inner-pressure: 80 } }, section: 1/8 }
+  - { id: e, problem: { pressurised-sphere: { inner-radius: 10, outer-radius: 15, material: soft, inner-pressure: 0.1, branch: 1 } } }
+  - { id: f, problem: { shrink-fit-tube: { radii: [20, 30, 45], radial-interference: 0.02, materials: [steel, steel], ends: plane-strain } } }
+  - { id: g, problem: { heated-tube: { inner-radius: 10, outer-radius: 20, material: steel, expansion: 1.2e-5, inner-temperature: 150, outer-temperature: 20, ends: plane-strain } } }
+  - { id: h, problem: { rotating-disk: { outer-radius: 200, material: steel, density-speed-squared: 0.0045 } } }
+  - { id: i, problem: { plate-with-hole: { hole-radius: 10, tension: 100, material: steel, state: plane-stress } } }
+  - { id: j, problem: { cantilever-strip: { length: 48, depth: 12, end-load: 40, material: steel, state: plane-stress, root: slope-of-axis } } }
+  - { id: k, problem: { pure-bending: { length: 40, depth: 10, moment: 1500, material: steel, state: plane-strain } } }
+  - { id: l, problem: { bar-torsion: { semi-axes: [12, 7], twist: 0.0005, material: steel } } }
+  - { id: m, problem: { elastic-plastic-tube: { inner-radius: 10, outer-radius: 20, material: yielding, inner-pressure: 140, stage: unloaded } } }
+  - { id: n, problem: { stated-field: { displacement: { x: "0.05*X + c*sin(X)*Y", y: "-0.03*Y^2", z: "0" }, constants: { c: 0.1 }, material: split } } }
+  - { id: o, problem: { homogeneous: { uniaxial: { stretch: 1.5 }, material: soft } } }
+  - { id: p, problem: { torsion-extension: { outer-radius: 5, axial-stretch: 1.3, twist: 0.05, material: soft } } }
+  - { id: q, problem: { azimuthal-shear: { inner-radius: 5, outer-radius: 10, material: soft, rotation: 0.3 } } }
+  - { id: r, problem: { bent-block: { thickness: 2, length: 20, angle: 1.5, material: soft } } }
+  - { id: s, problem: { published: { value: cook-linear } } }
+  - { id: t, problem: { tabulated: { table: curve.csv, over: p, quantity: a, source: bench } } }
+  - { id: u, problem: { pressurised-tube: { inner-radius: 1, outer-radius: 2, ends: closed, material: soft, inner-pressure: 0.04 } }, reference: exact }
+"#;
+
+/// Three cases of the library at a time, so that many suites still can be planned.
+fn some_of_the_library(seed: u64) -> String {
+    let (head, cases) = LIBRARY.split_at(LIBRARY.find("cases:").unwrap());
+    let cases: Vec<&str> = cases.lines().skip(1).collect();
+    let picked = (0..3).map(|i| cases[(seed as usize * 5 + i * 7) % cases.len()]);
+    format!("{head}cases:\n{}\n", picked.collect::<Vec<_>>().join("\n"))
+}
+
+#[test]
+fn a_damaged_library_is_read_or_refused() {
+    let (mut planned, mut refused) = (0, 0);
+    for seed in 2000..2240 {
+        let dice = &mut Dice::new(seed);
+        let text = match seed % 3 {
+            0 => mutated(&some_of_the_library(seed), dice),
+            _ => {
+                let whole = some_of_the_library(seed);
+                let (head, cases) = whole.split_at(whole.find("cases:").unwrap());
+                let number = |c: char| c.is_ascii_digit() || c == '.';
+                format!("{head}{}", replaced(cases, dice, number, &NUMBERS[..26]))
+            }
+        };
+        survives(seed, &text, || match plan::read(&text, "suite.yaml") {
+            Ok(plan) => {
+                planned += 1;
+                assert!(!brief::brief(&plan, None).is_empty());
+                for case in &plan.cases {
+                    if let Ok(csv) = tables::stations(case, 3) {
+                        assert!(!csv.contains("NaN") && !csv.contains("inf"), "{csv}");
+                    }
+                    let totals = tables::totals(case);
+                    assert!(
+                        !totals.contains("NaN") && !totals.contains("inf,"),
+                        "{totals}"
+                    );
+                }
+            }
+            Err(findings) => {
+                refused += 1;
+                assert!(findings.iter().all(|f| !f.found.is_empty()));
+            }
+        });
+    }
+    assert!(
+        planned > 20 && refused > 60,
+        "{planned} read, {refused} refused"
+    );
+}
 
 #[test]
 fn a_damaged_suite_is_read_or_refused() {

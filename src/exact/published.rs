@@ -120,7 +120,8 @@ impl Published {
     pub fn new(given: &Given) -> Result<Self, Refusal> {
         let id = given.text("value").unwrap_or_default();
         let Some(row) = rows().iter().find(|row| row.id == id) else {
-            let ids: Vec<_> = rows().iter().map(|row| row.id.as_str()).collect();
+            let alone = rows().iter().filter(|row| row.problem.is_empty());
+            let ids: Vec<_> = alone.map(|row| row.id.as_str()).collect();
             let message = format!("there is no published value \"{id}\"");
             return Err(refuse(
                 "value",

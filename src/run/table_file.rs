@@ -10,14 +10,16 @@ use std::path::{Component, Path};
 /// Largest file that is read.
 const LARGEST: u64 = 16 << 20;
 
+/// Where such a file can be.
+const BESIDE: &str = "a CSV file beside the suite or in a folder below";
+
 /// Reads the file under a key; every fault is reported.
 pub fn read(node: &Node, path: &str, folder: &Path, reader: &mut Reader) -> Option<TableData> {
     let name = reader.text(node, path)?;
     let inside = |c: Component| matches!(c, Component::Normal(_) | Component::CurDir);
     if !Path::new(&name).components().all(inside) {
         let found = format!("\"{name}\" is not below the suite's folder");
-        reader.refuse("cannot-read", node, path, found).expected =
-            "a CSV file beside the suite or in a folder below".into();
+        reader.refuse("cannot-read", node, path, found).expected = BESIDE.into();
         return None;
     }
     let bytes = std::fs::metadata(folder.join(&name)).and_then(|about| {
@@ -30,7 +32,7 @@ pub fn read(node: &Node, path: &str, folder: &Path, reader: &mut Reader) -> Opti
         Ok(bytes) => bytes,
         Err(e) => {
             let found = format!("\"{name}\" cannot be read: {e}");
-            reader.refuse("cannot-read", node, path, found);
+            reader.refuse("cannot-read", node, path, found).expected = BESIDE.into();
             return None;
         }
     };

@@ -140,11 +140,12 @@ impl StatedField {
                 differences: &[],
             };
             Expression::parse(text, names).map_err(|e| {
-                refuse(
-                    parameter,
-                    e.to_string(),
-                    "`truebore catalogue expressions` is the grammar",
-                )
+                let grammar = "`truebore catalogue expressions` is the grammar";
+                let hint = match e.hint.as_str() {
+                    "" => grammar.to_string(),
+                    hint => format!("{hint}; {grammar}"),
+                };
+                refuse(parameter, e.in_text(text), hint)
             })
         };
         let block = given.block("displacement");
