@@ -119,10 +119,11 @@ impl Body {
         !matches!(self, Self::Sphere { .. })
     }
 
-    /// The angle that the full section takes about the axis, where it is a turn or part of one.
+    /// The angle that the full section takes about the axis, where it is a turn or part of one and grows with the area; of an
+    /// ellipse that of (X/a, Y/b).
     pub fn turn(&self) -> Option<f64> {
         match self {
-            Self::Tube { .. } => Some(2.0 * PI),
+            Self::Tube { .. } | Self::Ellipse { .. } => Some(2.0 * PI),
             Self::Sector { angle, .. } => Some(*angle),
             _ => None,
         }

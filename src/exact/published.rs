@@ -154,6 +154,10 @@ impl ExactSolution for Published {
         Err(no_field())
     }
 
+    fn has_fields(&self) -> bool {
+        false
+    }
+
     fn totals(&self) -> &[Total] {
         &[]
     }

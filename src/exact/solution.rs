@@ -127,6 +127,16 @@ pub trait ExactSolution: Send + Sync + std::fmt::Debug {
         0.0
     }
 
+    /// Radii about the Z axis where parts meet that may be meshed apart; the displacement may jump there.
+    fn interfaces(&self) -> Vec<f64> {
+        Vec::new()
+    }
+
+    /// Whether it has a state at every point, or consists of single numbers.
+    fn has_fields(&self) -> bool {
+        true
+    }
+
     /// Single numbers known beside, or instead of, the fields.
     fn known_values(&self) -> &[KnownValue] {
         &[]

@@ -157,6 +157,10 @@ impl ExactSolution for Tabulated {
         Err(no_field())
     }
 
+    fn has_fields(&self) -> bool {
+        false
+    }
+
     fn totals(&self) -> &[Total] {
         &[]
     }

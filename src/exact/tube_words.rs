@@ -59,7 +59,9 @@ impl TubeWords {
     pub fn description(&self, body: &str, units: &UnitSystem) -> Description {
         let length = units.length.name;
         let mut totals = vec!["strain_energy", "axial_force", "load_factor"];
-        if !matches!(self.ends, Ends::PlaneStrain | Ends::FixedStretch { .. }) {
+        let held = matches!(self.ends, Ends::PlaneStrain | Ends::FixedStretch { .. });
+        // in plane stress the thickness changes by another amount at every radius
+        if !held && self.ends != Ends::PlaneStress {
             totals.insert(1, "axial_stretch");
         }
         Description {

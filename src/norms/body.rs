@@ -59,12 +59,14 @@ pub struct BodyReport {
 
 /// What is declared of the mesh.
 #[derive(Debug, Clone, Copy)]
-pub struct Declared {
+pub struct Declared<'a> {
     /// Share of the section.
     pub share: f64,
     pub axial_length: Option<f64>,
     /// How far a node may lie off the body, where it is not [`tolerance`].
     pub node_tolerance: Option<f64>,
+    /// Radii where parts may be meshed apart.
+    pub interfaces: &'a [f64],
 }
 
 /// How far a node may be from where it belongs: a millionth of the wall, and what single precision leaves.
@@ -95,6 +97,7 @@ pub fn compare(
     look.nodes_on_body(&mut report);
     look.walls(boundary, &mut report);
     look.axial_extent(declared, &mut report);
+    look.outline(declared, boundary, &mut report);
     look.share(declared, mesh_volume, boundary, &mut report);
     report
 }
@@ -306,7 +309,7 @@ impl Look<'_> {
                     Weight::Caution,
                     "straight-wall-sides",
                     place,
-                    "the mid-side nodes on the walls lie on straight chords, not on the circles",
+                    "the mid-side nodes on the walls lie on straight chords, not on the walls",
                 )
                 .expected("mid-side nodes on the wall")
                 .hint("straight sides cost one order of the displacement in L2; move the mid-side nodes onto the wall"),
@@ -316,7 +319,7 @@ impl Look<'_> {
                     Weight::Caution,
                     "mixed-wall-sides",
                     place,
-                    format!("mid-side nodes on the walls: {curved} on the circle, {straight} on the chord, {astray} elsewhere"),
+                    format!("mid-side nodes on the walls: {curved} on the wall, {straight} on the chord, {astray} elsewhere"),
                 )
                 .expected("all on the wall"),
             ),
@@ -357,7 +360,7 @@ impl Look<'_> {
     }
 }
 
-fn mean(points: impl Iterator<Item = [f64; 3]>) -> [f64; 3] {
+pub(super) fn mean(points: impl Iterator<Item = [f64; 3]>) -> [f64; 3] {
     let (mut sum, mut count) = ([0.0; 3], 0.0);
     for p in points {
         for (s, c) in sum.iter_mut().zip(p) {

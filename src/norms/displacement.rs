@@ -232,10 +232,11 @@ pub fn largest_nodal(
     exact: &dyn ExactSolution,
 ) -> Result<LargestNodal, String> {
     let kind = mesh.kind();
+    let places = model::NodePlaces::new(mesh, exact);
     let mut largest = Largest::default();
     let mut size: f64 = 0.0;
     for (node, moved) in displacements.iter().enumerate() {
-        let state = exact.at(mesh.node(node)).map_err(|r| r.to_string())?;
+        let state = exact.at(places.of(node)).map_err(|r| r.to_string())?;
         let (distance, exact_size) =
             squares(&judged(kind, *moved), &model::displacement(kind, &state));
         largest.offer(distance.sqrt(), || node);

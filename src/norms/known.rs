@@ -37,7 +37,12 @@ impl Level<'_> {
                     return;
                 }
             };
-            level.known_bound = level.known_bound.max(half_width / value.abs());
+            let bound = if half_width == 0.0 {
+                0.0
+            } else {
+                half_width / value.abs()
+            };
+            level.known_bound = level.known_bound.max(bound);
             let place = format!("{}: {place}", known.id);
             let measured = Measured::number(NAME, &unit, computed, value, Some(place))
                 .noted(Some(known.source.clone()));

@@ -109,15 +109,10 @@ impl<'a> Level<'a> {
             .push(match largest_nodal(mesh, moved, self.exact) {
                 Err(why) => Measured::missing(names[2], &length, &why),
                 Ok(found) => {
-                    let place = found.node.map(|node| {
-                        let p = mesh.node(node);
-                        format!(
-                            "node {} (R {:.6}, {:.3} deg)",
-                            mesh.nodes.ids[node],
-                            self.exact.body().radius(&p),
-                            p.theta().to_degrees()
-                        )
-                    });
+                    let body = self.exact.body();
+                    let place = found
+                        .node
+                        .map(|node| wall::node_in_words(mesh, node, &body));
                     let relative = if found.exact == 0.0 {
                         Err(NoNorm::ExactIsZero.to_string())
                     } else {

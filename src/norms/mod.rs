@@ -8,6 +8,7 @@ pub mod known;
 pub mod level;
 pub mod measured;
 pub mod model;
+mod outline;
 pub mod points;
 pub mod profile;
 mod share;

@@ -4,6 +4,7 @@ use crate::elements::{MAX_NODES, ShapeTable, map};
 use crate::exact::{Body, ExactSolution, Frame, State};
 use crate::mechanics::{Point, SymTensor};
 use crate::results::{Elements, ModelKind, Nodes};
+use std::collections::BTreeMap;
 
 /// A mesh with its nodes.
 #[derive(Debug, Clone, Copy)]
@@ -98,6 +99,51 @@ pub fn place_of_axes(exact: &dyn ExactSolution, point: Point, state: &State) -> 
         Point::new(point.x + u[0], point.y + u[1], point.z + u[2])
     } else {
         point
+    }
+}
+
+/// Where the exact solution is asked for the nodes of a mesh. A node where parts meet belongs to the part of its element, and
+/// is asked for just inside that part.
+pub struct NodePlaces<'a> {
+    mesh: Mesh<'a>,
+    moved: BTreeMap<usize, Point>,
+}
+
+impl<'a> NodePlaces<'a> {
+    pub fn new(mesh: Mesh<'a>, exact: &dyn ExactSolution) -> Self {
+        let (interfaces, body) = (exact.interfaces(), exact.body());
+        let mut moved = BTreeMap::new();
+        let elements = if interfaces.is_empty() {
+            0
+        } else {
+            mesh.elements.len()
+        };
+        let near = 1e-6 * body.thickness() + 2e-7 * body.extent();
+        for element in 0..elements {
+            let nodes = mesh.elements.nodes(element);
+            let count = mesh.elements.shapes[element].corner_count();
+            let radii = nodes[..count]
+                .iter()
+                .map(|&n| mesh.node(n as usize).radius());
+            let middle = radii.sum::<f64>() / count as f64;
+            for &node in nodes {
+                let point = mesh.node(node as usize);
+                let radius = point.radius();
+                let Some(at) = interfaces.iter().find(|at| (radius - **at).abs() <= near) else {
+                    continue;
+                };
+                let inwards = if middle < *at { -1e-11 } else { 1e-11 };
+                let factor = at * (1.0 + inwards) / radius;
+                let place = Point::new(point.x * factor, point.y * factor, point.z);
+                moved.entry(node as usize).or_insert(place);
+            }
+        }
+        Self { mesh, moved }
+    }
+
+    pub fn of(&self, node: usize) -> Point {
+        let moved = self.moved.get(&node).copied();
+        moved.unwrap_or_else(|| self.mesh.node(node))
     }
 }
 

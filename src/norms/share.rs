@@ -39,7 +39,8 @@ impl Look<'_> {
             + 2e-6 * report.exact_volume;
         let excess = (mesh_volume - report.exact_volume).abs();
         if excess <= allowed {
-            self.angle(declared, report);
+            self.angle(declared, boundary, report);
+            self.reach(declared, boundary, report);
             return;
         }
         report.findings.push(
@@ -59,32 +60,17 @@ impl Look<'_> {
     }
 
     /// A sector spans its share of the turn: the same sector meshed twice would have the volume, not the angle.
-    fn angle(&self, declared: Declared, report: &mut BodyReport) {
-        let turn = 2.0 * std::f64::consts::PI;
-        let Some(full) = self.body.turn() else {
+    fn angle(&self, declared: Declared, boundary: &[Side], report: &mut BodyReport) {
+        let full = self.body.turn();
+        let Some(full) = full.filter(|_| self.mesh.kind() != ModelKind::Axisymmetric) else {
             return;
         };
-        let share = declared.share * full / turn;
-        if share >= 1.0 || self.mesh.kind() == ModelKind::Axisymmetric {
-            return;
-        }
-        // nodes on the axis have no angle
-        let mut angles: Vec<f64> = (0..self.mesh.nodes.len())
-            .map(|node| self.mesh.node(node))
-            .filter(|point| point.radius() > self.slack)
-            .map(|point| point.theta())
-            .collect();
-        angles.sort_by(f64::total_cmp);
-        let (Some(first), Some(last)) = (angles.first(), angles.last()) else {
-            return;
+        let wanted = declared.share * full;
+        let found = self.around(boundary);
+        let (inner, outer) = match self.body.walls() {
+            (inner, Some(outer)) => (inner.unwrap_or(0.0), outer),
+            _ => (0.0, 1.0),
         };
-        let across = first + turn - last;
-        let gap = angles
-            .windows(2)
-            .map(|pair| pair[1] - pair[0])
-            .fold(across, f64::max);
-        let (found, wanted) = (turn - gap, share * turn);
-        let (inner, outer) = self.body.span().unwrap_or((0.0, 1.0));
         let nearest = inner.max(0.1 * outer);
         if (found - wanted).abs() <= 1e-3 * wanted + 4.0 * self.slack / nearest {
             return;
@@ -109,23 +95,15 @@ impl Look<'_> {
         let (inner, outer) = (inner.unwrap_or(0.0), outer.unwrap_or(0.0));
         let (mut inner_gap, mut outer_gap) = (self.slack, self.slack);
         for side in boundary {
-            let nodes = self.mesh.elements.nodes(side.element as usize);
+            let (_, Some(wall)) = self.corners(*side) else {
+                continue;
+            };
             let shape = self.mesh.elements.shapes[side.element as usize];
             let corners: Vec<usize> = shape.sides()[side.side as usize]
                 .iter()
                 .copied()
                 .filter(|&l| l < shape.corner_count())
                 .collect();
-            let radius = |l: usize| self.radius(self.mesh.nodes.positions[nodes[l] as usize]);
-            let Some(wall) = corners.first().and_then(|&l| self.wall_of(radius(l))) else {
-                continue;
-            };
-            if corners
-                .iter()
-                .any(|&l| self.wall_of(radius(l)) != Some(wall))
-            {
-                continue;
-            }
             let gap = self.side_gap(
                 side.element as usize,
                 &corners,

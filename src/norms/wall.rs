@@ -3,8 +3,9 @@
 use super::accumulate::Largest;
 use super::model::{self, Mesh};
 use super::points::KeptPoint;
-use crate::exact::{Body, ExactSolution};
+use crate::exact::{Body, ExactSolution, Frame};
 use crate::mechanics::Point;
+use crate::results::ModelKind;
 
 /// A number at a place with the exact one it is held against.
 #[derive(Debug, Clone, PartialEq)]
@@ -34,6 +35,19 @@ fn words(radius: f64, theta: f64) -> String {
     format!("(R {radius:.6}, {:.3} deg)", theta.to_degrees())
 }
 
+/// A node and where it is: about the axis where the body has one, else by its coordinates.
+pub fn node_in_words(mesh: Mesh, node: usize, body: &Body) -> String {
+    let (id, point) = (mesh.nodes.ids[node], mesh.node(node));
+    let Point { x, y, z } = point;
+    let place = match (body.frame(), mesh.kind()) {
+        (Frame::Cylindrical, _) => words(body.radius(&point), point.theta()),
+        (_, ModelKind::Planar) => format!("(X {x:.6}, Y {y:.6})"),
+        (_, ModelKind::Axisymmetric) => format!("(R {x:.6}, Z {z:.6})"),
+        (_, ModelKind::Solid) => format!("(X {x:.6}, Y {y:.6}, Z {z:.6})"),
+    };
+    format!("node {id} {place}")
+}
+
 /// The part of a displacement that points from the axis, or from the centre of a sphere, to the particle.
 fn outward(body: &Body, point: &Point, u: [f64; 3]) -> f64 {
     let (c, s) = point.direction();
@@ -61,19 +75,16 @@ pub fn radial_displacement(
     exact: &dyn ExactSolution,
 ) -> Result<Option<AtPlace>, String> {
     let body = exact.body();
+    let places = model::NodePlaces::new(mesh, exact);
     let mut candidates = Vec::with_capacity(nodes.len());
     for &node in nodes {
         let point = mesh.node(node);
-        let state = exact.at(point).map_err(|r| r.to_string())?;
+        let state = exact.at(places.of(node)).map_err(|r| r.to_string())?;
         let outward = |u: [f64; 3]| outward(&body, &point, u);
         candidates.push(AtPlace {
             computed: outward(displacements[node]),
             exact: outward(state.displacement.into()),
-            place: format!(
-                "node {} {}",
-                mesh.nodes.ids[node],
-                words(body.radius(&point), point.theta())
-            ),
+            place: node_in_words(mesh, node, &body),
         });
     }
     Ok(worst(candidates))
@@ -111,11 +122,7 @@ pub fn nodal_stress(
         candidates.push(AtPlace {
             computed: local[component],
             exact: state.local_stress.to_array()[component],
-            place: format!(
-                "node {} {}",
-                mesh.nodes.ids[node],
-                words(body.radius(&point), point.theta())
-            ),
+            place: node_in_words(mesh, node, &body),
         });
     }
     Ok(worst(candidates))
@@ -160,27 +167,42 @@ pub fn nearest_points(
     worst(candidates)
 }
 
-/// In each of the elements a straight line in R through its integration points, at the wall; the worst of them.
+/// In each of the elements a straight line in R through its integration points, at the wall under their middle; the worst
+/// of them.
+///
+/// # Errors
+/// Where the exact solution has no value.
 pub fn extrapolated(
     mesh: Mesh,
     kept: &[KeptPoint],
     elements: &[usize],
     radius: f64,
     component: usize,
-    exact_at_wall: f64,
-) -> Option<AtPlace> {
-    let candidates = by_element(kept, elements).map(|group| {
+    exact: &dyn ExactSolution,
+) -> Result<Option<AtPlace>, String> {
+    let mut candidates = Vec::new();
+    for group in by_element(kept, elements) {
         let id = mesh.elements.ids[group[0].element as usize];
-        AtPlace {
+        let at = under(group, radius);
+        let state = exact.at(at).map_err(|r| r.to_string())?;
+        candidates.push(AtPlace {
             computed: line_at(group, radius, component),
-            exact: exact_at_wall,
+            exact: state.local_stress.to_array()[component],
             place: format!(
                 "element {id}, line through {} points at R {radius}",
                 group.len()
             ),
-        }
+        });
+    }
+    Ok(worst(candidates))
+}
+
+/// The point of that radius in the mean direction of the points: beside a hole the stress changes around the wall.
+fn under(group: &[KeptPoint], radius: f64) -> Point {
+    let (c, s) = group.iter().fold((0.0, 0.0), |(c, s), k| {
+        (c + k.theta.cos(), s + k.theta.sin())
     });
-    worst(candidates)
+    Point::from_cylindrical(radius, s.atan2(c), 0.0)
 }
 
 /// Least-squares line of the stress over R - radius, at zero; the mean where all points share one radius.

@@ -90,14 +90,7 @@ impl<'a> Level<'a> {
             return;
         }
         let extrapolated = kept.and_then(|kept| {
-            let state = self
-                .exact
-                .at(self.exact.body().point_at(radius))
-                .map_err(|r| r.to_string())?;
-            let exact = state.local_stress.to_array()[component];
-            Ok(wall::extrapolated(
-                mesh, kept, elements, radius, component, exact,
-            ))
+            wall::extrapolated(mesh, kept, elements, radius, component, self.exact)
         });
         push(&format!("{name}-extrapolated"), extrapolated);
     }

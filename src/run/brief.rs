@@ -4,7 +4,7 @@ use super::facts;
 use super::plan::{CasePlan, Plan};
 use super::stability;
 use crate::elements::Shape;
-use crate::exact::Kinematics;
+use crate::exact::{Body, Kinematics};
 use crate::materials::Material;
 use crate::mechanics::StressMeasure;
 use crate::norms::catalogue;
@@ -38,7 +38,11 @@ fn brief_case(case: &CasePlan) -> String {
         ("Material", facts::material(case)),
     ];
     for material in case.given.materials() {
-        lines.push(("", material.energy_text()));
+        // layers of one law: its energy once
+        let energy = ("", material.energy_text());
+        if !lines.contains(&energy) {
+            lines.push(energy);
+        }
         lines.push(("", constants(case, material)));
     }
     let description = facts::description(case);
@@ -61,7 +65,10 @@ fn brief_case(case: &CasePlan) -> String {
     lines.push(("points.csv", points_header(case)));
     lines.push((
         "totals.csv",
-        format!("quantity,value  with {}", totals(case).join(", ")),
+        match totals(case) {
+            none if none.is_empty() => "not needed".to_string(),
+            wanted => format!("quantity,value  with {}", wanted.join(", ")),
+        },
     ));
     let reading = super::level::reading(case);
     lines.push(("as declared", reading.conventions.describe()));
@@ -77,10 +84,16 @@ fn brief_case(case: &CasePlan) -> String {
         "",
         format!("files in {length} and {stress}; W per reference volume; J = {j};"),
     ));
+    let ring = if half_section(case) {
+        " times 2 pi R"
+    } else {
+        ""
+    };
     lines.push((
         "",
-        "weight = quadrature weight times det(dX/dxi); other conventions must be declared"
-            .to_string(),
+        format!(
+            "weight = quadrature weight times det(dX/dxi){ring}; other conventions must be declared"
+        ),
     ));
     lines.extend(criteria(case));
     let mut text = format!("{}: {}\n", case.id, case.title);
@@ -94,7 +107,13 @@ fn cuts(case: &CasePlan) -> String {
     if case.share == 1.0 {
         return String::new();
     }
-    "no displacement normal to the cuts, no friction on them".to_string()
+    let round = matches!(case.exact.body(), Body::Tube { .. } | Body::Sphere { .. });
+    if round && !case.exact.turns() {
+        "no displacement normal to the cuts, no friction on them".to_string()
+    } else {
+        "on cuts that are no planes of symmetry: the exact displacements (`truebore exact --points`)"
+            .to_string()
+    }
 }
 
 /// The constants of small strain, by the names other codes ask for.
@@ -138,9 +157,14 @@ fn meshes(case: &CasePlan) -> Vec<(&'static str, String)> {
             "{count} levels, coarsest first, each with about half the element size of the one before"
         );
         lines.push(("Meshes", text));
+        let family = "the same family of meshes throughout";
+        let curved = case.exact.body().walls() != (None, None);
         lines.push((
             "",
-            "the same family of meshes throughout; mid-side nodes on the true circles".to_string(),
+            match curved {
+                true => format!("{family}; mid-side nodes on the true walls"),
+                false => family.to_string(),
+            },
         ));
     } else {
         lines.push((
@@ -169,6 +193,11 @@ fn solid(case: &CasePlan) -> bool {
     dimensions(case).contains(&3)
 }
 
+/// Whether a model in two dimensions can only be a half section in R and Z.
+fn half_section(case: &CasePlan) -> bool {
+    !solid(case) && matches!(case.exact.body(), Body::Sphere { .. })
+}
+
 /// Names of the exchange format as the case's own headers.
 fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
     let header = |name: &&str| {
@@ -185,6 +214,8 @@ fn declared(case: &CasePlan, table: &str, names: &[&str]) -> String {
 pub fn nodes_header(case: &CasePlan) -> String {
     let mut names = if solid(case) {
         vec!["node", "X", "Y", "Z", "ux", "uy", "uz"]
+    } else if half_section(case) {
+        vec!["node", "R", "Z", "ur", "uz"]
     } else {
         vec!["node", "X", "Y", "ux", "uy"]
     };
@@ -210,7 +241,12 @@ pub fn elements_header(case: &CasePlan) -> String {
 
 /// Header of points.csv.
 pub fn points_header(case: &CasePlan) -> String {
-    let mut names = vec!["element", "point", "X", "Y"];
+    let place = if half_section(case) {
+        ["R", "Z"]
+    } else {
+        ["X", "Y"]
+    };
+    let mut names = [["element", "point"], place].concat();
     if solid(case) {
         names.push("Z");
     }
@@ -230,6 +266,8 @@ pub fn points_header(case: &CasePlan) -> String {
 fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
     let cauchy: &[&str] = if solid(case) {
         &["sxx", "syy", "szz", "sxy", "syz", "szx"]
+    } else if half_section(case) {
+        &["srr", "stt", "szz", "szr"]
     } else {
         &["sxx", "syy", "szz", "sxy"]
     };
@@ -241,6 +279,11 @@ fn stress_columns(case: &CasePlan) -> Vec<&'static str> {
             &[
                 "F11", "F12", "F13", "F21", "F22", "F23", "F31", "F32", "F33",
             ],
+        )
+    } else if half_section(case) {
+        (
+            &["P11", "P13", "P22", "P31", "P33"],
+            &["F11", "F13", "F22", "F31", "F33"],
         )
     } else {
         (

@@ -23,6 +23,9 @@ pub(super) fn covers_without_mesh(
         // without weights there is no norm at all, and each says so
         return Ok(());
     };
+    if !case.exact.has_fields() {
+        return Ok(());
+    }
     let place = Place::file(points.file());
     let body = case.exact.body();
     let Some(area) = body.section_area() else {
@@ -138,7 +141,7 @@ pub(super) fn check_load(
     ))
 }
 
-/// In a solid the exact axial displacement is counted from Z = 0, and a model held elsewhere differs by a rigid shift.
+/// In a solid the exact displacement is counted from Z = 0, and a model held elsewhere differs by a rigid shift or turn.
 pub(super) fn note_axial_origin(
     case: &CasePlan,
     plan: &LevelPlan,
@@ -154,17 +157,19 @@ pub(super) fn note_axial_origin(
         .map(|p| p[2].abs())
         .fold(f64::INFINITY, f64::min);
     let body = case.exact.body();
-    let middle = body.middle();
-    let above = crate::mechanics::Point::new(middle.x, middle.y, body.thickness());
-    // where nothing moves axially there is nothing to be shifted
-    let moves = case.exact.at(above).is_ok_and(|s| s.displacement[2] != 0.0);
+    let at = |z: f64| {
+        let middle = body.middle();
+        let point = crate::mechanics::Point::new(middle.x, middle.y, z);
+        case.exact.at(point).ok().map(|state| state.displacement)
+    };
+    // where nothing changes along Z there is nothing to be shifted
+    let moves = at(0.0) != at(body.thickness());
     if nearest > 1e-6 * body.thickness() && body.is_prism() && moves {
         let place = Place::file(plan.folder.clone());
-        let found = "no node lies at Z = 0, from where the exact axial displacement is counted";
+        let found = "no node lies at Z = 0, from where the exact displacement is counted";
         findings.push(
-            Finding::new(Weight::Caution, "axial-origin", place, found).hint(
-                "put the face that does not move axially at Z = 0, or shift Z and uz on export",
-            ),
+            Finding::new(Weight::Caution, "axial-origin", place, found)
+                .hint("put the face that stays in place at Z = 0, or shift Z and uz on export"),
         );
     }
 }

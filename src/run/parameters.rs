@@ -316,7 +316,11 @@ fn material(
                 path,
                 format!("there is no material \"{name}\""),
             );
-            finding.expected = format!("one of: {}", names.join(", "));
+            finding.expected = match names.as_slice() {
+                [] => "named materials in `materials:`, e.g. soft: { neo-Hookean: { mu: 0.4 } }"
+                    .into(),
+                names => format!("one of: {}", names.join(", ")),
+            };
             if let Some(near) = nearest(name, names) {
                 finding.hint = format!("did you mean `{near}`?");
             }

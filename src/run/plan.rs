@@ -258,7 +258,7 @@ type Choices = (Vec<Combination>, Vec<Option<Combination>>);
 fn combinations(entry: &CaseEntry, lists: &[&str], reader: &mut Reader) -> Option<Choices> {
     let element = entry.element.as_ref();
     for node in [Some(&entry.parameters), element].into_iter().flatten() {
-        if let Some(list) = expand::empty_list(&node.value, lists) {
+        if let Some(list) = expand::empty_list(&node.value) {
             let finding = reader.refuse(
                 "empty-list",
                 list,

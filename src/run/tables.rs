@@ -18,9 +18,9 @@ pub fn stations(case: &CasePlan, stations: usize) -> Result<String, String> {
     let line = case.exact.line();
     let mut csv = line.columns.join(",") + "\n";
     let (from, to) = (line.from.to_array(), line.to.to_array());
-    let along: Vec<Vec<f64>> = (0..3).map(|i| spaced(from[i], to[i], stations)).collect();
-    for i in 0..stations {
-        let point = Point::new(along[0][i], along[1][i], along[2][i]);
+    let [xs, ys, zs] = [0, 1, 2].map(|i| spaced(from[i], to[i], stations));
+    for ((x, y), z) in xs.into_iter().zip(ys).zip(zs) {
+        let point = Point::new(x, y, z);
         let state = case.exact.at(point).map_err(|r| r.to_string())?;
         let spherical = case.exact.body().frame() == Frame::Spherical;
         let small = case.exact.kinematics() == Kinematics::SmallStrain;

@@ -55,11 +55,8 @@ fn read_suite(root: &Node, reader: &mut Reader) -> Option<Suite> {
         )
         .and_then(|n| export::read_units(n, "units", reader));
     let materials = block
-        .required(
-            "materials",
-            reader,
-            "named materials, e.g. soft: { neo-Hookean: { mu: 0.4 } }",
-        )
+        // single published numbers need none
+        .optional("materials")
         .map(|n| materials::read_all(n, reader))
         .unwrap_or_default();
     let accept = criteria::read_list(block.optional("accept"), "accept", reader);

@@ -1,4 +1,5 @@
-//! Structured meshes of a sector of a tube, in every shape of the exchange format.
+//! Structured meshes in every shape of the exchange format: a sector of a tube, or any grid of cells bent by a map, and
+//! several of them put together.
 //!
 //! Cells are counted in radius, angle and length; nodes are told apart by their place on a grid of twice as many
 //! steps, so that a middle node is the mean of its corners there. Written for the tests: shares nothing with the
@@ -44,9 +45,25 @@ impl Sector {
 /// Nodes in space (`[R, 0, Z]` where axisymmetric) and elements as indices into them.
 #[derive(Debug, Clone)]
 pub struct Mesh {
-    pub sector: Sector,
+    pub shape: Shape,
+    pub axisymmetric: bool,
+    /// Of the whole section.
+    pub share: f64,
+    pub length: f64,
     pub nodes: Vec<[f64; 3]>,
     pub elements: Vec<Vec<usize>>,
+}
+
+/// From a place on the unit cube to one in space.
+pub type Bend<'a> = &'a dyn Fn([f64; 3]) -> [f64; 3];
+
+/// Cells before they are bent.
+struct Grid<'a> {
+    cells: [usize; 3],
+    bend: Bend<'a>,
+    straight: bool,
+    /// The second direction closes on itself.
+    closed: bool,
 }
 
 /// A place on the grid: twice the steps in radius, angle and length.
@@ -84,20 +101,62 @@ const CUBE: [Place; 8] = [
 
 impl Mesh {
     pub fn of(sector: Sector) -> Self {
+        let bend = |[i, j, k]: [f64; 3]| {
+            let radius = sector.inner + (sector.outer - sector.inner) * i;
+            if sector.axisymmetric {
+                return [radius, 0.0, sector.length * j];
+            }
+            let angle = 2.0 * PI * sector.share * j;
+            let flat = sector.shape.dimension() == 2;
+            let z = if flat { 0.0 } else { sector.length * k };
+            [radius * angle.cos(), radius * angle.sin(), z]
+        };
+        let across = if sector.axisymmetric { 2 } else { 1 };
+        let grid = Grid {
+            cells: [sector.cells[0], sector.cells[across], sector.cells[2]],
+            bend: &bend,
+            straight: sector.straight,
+            closed: sector.share == 1.0 && !sector.axisymmetric,
+        };
+        Self {
+            axisymmetric: sector.axisymmetric,
+            share: sector.share,
+            length: sector.length,
+            ..Self::gridded(sector.shape, &grid)
+        }
+    }
+
+    /// Cells of the unit cube, or of the unit square, bent.
+    pub fn bent(shape: Shape, cells: [usize; 3], bend: Bend) -> Self {
+        let grid = Grid {
+            cells,
+            bend,
+            straight: false,
+            closed: false,
+        };
+        Self::gridded(shape, &grid)
+    }
+
+    fn gridded(shape: Shape, grid: &Grid) -> Self {
         let mut mesh = Self {
-            sector,
+            shape,
+            axisymmetric: false,
+            share: 1.0,
+            length: 1.0,
             nodes: Vec::new(),
             elements: Vec::new(),
         };
         let mut known = BTreeMap::new();
-        let flat = sector.shape.dimension() == 2;
         // the second direction of a flat mesh is the angle, or the length of an axisymmetric one
-        let layers = if flat { 1 } else { sector.cells[2] };
-        let across = sector.cells[if sector.axisymmetric { 2 } else { 1 }];
+        let layers = if shape.dimension() == 2 {
+            1
+        } else {
+            grid.cells[2]
+        };
         for k in 0..layers {
-            for j in 0..across {
-                for i in 0..sector.cells[0] {
-                    for part in parts(sector.shape) {
+            for j in 0..grid.cells[1] {
+                for i in 0..grid.cells[0] {
+                    for part in parts(shape) {
                         let corners: Vec<Place> = part
                             .iter()
                             .map(|&c| {
@@ -105,7 +164,7 @@ impl Mesh {
                                 [2 * (i + a), 2 * (j + b), 2 * (k + c)]
                             })
                             .collect();
-                        mesh.add(&corners, &mut known);
+                        mesh.add(&corners, grid, &mut known);
                     }
                 }
             }
@@ -113,10 +172,15 @@ impl Mesh {
         mesh
     }
 
-    fn add(&mut self, corners: &[Place], known: &mut BTreeMap<Place, usize>) {
+    fn add(&mut self, corners: &[Place], grid: &Grid, known: &mut BTreeMap<Place, usize>) {
+        let position = |place: Place| {
+            (grid.bend)(std::array::from_fn(|axis| {
+                place[axis] as f64 / (2 * grid.cells[axis]) as f64
+            }))
+        };
         let mut places = corners.to_vec();
-        let mut positions: Vec<[f64; 3]> = corners.iter().map(|p| self.position(*p)).collect();
-        for (_, of) in self.sector.shape.mid_nodes() {
+        let mut positions: Vec<[f64; 3]> = corners.iter().map(|p| position(*p)).collect();
+        for (_, of) in self.shape.mid_nodes() {
             let place: Place = std::array::from_fn(|axis| {
                 of.iter().map(|&c| places[c][axis]).sum::<usize>() / of.len()
             });
@@ -124,19 +188,18 @@ impl Mesh {
                 of.iter().map(|&c| positions[c][axis]).sum::<f64>() / of.len() as f64
             });
             places.push(place);
-            positions.push(if self.sector.straight {
+            positions.push(if grid.straight {
                 chord
             } else {
-                self.position(place)
+                position(place)
             });
         }
-        let turn = 2 * self.sector.cells[1];
         let element = places
             .into_iter()
             .zip(positions)
             .map(|(mut place, position)| {
-                if self.sector.share == 1.0 && !self.sector.axisymmetric {
-                    place[1] %= turn;
+                if grid.closed {
+                    place[1] %= 2 * grid.cells[1];
                 }
                 *known.entry(place).or_insert_with(|| {
                     self.nodes.push(position);
@@ -147,19 +210,86 @@ impl Mesh {
         self.elements.push(element);
     }
 
-    fn position(&self, [i, j, k]: Place) -> [f64; 3] {
-        let s = &self.sector;
-        let part = |steps: usize, cells: usize| steps as f64 / (2 * cells) as f64;
-        let radius = s.inner + (s.outer - s.inner) * part(i, s.cells[0]);
-        if s.axisymmetric {
-            return [radius, 0.0, s.length * part(j, s.cells[2])];
-        }
-        let angle = 2.0 * PI * s.share * part(j, s.cells[1]);
-        let z = if s.shape.dimension() == 2 {
-            0.0
-        } else {
-            s.length * part(k, s.cells[2])
+    /// Several meshes as one: nodes at the same place are the same node.
+    pub fn joined(meshes: &[Mesh]) -> Self {
+        let mut joined = Self {
+            nodes: Vec::new(),
+            elements: Vec::new(),
+            ..meshes[0].clone()
         };
-        [radius * angle.cos(), radius * angle.sin(), z]
+        let mut known: BTreeMap<[i64; 3], usize> = BTreeMap::new();
+        for mesh in meshes {
+            let places: Vec<usize> = mesh
+                .nodes
+                .iter()
+                .map(|at| {
+                    let key = at.map(|x| (x * 1e8).round() as i64);
+                    *known.entry(key).or_insert_with(|| {
+                        joined.nodes.push(*at);
+                        joined.nodes.len() - 1
+                    })
+                })
+                .collect();
+            let elements = mesh.elements.iter();
+            joined
+                .elements
+                .extend(elements.map(|nodes| nodes.iter().map(|&n| places[n]).collect::<Vec<_>>()));
+        }
+        joined
+    }
+
+    /// Several meshes in one file, each with nodes of its own.
+    pub fn apart(meshes: &[Mesh]) -> Self {
+        let mut whole = Self {
+            nodes: Vec::new(),
+            elements: Vec::new(),
+            ..meshes[0].clone()
+        };
+        for mesh in meshes {
+            let before = whole.nodes.len();
+            let elements = mesh.elements.iter();
+            whole
+                .elements
+                .extend(elements.map(|nodes| nodes.iter().map(|n| n + before).collect::<Vec<_>>()));
+            whole.nodes.extend(&mesh.nodes);
+        }
+        whole
+    }
+
+    /// Without the elements whose mean place is refused, and without nodes that belong to none.
+    pub fn keep(&self, wanted: impl Fn([f64; 3]) -> bool) -> Self {
+        let mean = |nodes: &Vec<usize>| {
+            let sum = |axis: usize| nodes.iter().map(|&n| self.nodes[n][axis]).sum::<f64>();
+            std::array::from_fn(|axis| sum(axis) / nodes.len() as f64)
+        };
+        let kept: Vec<_> = self.elements.iter().filter(|e| wanted(mean(e))).collect();
+        let mut place = BTreeMap::new();
+        let mut nodes = Vec::new();
+        let elements = kept.into_iter().map(|element| {
+            let renumbered = element.iter().map(|&n| {
+                *place.entry(n).or_insert_with(|| {
+                    nodes.push(self.nodes[n]);
+                    nodes.len() - 1
+                })
+            });
+            renumbered.collect()
+        });
+        Self {
+            elements: elements.collect(),
+            nodes,
+            ..self.clone()
+        }
+    }
+
+    /// Every node moved.
+    pub fn moved(mut self, to: impl Fn([f64; 3]) -> [f64; 3]) -> Self {
+        self.nodes.iter_mut().for_each(|at| *at = to(*at));
+        self
+    }
+
+    /// Declared as this share of the whole, and this long.
+    pub fn with(mut self, share: f64, length: f64) -> Self {
+        (self.share, self.length) = (share, length);
+        self
     }
 }

@@ -232,7 +232,10 @@ impl ExactSolution for BentBlock {
                 "block, {} {length} thick (0 <= X), {} {length} long (along Y, centred)",
                 self.thickness, self.length
             ),
-            load: format!("bent to a sector of {} rad by moments at the ends; curved faces free of traction", self.angle),
+            load: format!(
+                "bent to a sector of {} rad by moments at the ends; curved faces free of traction",
+                demands::rounded(self.angle, 12)
+            ),
             ends: Some("plane strain: no displacement along Z".to_string()),
             modelling: vec![
                 "the end faces Y = constant become radial planes: every point there turns with them and keeps to its exact radius; half of the \
@@ -240,7 +243,7 @@ impl ExactSolution for BentBlock {
                     .to_string(),
                 "the bent block lies with its axis at the origin: X = 0 moves out to the inner radius".to_string(),
             ],
-            totals: vec!["strain_energy", "load_factor"],
+            totals: vec!["strain_energy", "bending_moment", "load_factor"],
             sketch: None,
         }
     }

@@ -225,7 +225,7 @@ impl ExactSolution for StraightenedSector {
         Description {
             body: format!(
                 "sector of a tube, inner radius {} {length}, outer radius {} {length}, {} rad about the X axis",
-                self.inner, self.outer, self.angle
+                self.inner, self.outer, demands::rounded(self.angle, 12)
             ),
             load: "straightened to a block by moments at the ends; curved faces free of traction".to_string(),
             ends: Some("plane strain: no displacement along Z".to_string()),
@@ -235,7 +235,7 @@ impl ExactSolution for StraightenedSector {
                     .to_string(),
                 "the bore's image lies in the plane x = 0".to_string(),
             ],
-            totals: vec!["strain_energy", "load_factor"],
+            totals: vec!["strain_energy", "bending_moment", "load_factor"],
             sketch: None,
         }
     }

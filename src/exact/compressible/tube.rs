@@ -216,6 +216,11 @@ impl ExactSolution for CompressibleTube {
         self.state(point, None)
     }
 
+    fn interfaces(&self) -> Vec<f64> {
+        let between = self.layers.split_last();
+        between.map_or_else(Vec::new, |(_, between)| between.to_vec())
+    }
+
     fn totals(&self) -> &[Total] {
         &self.totals
     }

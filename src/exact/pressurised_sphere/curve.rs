@@ -31,7 +31,7 @@ const LARGEST: f64 = 1e200;
 const NOISE: f64 = 64.0 * f64::EPSILON;
 
 /// Slopes looked at on a panel that 16 points resolve.
-const SAMPLES: u32 = 40;
+const SAMPLES: u32 = 20;
 
 /// The wall with its law.
 #[derive(Debug, Clone)]
@@ -162,13 +162,14 @@ impl Curve {
         }
     }
 
-    /// d(Pi - Po)/dd, with the size of its terms.
+    /// d(Pi - Po)/dd, with the size of its terms times the digits they lose.
     pub fn slope(&self, d: f64) -> Sized {
         let inner = self.density(d);
         let outer = self.density(self.outer_difference(d)) * (self.span(d).exp() * self.ratio);
+        let lost = 1.0 + self.law.hardening(d, d / 3.0).loss;
         Sized {
             value: inner - outer,
-            size: inner.abs() + outer.abs(),
+            size: (inner.abs() + outer.abs()) * lost,
         }
     }
 

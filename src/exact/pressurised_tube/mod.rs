@@ -153,6 +153,11 @@ impl ExactSolution for PressurisedTube {
         self.fields.at(point)
     }
 
+    fn interfaces(&self) -> Vec<f64> {
+        let between = self.layers.split_last();
+        between.map_or_else(Vec::new, |(_, between)| between.to_vec())
+    }
+
     fn totals(&self) -> &[Total] {
         &self.totals
     }

@@ -6,7 +6,8 @@
 //! plastic, R <= c:  srr = -P + Y ln(R/A)      stt = srr + Y      szz = nu (srr + stt): no plastic strain along the axis
 //! elastic, R >= c:  srr = -K (B-R)(B+R)/(B^2 R^2)   stt = K (1/R^2 + 1/B^2)   K = Y c^2/2, or P A^2 B^2/((B-A)(B+A)) before yield
 //! both:  u/R = (1+nu)(1-2nu)/E srr + 2 (1-nu^2) K/(E R^2)
-//! unloaded: the Lame tube of the pressure P is taken away
+//! unloaded: the Lame tube of the pressure P is taken away; with w = (c^2-A^2)/A^2, x = (c^2-R^2)/R^2, f(x) = x - ln(1+x):
+//!   K = Y A^2 B^2/(2 (B-A)(B+A)) f(w) in the elastic formulas; plastic: srr + Y f(x)/2, stt + Y f(x)/2 - Y x. Nothing cancels
 //! ```
 //! Holds while srr <= szz <= stt where plastic: `P <= Y (1-nu)/(1-2nu)` at the bore, and `nu >= 0`; unloading stays elastic
 //! while P is at most twice the yield pressure. Hill, The Mathematical Theory of Plasticity (1950), chapter V (from memory).
@@ -67,17 +68,17 @@ struct PlasticTube {
     law: ElasticPlastic,
     pressure: f64,
     unloaded: bool,
-    /// c^2, or A^2 before yield.
+    /// w of the header, 0 before yield, and (B^2-A^2)/A^2.
     front: f64,
-    /// K of the header, and that of the elastic tube under the whole pressure.
+    outer_place: f64,
+    /// K of the header.
     decaying: f64,
-    elastic: f64,
     totals: Vec<Total>,
 }
 
-/// `-ln(1-z) - z`, through an integral of a positive integrand where the closed form cancels.
+/// `-ln(1-z) - z`, f(-z) of the header, through an integral of a positive integrand where the closed form cancels.
 fn log_excess(z: f64) -> f64 {
-    if z < 0.3 {
+    if z.abs() < 0.3 {
         let rule = GaussRule::of(20);
         return z * z * rule.integrate(0.0, 1.0, |t| t / (1.0 - z * t));
     }
@@ -106,18 +107,25 @@ impl PlasticTube {
             law: *law,
             pressure: given.finite("inner-pressure")?,
             unloaded,
-            front: a * a,
+            front: 0.0,
+            outer_place: squares / (a * a),
             decaying: 0.0,
-            elastic: 0.0,
             totals: Vec::new(),
         };
-        tube.elastic = tube.pressure * a * a * (b * b / squares);
-        tube.decaying = tube.elastic;
         tube.check_range()?;
-        if tube.is_plastic() {
-            tube.front = b * b * (1.0 - tube.elastic_share()?);
-            tube.decaying = 0.5 * law.yield_stress * tube.front;
-        }
+        let whole = a * a * (b * b / squares);
+        tube.decaying = match (tube.is_plastic(), unloaded) {
+            (false, false) => tube.pressure * whole,
+            (false, true) => 0.0,
+            (true, _) => {
+                tube.front = tube.find_front()?;
+                if unloaded {
+                    0.5 * law.yield_stress * whole * log_excess(-tube.front)
+                } else {
+                    0.5 * law.yield_stress * tube.front_square()
+                }
+            }
+        };
         tube.totals = finite(tube.all_totals())?;
         Ok(tube)
     }
@@ -183,16 +191,25 @@ impl PlasticTube {
         Ok(())
     }
 
-    /// z of the header.
-    fn elastic_share(&self) -> Result<f64, Refusal> {
-        let yields = 2.0 * self.yield_pressure() / self.law.yield_stress;
-        let left = 2.0 * (self.collapse_pressure() - self.pressure) / self.law.yield_stress;
-        // the plastic zone may be thinner than a double can tell
-        if log_excess(yields) <= left {
-            return Ok(yields);
-        }
-        find_root(0.0, yields, |z| log_excess(z) - left)
-            .map_err(|e| refuse("inner-pressure", format!("no plastic radius: {e}"), ""))
+    /// w of the header: a root in w near first yield, in z near collapse, each where it does not cancel.
+    fn find_front(&self) -> Result<f64, Refusal> {
+        let place = self.outer_place;
+        let stress = 0.5 * self.law.yield_stress;
+        let over = (self.pressure - self.yield_pressure()) / stress;
+        let left = (self.collapse_pressure() - self.pressure) / stress;
+        let root = if over < left {
+            let rise = |w: f64| w * place / (1.0 + place) - log_excess(-w) - over;
+            find_root(0.0, place, rise)
+        } else {
+            let most = place / (1.0 + place);
+            find_root(0.0, most, |z| log_excess(z) - left).map(|z| place - z * (1.0 + place))
+        };
+        root.map_err(|e| refuse("inner-pressure", format!("no plastic radius: {e}"), ""))
+    }
+
+    /// c^2.
+    fn front_square(&self) -> f64 {
+        self.inner * self.inner * (1.0 + self.front)
     }
 
     /// The state where R^2 is `square`, `inside` = R^2 - A^2 and `outside` = B^2 - R^2.
@@ -203,17 +220,19 @@ impl PlasticTube {
             let falling = decaying * (outside / square) / bb;
             (-falling, 2.0 * decaying / bb + falling)
         };
-        let gone = if self.unloaded { self.elastic } else { 0.0 };
-        let decaying = self.decaying - gone;
-        let (mut srr, mut stt) = lame(decaying);
-        if self.is_plastic() && square < self.front {
-            let rise = 0.5 * (inside / (self.inner * self.inner)).ln_1p();
-            let (radial, hoop) = lame(gone);
-            let loaded = -self.pressure + self.law.yield_stress * rise;
-            (srr, stt) = (loaded - radial, loaded + self.law.yield_stress - hoop);
+        let (mut srr, mut stt) = lame(self.decaying);
+        let (aa, strength) = (self.inner * self.inner, self.law.yield_stress);
+        // (c^2 - R^2)/R^2
+        let within = (aa * self.front - inside) / square;
+        if within > 0.0 && self.unloaded {
+            let push = 0.5 * strength * log_excess(-within);
+            (srr, stt) = (srr + push, stt + push - strength * within);
+        } else if within > 0.0 && self.is_plastic() {
+            srr = -self.pressure + 0.5 * strength * (inside / aa).ln_1p();
+            stt = srr + strength;
         }
         let volume = (1.0 + nu) * self.law.elastic.compressibility() / e;
-        let hoop = volume * srr + 2.0 * (1.0 - nu) * (1.0 + nu) * decaying / (e * square);
+        let hoop = volume * srr + 2.0 * (1.0 - nu) * (1.0 + nu) * self.decaying / (e * square);
         Radial {
             strains: [volume * (srr + stt) - hoop, hoop, 0.0],
             stress: [srr, stt, nu * (srr + stt)],
@@ -221,17 +240,12 @@ impl PlasticTube {
         }
     }
 
-    fn at_square(&self, square: f64) -> Radial {
-        let (aa, bb) = (self.inner.powi(2), self.outer.powi(2));
-        self.at_place(square, square - aa, bb - square)
-    }
-
     fn all_totals(&self) -> Vec<Total> {
         let (a, b) = (self.inner, self.outer);
         let (aa, bb, squares) = (a * a, b * b, (b - a) * (b + a));
         let held = if self.unloaded { 0.0 } else { self.pressure };
         let radius = if self.is_plastic() {
-            Ok(self.front.sqrt())
+            Ok(self.front_square().sqrt())
         } else {
             let first = self.yield_pressure();
             Err(format!(
@@ -256,31 +270,27 @@ impl PlasticTube {
         list
     }
 
-    /// Recoverable energy per unit length: W over the plastic and the elastic zone, by panels in ln R^2.
+    /// Recoverable energy per unit length: W over the plastic and the elastic zone, by panels in ln(R^2/A^2).
     fn energy(&self) -> f64 {
-        let (aa, bb) = (self.inner.powi(2), self.outer.powi(2));
+        let aa = self.inner * self.inner;
+        let density = |x: f64| {
+            let place = x.exp_m1();
+            let square = aa * (1.0 + place);
+            let state = self.at_place(square, aa * place, aa * (self.outer_place - place));
+            let [srr, stt, szz] = state.stress;
+            energy_density(&self.law.elastic, &SymTensor::diagonal(srr, stt, szz)) * square
+        };
         let zone = |from: f64, to: f64| {
-            let width = (to / from).ln();
-            let panels = width.ceil().max(1.0);
-            let each = width / panels;
-            let density = |x: f64| {
-                // kept inside the zone by force: its law must not change at the last bit
-                let square = (from * x.exp()).clamp(from, to);
-                let [srr, stt, szz] = self.at_square(square).stress;
-                energy_density(&self.law.elastic, &SymTensor::diagonal(srr, stt, szz)) * square
-            };
+            let panels = (to - from).ceil().max(1.0);
+            let each = (to - from) / panels;
             let sum: f64 = (0..panels as usize)
-                .map(|i| {
-                    GaussRule::of(16).integrate(i as f64 * each, (i + 1) as f64 * each, density)
-                })
+                .map(|i| from + i as f64 * each)
+                .map(|start| GaussRule::of(16).integrate(start, start + each, density))
                 .sum();
             PI * sum
         };
-        if self.front > aa {
-            zone(aa, self.front) + zone(self.front, bb)
-        } else {
-            zone(aa, bb)
-        }
+        let front = self.front.ln_1p();
+        zone(0.0, front) + zone(front, self.outer_place.ln_1p())
     }
 }
 
@@ -309,9 +319,18 @@ impl ExactSolution for PlasticTube {
     }
 
     fn bound(&self) -> ErrorBound {
-        // a load within a share g of collapse leaves the plastic radius eps/sqrt(g) and the strains as much
-        let gap = (self.collapse_pressure() - self.pressure) / self.collapse_pressure();
+        // a load within a share g of collapse leaves the plastic radius eps/sqrt(g), and the strains as much
+        let collapse = self.collapse_pressure();
+        let gap = (collapse - self.pressure) / collapse;
         let loose = 1e-15 / gap.max(f64::EPSILON).sqrt();
+        // what is left after unloading is a difference: of the size of the pressure beyond yield
+        let beyond = self.pressure - self.yield_pressure();
+        let left = if self.unloaded && self.is_plastic() {
+            5e-15 * self.pressure / beyond
+        } else {
+            0.0
+        };
+        let loose = (loose + left).min(1.0);
         ErrorBound {
             displacement: 5e-15 + loose,
             stress: 5e-15 + loose,

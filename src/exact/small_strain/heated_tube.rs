@@ -298,6 +298,7 @@ impl ExactSolution for HeatedTube {
         if self.plane_stress() {
             let note = super::Plane::Stress.modelling();
             description.modelling.push(note.to_string());
+            description.totals.retain(|name| *name != "axial_stretch");
         }
         description.sketch = None;
         description

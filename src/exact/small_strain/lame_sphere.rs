@@ -208,7 +208,12 @@ impl ExactSolution for LameSphere {
             ),
             load,
             ends: None,
-            modelling: vec!["small-strain kinematics".to_string()],
+            modelling: vec![
+                "small-strain kinematics".to_string(),
+                "any part cut by planes through the centre: no displacement normal to a cut"
+                    .to_string(),
+                "axisymmetric: the section of the sphere in a plane through the axis".to_string(),
+            ],
             totals: vec!["strain_energy", "load_factor"],
             sketch: None,
         }

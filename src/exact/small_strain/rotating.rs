@@ -304,6 +304,7 @@ impl ExactSolution for Rotating {
         if self.is_disk() {
             let note = Plane::Stress.modelling();
             description.modelling.push(note.to_string());
+            description.totals.retain(|name| *name != "axial_stretch");
         }
         description.sketch = None;
         description

@@ -258,6 +258,10 @@ impl ExactSolution for ShrinkFit {
         ring.at(point).state(point, &ring.law)
     }
 
+    fn interfaces(&self) -> Vec<f64> {
+        vec![self.rings[1].inner]
+    }
+
     fn totals(&self) -> &[Total] {
         &self.totals
     }
@@ -302,6 +306,9 @@ impl ExactSolution for ShrinkFit {
              inner ring's there by the interference; no friction"
                 .to_string(),
         );
+        if self.words.ends == Ends::PlaneStress {
+            description.totals.retain(|name| *name != "axial_stretch");
+        }
         description.sketch = None;
         description
     }

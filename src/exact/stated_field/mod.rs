@@ -92,6 +92,7 @@ enum Law {
 #[derive(Debug, Clone)]
 pub struct StatedField {
     displacement: [Expression; 3],
+    constants: Vec<(String, f64)>,
     law: Law,
 }
 
@@ -157,6 +158,7 @@ impl StatedField {
         };
         Ok(Self {
             displacement: [component("x")?, component("y")?, component("z")?],
+            constants,
             law: law(given.material()?, pressure)?,
         })
     }
@@ -330,6 +332,10 @@ impl ExactSolution for StatedField {
         let mut load = format!("displacement ux = {x}, uy = {y}, uz = {z}");
         if let Law::Preserving(_, pressure) | Law::HookePreserving(_, pressure) = &self.law {
             load += &format!("; pressure p = {}", pressure.text());
+        }
+        for (i, (name, value)) in self.constants.iter().enumerate() {
+            let before = if i == 0 { "; with" } else { "," };
+            load += &format!("{before} {name} = {value}");
         }
         Description {
             body: "what the mesh covers".to_string(),

@@ -1,3 +1,5 @@
+//! Stated fields against differences of their own stress, closed forms typed as fields, and what is refused.
+
 use super::*;
 use crate::exact::build;
 use crate::materials;

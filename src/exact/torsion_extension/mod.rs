@@ -332,8 +332,8 @@ impl ExactSolution for TorsionExtension {
             load: format!("{turn}; {walls}"),
             ends: Some(axial),
             modelling: vec![
-                "solid model of any length: at Z = 0 no displacement in the plane and none axially; at the other end every point turns about \
-                 the axis by twist times length, moves axially by (stretch - 1) times length, and moves radially as the solution says"
+                "solid model of any length: at Z = 0 no turn about the axis and no axial displacement; at the other end every point turns about \
+                 the axis by twist times length and moves axially by (stretch - 1) times length; at both ends it moves radially as the solution says"
                     .to_string(),
                 "the end faces carry stresses that vary with the radius: prescribe displacements there, not a mean traction".to_string(),
                 "a slice cannot be twisted: use a solid, or an axisymmetric element with torsion".to_string(),

@@ -222,7 +222,7 @@ impl ExactSolution for TubeShear {
             Way::Azimuthal => (
                 format!(
                     "outer wall turned about the axis by {} rad, inner wall held",
-                    self.motion
+                    demands::rounded(self.motion, 12)
                 ),
                 "outer wall: every point turned about the axis by the angle, at its radius; no axial displacement at the end faces",
                 "torque",
