@@ -127,10 +127,13 @@ fn thin_linear_shells_are_membranes() {
     }
 }
 
+/// One number of a solution.
+type Measure = fn(&Arc<dyn ExactSolution>) -> f64;
+
 const BULKS: [f64; 5] = [1e2, 1e3, 1e4, 1e5, 1e6];
 
 /// Errors of a penalised law over mu/K against the same problem with none.
-fn penalised(problem: &str, volumetric: &str, of: fn(&Arc<dyn ExactSolution>) -> f64) -> Vec<f64> {
+fn penalised(problem: &str, volumetric: &str, of: Measure) -> Vec<f64> {
     let plain = of(&solved(
         "m: { Mooney-Rivlin: { c10: 0.4, c01: 0.1 } }",
         problem,
@@ -150,7 +153,7 @@ fn penalised(problem: &str, volumetric: &str, of: fn(&Arc<dyn ExactSolution>) ->
 #[test]
 fn stiff_compressible_walls_tend_to_the_incompressible_ones() {
     let sizes = BULKS.map(|bulk| 1.0 / bulk);
-    let measures: [(&str, fn(&Arc<dyn ExactSolution>) -> f64); 3] = [
+    let measures: [(&str, Measure); 3] = [
         ("u", |e| u(e, 1.0)),
         ("stt", |e| at(e, 1.2).local_stress.yy),
         ("energy", |e| total(e, "strain_energy")),
