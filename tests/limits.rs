@@ -6,6 +6,7 @@ mod solved;
 use nalgebra::{Matrix3, Vector3};
 use proptest::prelude::*;
 use solved::{at, solved, total, u};
+use std::f64::consts::PI;
 use std::sync::Arc;
 use truebore::exact::{ExactSolution, Frame, State};
 use truebore::mechanics::Point;
@@ -66,6 +67,28 @@ fn thin_tubes_are_membranes() {
     }
 }
 
+// p = 4 (h0/r0) (1/L - 1/L^7) (c1 + c2 L^2): the stretch that the pressure of stretch L reaches is L, on the first branch and on the
+// one after the maximum.
+#[test]
+fn thin_spheres_are_membranes() {
+    for (stretch, branch) in [(1.1_f64, 1), (1.3, 1), (2.0, 2)] {
+        let errors = WALLS.map(|wall| {
+            let outer = 1.0 + wall;
+            let wall = outer - 1.0;
+            let pressure = 4.0
+                * wall
+                * (1.0 / stretch - stretch.powi(-7))
+                * (0.45 + 0.01 * stretch * stretch);
+            let exact = solved(
+                "m: { Mooney-Rivlin: { c10: 0.45, c01: 0.01 } }",
+                &format!("pressurised-sphere: {{ inner-radius: 1, outer-radius: {outer}, material: m, inner-pressure: {pressure}, branch: {branch} }}"),
+            );
+            (total(&exact, "inner_radius") / stretch - 1.0).abs()
+        });
+        first_order(&format!("sphere {stretch}"), &WALLS, &errors);
+    }
+}
+
 // sigma_tt = P r/h, sigma_zz half of it with caps, of any tube: the wall's mean stresses.
 #[test]
 fn closed_thin_tubes_carry_half_the_stress_along_the_axis() {
@@ -104,10 +127,13 @@ fn thin_linear_shells_are_membranes() {
     }
 }
 
+/// One number of a solution.
+type Measure = fn(&Arc<dyn ExactSolution>) -> f64;
+
 const BULKS: [f64; 5] = [1e2, 1e3, 1e4, 1e5, 1e6];
 
 /// Errors of a penalised law over mu/K against the same problem with none.
-fn penalised(problem: &str, volumetric: &str, of: fn(&Arc<dyn ExactSolution>) -> f64) -> Vec<f64> {
+fn penalised(problem: &str, volumetric: &str, of: Measure) -> Vec<f64> {
     let plain = of(&solved(
         "m: { Mooney-Rivlin: { c10: 0.4, c01: 0.1 } }",
         problem,
@@ -127,7 +153,7 @@ fn penalised(problem: &str, volumetric: &str, of: fn(&Arc<dyn ExactSolution>) ->
 #[test]
 fn stiff_compressible_walls_tend_to_the_incompressible_ones() {
     let sizes = BULKS.map(|bulk| 1.0 / bulk);
-    let measures: [(&str, fn(&Arc<dyn ExactSolution>) -> f64); 3] = [
+    let measures: [(&str, Measure); 3] = [
         ("u", |e| u(e, 1.0)),
         ("stt", |e| at(e, 1.2).local_stress.yy),
         ("energy", |e| total(e, "strain_energy")),
@@ -407,5 +433,55 @@ fn homogeneous_states_typed_as_fields_are_themselves() {
         .unwrap();
         let field = typed(rubber, &closed.displacement_gradient, Some(closed.pressure));
         same_state(&closed, &field.at(point).unwrap(), 1e-13);
+    }
+}
+
+// What an unloaded tube gives back is the work of its pressure on the way: E_loaded - E_unloaded = P pi A (u_loaded - u_unloaded).
+// Red when the residual state is that of another unloading, or its energy counts the plastic work.
+#[test]
+fn an_elastic_plastic_tube_gives_back_its_elastic_work() {
+    for (outer, pressure) in [(12.0, 0.08), (16.0, 0.12), (24.0, 0.2)] {
+        let tube = |stage: &str| {
+            let problem = format!(
+                "elastic-plastic-tube: {{ inner-radius: 8, outer-radius: {outer}, material: plastic, inner-pressure: {pressure}, stage: {stage} }}"
+            );
+            solved(ROUND, &problem)
+        };
+        let (loaded, unloaded) = (tube("loaded"), tube("unloaded"));
+        let given = total(&loaded, "strain_energy") - total(&unloaded, "strain_energy");
+        let work = pressure * PI * 8.0 * (u(&loaded, 8.0) - u(&unloaded, 8.0));
+        println!("B {outer}: {given:e} {work:e}");
+        assert!((given / work - 1.0).abs() < 1e-12, "{given:e} {work:e}");
+        // it was plastic
+        assert!(u(&unloaded, 8.0) > 1e-7);
+    }
+}
+
+// No load does work in a heated tube, whatever holds its ends: twice the energy is -alpha times the integral of T tr(sigma).
+#[test]
+fn heat_does_the_work_of_a_heated_tube() {
+    let rule = truebore::numerics::GaussRule::of(40);
+    for ends in [
+        "plane-strain",
+        "plane-stress",
+        "{ generalized-plane-strain: { axial-force: 0 } }",
+    ] {
+        for (hot, cold) in [(80.0, 0.0), (-30.0, 45.0)] {
+            let exact = solved(
+                ROUND,
+                &format!(
+                    "heated-tube: {{ inner-radius: 8, outer-radius: 12, material: steel, expansion: 1e-5, inner-temperature: {hot}, outer-temperature: {cold}, ends: {ends} }}"
+                ),
+            );
+            let heat = |r: f64| hot + (cold - hot) * (r / 8.0).ln() / 1.5_f64.ln();
+            let given = rule.integrate(8.0, 12.0, |r| {
+                -1e-5 * heat(r) * -3.0 * at(&exact, r).pressure * 2.0 * PI * r
+            });
+            let energy = total(&exact, "strain_energy");
+            assert!(
+                (given / (2.0 * energy) - 1.0).abs() < 1e-12,
+                "{ends}: {given:e} {energy:e}"
+            );
+        }
     }
 }

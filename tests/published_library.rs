@@ -10,6 +10,8 @@ mod solved;
 
 use solved::{at, cases, prints, solved, total, u};
 use std::f64::consts::PI;
+use std::sync::Arc;
+use truebore::exact::ExactSolution;
 
 #[track_caller]
 fn near(got: f64, expected: f64, relative: f64) {
@@ -226,6 +228,12 @@ fn pressures_of_spheres() {
     near(0.5 * (bores[0] + bores[1]), 1.82814730478, 1e-8);
 }
 
+/// The first maximum of the pressure, or why there is none.
+fn limit_of(exact: &Arc<dyn ExactSolution>) -> Result<f64, String> {
+    let found = exact.totals().iter().find(|t| t.name == "limit_pressure");
+    found.unwrap().value.clone()
+}
+
 /// p R/(2 H) of the first maximum as the wall goes to nothing: the two walls' values extrapolated.
 fn thin_limit(law: &str) -> f64 {
     let of = |wall: f64| {
@@ -257,20 +265,10 @@ fn thin_spheres_have_their_published_extrema() {
         let reached = total(&above.exact, "inner_radius");
         assert!(reached > bore && reached < 1.05 * bore, "{reached} {bore}");
     }
-    // the Gent sphere has a maximum above Jm = 17.6378 only
+    // the Gent sphere has a maximum above Jm = 17.63808 only
     let limit = |jm: f64| {
-        let exact = solved(
-            &format!("m: {{ Gent: {{ mu: 1, Jm: {jm} }} }}"),
-            &sphere(1.0 + wall, 0.1 * wall, 1),
-        );
-        let found = exact
-            .totals()
-            .iter()
-            .find(|t| t.name == "limit_pressure")
-            .unwrap()
-            .value
-            .clone();
-        found
+        let law = format!("m: {{ Gent: {{ mu: 1, Jm: {jm} }} }}");
+        limit_of(&solved(&law, &sphere(1.0 + wall, 0.1 * wall, 1)))
     };
     assert!(limit(17.639).is_ok(), "{:?}", limit(17.639));
     assert!(limit(17.637).is_err(), "{:?}", limit(17.637));
@@ -292,13 +290,7 @@ fn one_ogden_term_has_its_extrema() {
     ] {
         let law = format!("m: {{ Ogden: {{ mu: [{mu}], alpha: [{alpha}] }} }}");
         let exact = solved(&law, &sphere(1.0 + wall, 1e-3 * wall, 1));
-        let limit = exact
-            .totals()
-            .iter()
-            .find(|t| t.name == "limit_pressure")
-            .unwrap()
-            .value
-            .clone();
+        let limit = limit_of(&exact);
         println!("alpha {alpha}: {limit:?}");
         assert_eq!(limit.is_ok(), has_maximum, "alpha {alpha}: {limit:?}");
     }
