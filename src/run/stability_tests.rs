@@ -1,3 +1,5 @@
+//! Where a law loses the order of its stresses, and that sound laws never do.
+
 use super::*;
 use crate::exact::{Given, build};
 use crate::exact::{Value, ends::Ends};
