@@ -112,6 +112,10 @@ pub const BODY: &[(&str, &str)] = &[
         "declared-element",
         "the mesh is of the declared element, or no order could be expected",
     ),
+    (
+        "edge-of-body",
+        "the outer sides of the mesh lie on the walls of the body or on its cuts",
+    ),
     ("full-load", "the results are those of the case's load"),
     (
         "mixed-wall-sides",
