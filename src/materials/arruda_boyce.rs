@@ -176,7 +176,13 @@ impl Formula for ArrudaBoyce {
             let found = InverseLangevin::at(x.re(), 1.0 - x.re());
             let step = x - x.re();
             let b = (step * (0.5 * found.curvature) + found.slope) * step + found.value;
-            x * b + (b / b.sinh()).ln()
+            // ln(b/sinh b); sinh leaves the range of doubles at b = 710, close to the lock
+            let tail = if b.re() > 1.0 {
+                b.ln() - b + std::f64::consts::LN_2 - (-(b * -2.0).exp()).ln_1p()
+            } else {
+                (b / b.sinh()).ln()
+            };
+            x * b + tail
         };
         if x.re() >= 1.0 {
             return D::from(f64::NAN);

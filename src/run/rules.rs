@@ -133,6 +133,10 @@ pub const BODY: &[(&str, &str)] = &[
         "outside-the-body",
         "quadrature points outside the exact body are counted, and the formula continued there",
     ),
+    (
+        "reach-of-mesh",
+        "the mesh reaches as far as its declared share of the body does",
+    ),
     ("sector-angle", "a sector spans its share of the turn"),
     (
         "share-of-body",
