@@ -208,7 +208,7 @@ fn check_case(
             })
             .filter_map(|key| demanded.get(&key))
             .fold(DIGITS, |m, d| m.min(*d));
-        if !(error <= 10f64.powf(-digits)) {
+        if error.is_nan() || error > 10f64.powf(-digits) {
             tally.faults.push(format!(
                 "{what}: {value:e}, not {:e} (off by {error:.1e}, {digits} digits demanded)",
                 row.value

@@ -144,9 +144,9 @@ impl Look<'_> {
     fn bounds(&self) -> ([f64; 3], [f64; 3]) {
         let mut bounds = ([f64::INFINITY; 3], [f64::NEG_INFINITY; 3]);
         for position in &self.mesh.nodes.positions {
-            for axis in 0..3 {
-                bounds.0[axis] = bounds.0[axis].min(position[axis]);
-                bounds.1[axis] = bounds.1[axis].max(position[axis]);
+            for (axis, &at) in position.iter().enumerate() {
+                bounds.0[axis] = bounds.0[axis].min(at);
+                bounds.1[axis] = bounds.1[axis].max(at);
             }
         }
         bounds

@@ -36,7 +36,7 @@ struct Disorder {
 }
 
 /// The caution of a case, if its laws are not stable where its solution is. Where the mesh decides what the body is, the points
-/// are those of the solution's line only; see [`note_at_nodes`].
+/// are those of the solution's line only; see `note_at_nodes`.
 pub fn caution(case: &CasePlan) -> Option<Finding> {
     let exact = case.exact.as_ref();
     if !is_asked(case) {
