@@ -1,13 +1,15 @@
 //! The state at a point of the wall, from tables of Lam, m and srr.
 //!
 //! Each panel holds the three as Chebyshev series in X = ln(R/A); kinematics and stress differences follow from them by the
-//! law itself. Around the wall the same equations are continued over a short distance from each surface.
+//! law itself. What the law says of a solved wall is tabled again (`table`), so that a point does not ask it. Around the wall
+//! the same equations are continued over a short distance from each surface.
 
 use super::integrals::{BORE, OUTER, STRETCH};
 use super::mesh::{Mesh, Shape, Wall};
 use super::path::Station;
-use super::states::{Bore, Place};
+use super::states::{Bore, Place, loss};
 use super::system::states;
+use super::table::{LANES, Table};
 use crate::exact::parameters::refuse;
 use crate::exact::solution::Refusal;
 use crate::materials::Compressible;
@@ -34,6 +36,8 @@ struct Piece {
     layer: usize,
     /// The first halved, so that it is added like the others.
     coefficients: Vec<[f64; 3]>,
+    /// What a point needs, where it could be tabled.
+    table: Option<Table>,
 }
 
 impl Piece {
@@ -55,6 +59,7 @@ impl Piece {
             to,
             layer,
             coefficients,
+            table: None,
         }
     }
 
@@ -121,6 +126,33 @@ impl Fields {
         };
         fields.continue_around(mesh);
         Some(fields)
+    }
+
+    /// With tables of what the law says, for fast points.
+    pub fn tabled(mut self) -> Self {
+        let table = |piece: &Piece| {
+            let law = &self.wall.layers[piece.layer].law;
+            Table::new((piece.from, piece.to), |x| {
+                self.lanes(piece.at(x), self.wall.swell(x), law)
+            })
+        };
+        let tables: Vec<_> = self.pieces.iter().map(table).collect();
+        for (piece, table) in self.pieces.iter_mut().zip(tables) {
+            piece.table = table;
+        }
+        self
+    }
+
+    /// What is tabled, from Lam, m and srr by the law; and by how much the law magnifies round-off.
+    fn lanes(&self, piece: [f64; 3], swell: f64, law: &Compressible) -> ([f64; LANES], f64) {
+        let [lam, grown, radial] = piece;
+        let place = self.place(swell, lam, grown);
+        let motion = place.motion(self.wall.shape, law.volume_modulus());
+        let state = law.at(motion.d, motion.e, lam);
+        let change = motion.log_volume.exp_m1();
+        let loss = loss(law, motion.d, motion.e - motion.log_volume / 3.0);
+        let lanes = [grown, change, radial, state.hoop, state.axial, state.energy];
+        (lanes, loss)
     }
 
     /// Pieces on both sides of the wall, as wide as they can be made: near a closing bore that is not far.
@@ -241,6 +273,9 @@ impl Fields {
             Shape::Tube => u * (2.0 + u),
             Shape::Sphere => u * (3.0 + u * (3.0 + u)),
         };
+        if let Some(lanes) = piece.table.as_ref().and_then(|table| table.at(x)) {
+            return self.looked_up(swell, lanes).ok_or_else(no_value);
+        }
         let [lam, grown, radial] = piece.at(x);
         let place = self.place(swell, lam, grown);
         let found = self.evaluated(&place, radial, &self.wall.layers[piece.layer].law);
@@ -271,6 +306,39 @@ impl Fields {
                 .find(|p| x <= p.to && x >= p.from)
         };
         within.or_else(ends).or_else(around)
+    }
+
+    /// The state from the tables: q is (lt^2 lz), lt^3 in the sphere, and lr = J/(lt lz).
+    fn looked_up(&self, swell: f64, lanes: [f64; LANES]) -> Option<AtRadius> {
+        let [grown, change, srr, hoop_stress, axial_stress, energy] = lanes;
+        let (q, excess) = self.place(swell, 0.0, grown).excess();
+        let (stress, strains) = match self.wall.shape {
+            Shape::Tube => {
+                let axial = self.axial_strain;
+                let stretch = 1.0 + axial;
+                let lt = (q / stretch).sqrt();
+                let hoop = (excess - axial) / (stretch * (1.0 + lt));
+                let radial = (change - (hoop + axial + hoop * axial)) / (lt * stretch);
+                let third = srr + axial_stress;
+                let stress = SymTensor::diagonal(srr, srr + hoop_stress, third);
+                (stress, [radial, hoop, axial])
+            }
+            Shape::Sphere => {
+                let lt = q.cbrt();
+                let hoop = excess / (1.0 + lt + lt * lt);
+                let radial = (change - hoop * (2.0 + hoop)) / (lt * lt);
+                let stt = srr + hoop_stress;
+                (SymTensor::diagonal(srr, stt, stt), [radial, hoop, hoop])
+            }
+        };
+        let finite = stress.is_finite() && strains.iter().all(|s| s.is_finite());
+        finite.then_some(AtRadius {
+            strains,
+            stress,
+            pressure: -(srr + (hoop_stress + stress.zz - srr) / 3.0),
+            volume_ratio: 1.0 + change,
+            energy_density: energy,
+        })
     }
 
     fn evaluated(&self, place: &Place, srr: f64, law: &Compressible) -> Option<AtRadius> {

@@ -9,6 +9,7 @@
 
 mod fields;
 mod integrals;
+mod limit;
 mod mesh;
 mod numbers;
 mod path;
@@ -17,9 +18,11 @@ mod solve;
 mod sphere;
 mod states;
 mod system;
+mod table;
 mod tube;
 
-pub use solve::{Drive, Limit};
+pub use limit::Limit;
+pub use solve::Drive;
 pub use sphere::{CompressibleSphere, CompressibleSphereProblem};
 pub use tube::{CompressibleTube, CompressibleTubeProblem, Load};
 
@@ -114,13 +117,13 @@ fn method(bound: &ErrorBound, residual: f64, nodes: usize, limit: &Limit) -> Str
         Limit::Maximum { inner_pressure, .. } => {
             format!(
                 "maximum of the inner pressure {}",
-                solve::rounded(*inner_pressure, 10)
+                limit::rounded(*inner_pressure, 10)
             )
         }
         Limit::Asymptote { inner_pressure } => {
             format!(
                 "asymptote of the inner pressure {}",
-                solve::rounded(*inner_pressure, 10)
+                limit::rounded(*inner_pressure, 10)
             )
         }
         Limit::None { .. } | Limit::NotFound { .. } => limit.pressure().err().unwrap_or_default(),

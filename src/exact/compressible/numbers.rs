@@ -129,7 +129,7 @@ pub(super) struct Judged {
 /// Tables and bounds of a solved state; `None` when a number of it is not finite.
 pub(super) fn judge(path: &Path, solved: &Solved) -> Option<Judged> {
     let station = &solved.station;
-    let fields = Fields::new(station)?;
+    let fields = Fields::new(station)?.tabled();
     let numbers = Numbers::of(path, station)?;
     let check = checked(path, solved);
     let other = check
@@ -263,7 +263,7 @@ fn round_off(
     let (mesh, wall) = (&station.mesh, &station.mesh.wall);
     let n = mesh.len();
     let at = system(mesh, &path.conditions(solved.control), &station.y)?;
-    let inverse = at.jacobian.clone().try_inverse()?;
+    let inverse = at.jacobian.try_inverse()?;
     let left = &at.size * EACH;
     let error = inverse.abs() * &left;
     let (g, e) = (error[n + BORE], error[n + STRETCH]);

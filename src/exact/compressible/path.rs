@@ -21,7 +21,7 @@ const TAIL: f64 = 1e-4;
 const CLOSE: f64 = 1e-9;
 /// Largest parameter followed.
 const FARTHEST: f64 = 40.0;
-/// A load this many times the modulus where the path ends is that of a law that locks or grows exponentially: no limit.
+/// A load this many times the modulus is that of a law that locks or grows exponentially: no limit is looked for beyond.
 const STIFFENED: f64 = 1e3;
 /// Most stations of a march, so that it always ends.
 const MOST_STATIONS: usize = 400;
@@ -106,7 +106,7 @@ impl Path {
             Shape::Sphere => tangent[n + BORE],
         };
         let tangent = &tangent / rate;
-        let all = Integrals::new(mesh, &y, &found.system.states);
+        let all = Integrals::new(mesh, &y, &found.states);
         let load = all.load(self.dead);
         let g = y[n + BORE];
         let bore = match self.wall.shape {
@@ -195,10 +195,14 @@ impl Path {
         self.station(&mesh, found)
     }
 
+    /// Whether the load rose so far that the law must have stiffened without bound.
+    pub fn stiffened(&self, start: &Station, here: &Station) -> bool {
+        here.load - start.load > STIFFENED * self.wall.pressure_scale()
+    }
+
     /// The end at a station beyond which there is none.
     fn stuck(&self, start: &Station, here: Station) -> End {
-        let risen = (here.load - start.load) / self.wall.pressure_scale();
-        let end = if risen > STIFFENED {
+        let end = if self.stiffened(start, &here) {
             End::Open
         } else {
             End::Lost

@@ -1,13 +1,14 @@
 //! The state at the prescribed loads on a mesh that resolves it to round-off, and the limit of the inner load.
 
 use super::integrals::{BORE, Control};
+use super::limit::{Limit, limit_of, rounded};
 use super::mesh::{Mesh, Shape};
-use super::path::{End, MOST_PANELS, Path, Station};
+use super::path::{MOST_PANELS, Path, Station};
 use super::refine::{coarse_panels, cut_at, kinks, transfer};
 use super::system::newton;
 use crate::exact::parameters::refuse;
 use crate::exact::solution::Refusal;
-use crate::numerics::{Collocation, find_root};
+use crate::numerics::Collocation;
 use std::sync::Arc;
 
 /// Nodes a panel of the solution, and of the solution its error is estimated with.
@@ -29,84 +30,6 @@ pub enum Drive {
     EnclosedVolume(f64),
 }
 
-/// Where the inner pressure cannot go beyond, at the given outer pressure and axial condition.
-#[derive(Debug, Clone, Copy, PartialEq)]
-pub enum Limit {
-    /// A maximum of the inner pressure, at this deformed bore radius.
-    Maximum {
-        inner_pressure: f64,
-        inner_radius: f64,
-    },
-    /// The inner pressure tends to this value as the bore grows.
-    Asymptote { inner_pressure: f64 },
-    /// The inner pressure still rises where the search ended, at this deformed bore radius.
-    None { searched_to: f64 },
-    /// The path of states could not be followed beyond this inner pressure.
-    NotFound { followed_to: f64 },
-}
-
-impl Limit {
-    /// The limit pressure, or why there is none.
-    pub fn pressure(&self) -> Result<f64, String> {
-        match self {
-            Self::Maximum { inner_pressure, .. } | Self::Asymptote { inner_pressure } => {
-                Ok(*inner_pressure)
-            }
-            Self::None { searched_to } => Err(format!(
-                "no limit: the inner pressure still rises at a bore radius of {searched_to:.3e}"
-            )),
-            Self::NotFound { followed_to } => Err(format!(
-                "not found: the states could be followed up to an inner pressure of {} only",
-                rounded(*followed_to, 7)
-            )),
-        }
-    }
-
-    fn beyond(&self, given: f64) -> Refusal {
-        let (reason, hint) = match self {
-            Self::Maximum {
-                inner_pressure: top,
-                inner_radius,
-            } => (
-                format!(
-                    "the maximum {} that the wall can carry, reached at a deformed bore radius of {}",
-                    rounded(*top, 12),
-                    rounded(*inner_radius, 7)
-                ),
-                format!("stay below {}", rounded(*top, 9)),
-            ),
-            Self::Asymptote {
-                inner_pressure: top,
-            } => (
-                format!(
-                    "(or within round-off of) {}, which the pressure approaches as the bore grows",
-                    rounded(*top, 12)
-                ),
-                format!("stay below {}", rounded(*top, 9)),
-            ),
-            Self::None { .. } | Self::NotFound { .. } => (
-                format!(
-                    "what could be followed; {}",
-                    self.pressure().err().unwrap_or_default()
-                ),
-                "reduce the pressure".to_string(),
-            ),
-        };
-        refuse(
-            "inner-pressure",
-            format!("inner-pressure = {given} is beyond {reason}"),
-            hint,
-        )
-    }
-}
-
-/// `x` to a number of significant digits, for messages.
-pub(super) fn rounded(x: f64, digits: usize) -> f64 {
-    format!("{x:.*e}", digits.saturating_sub(1))
-        .parse()
-        .unwrap_or(x)
-}
-
 /// The solved state.
 pub(super) struct Solved {
     pub station: Station,
@@ -114,25 +37,44 @@ pub(super) struct Solved {
     pub limit: Limit,
 }
 
+/// A state at the prescribed drive.
+enum Near {
+    /// Near enough for Newton's method.
+    Close(Station),
+    /// Solved on a mesh that resolves it.
+    Settled(Station),
+}
+
 /// Follows the path and solves at the prescribed drive; refuses a load beyond the limit of the branch.
 pub(super) fn solve(path: &Path, drive: Drive) -> Result<Solved, Refusal> {
     let start = path.start()?;
-    let (mut outward, end) = path.march(&start, 1.0, true, |_| false);
-    let (limit, top) = limit_of(path, &start, end);
-    outward.extend(top);
     let control = control_of(path, drive);
+    // near a lock a station is as far from the next as from the lock: hundreds of them for nothing
+    let enough = |s: &Station| {
+        let wanted = match control {
+            Control::Load(load) => s.load >= load,
+            _ => true,
+        };
+        wanted && path.stiffened(&start, s)
+    };
+    let (mut outward, end) = path.march(&start, 1.0, true, enough);
+    let (limit, top) = limit_of(path, outward.last().unwrap_or(&start), end);
+    outward.extend(top);
     let near = match control {
         Control::Load(load) => at_load(path, &start, &outward, load, &limit)?,
-        _ => at_bore(path, &start, control)?,
+        _ => Near::Close(at_bore(path, &start, control)?),
     };
     let unsettled = || {
         let message = "the wall could not be solved to round-off at these loads".to_string();
         refuse("", message, "choose a smaller load")
     };
     // next to a maximum of the load its equation has no digits left that the bore does not have
-    let station = fine(path, &near, control, NODES)
-        .or_else(|| fine(path, &near, Control::Bore(near.place), NODES))
-        .ok_or_else(unsettled)?;
+    let station = match near {
+        Near::Settled(station) => station,
+        Near::Close(near) => fine(path, &near, control, NODES)
+            .or_else(|| fine(path, &near, Control::Bore(near.place), NODES))
+            .ok_or_else(unsettled)?,
+    };
     Ok(Solved {
         station,
         control,
@@ -206,74 +148,16 @@ fn moved(placed: &[(usize, f64)], cuts: &[(usize, f64)]) -> f64 {
     pairs.fold(0.0, |m, (a, b)| m.max((a.1 - b.1).abs()))
 }
 
-/// The limit, and the station at a maximum.
-fn limit_of(path: &Path, start: &Station, end: Option<End>) -> (Limit, Option<Station>) {
-    let radius = |s: &Station| path.wall.inner * s.bore.exp();
-    match end {
-        Some(End::Maximum(pair)) => match maximum(path, &pair.0, &pair.1) {
-            Some(top) => {
-                let limit = Limit::Maximum {
-                    inner_pressure: top.load,
-                    inner_radius: radius(&top),
-                };
-                (limit, Some(top))
-            }
-            None => {
-                let followed_to = pair.0.load;
-                (Limit::NotFound { followed_to }, None)
-            }
-        },
-        Some(End::Asymptote(inner_pressure)) => (Limit::Asymptote { inner_pressure }, None),
-        Some(End::Open(s)) => {
-            let searched_to = radius(&s);
-            (Limit::None { searched_to }, None)
-        }
-        Some(End::Lost(s)) => {
-            let followed_to = s.load;
-            (Limit::NotFound { followed_to }, None)
-        }
-        None => {
-            let followed_to = start.load;
-            (Limit::NotFound { followed_to }, None)
-        }
-    }
-}
-
-/// The station of zero slope between two stations, first on the path's mesh, then on a fine one.
-fn maximum(path: &Path, before: &Station, after: &Station) -> Option<Station> {
-    let slope = |place: f64| {
-        path.at(before, place, 1e-9)
-            .map_or(f64::NAN, |(s, _)| s.slope)
-    };
-    let place = find_root(before.place, after.place, slope).ok()?;
-    let (coarse, _) = path.at(before, place, 1e-9)?;
-    let mut here = fine(path, &coarse, Control::Bore(place), NODES)?;
-    let (mut other, _) = path.at(&here, place + 1e-4 * (after.place - before.place), 0.0)?;
-    for _ in 0..8 {
-        let step = here.slope * (here.place - other.place) / (here.slope - other.slope);
-        if !step.is_finite() || step.abs() <= 1e-12 * (1.0 + place.abs()) {
-            break;
-        }
-        let (next, _) = path.at(&here, here.place - step, 0.0)?;
-        // no closer: round-off
-        if next.slope.abs() >= here.slope.abs() {
-            break;
-        }
-        other = std::mem::replace(&mut here, next);
-    }
-    Some(here)
-}
-
-/// The state at an inner load, near enough for Newton's method.
+/// The state at an inner load.
 fn at_load(
     path: &Path,
     start: &Station,
     outward: &[Station],
     load: f64,
     limit: &Limit,
-) -> Result<Station, Refusal> {
+) -> Result<Near, Refusal> {
     if load == start.load {
-        return Ok(start.clone());
+        return Ok(Near::Close(start.clone()));
     }
     if load > start.load {
         let found = enclosing(outward, |s| s.load >= load);
@@ -299,14 +183,22 @@ fn enclosing(trail: &[Station], beyond: impl Fn(&Station) -> bool) -> Option<(&S
     Some((&trail[after.checked_sub(1)?], &trail[after]))
 }
 
-/// The station of this load between two stations that enclose it: first on the path's mesh, then on a fine one.
-fn between(path: &Path, low: &Station, high: &Station, load: f64) -> Option<Station> {
+/// The station of this load between two stations that enclose it: first on the path's mesh, then on a fine one, at the
+/// load itself where its equation leads to the same branch, and by the bore where it does not.
+fn between(path: &Path, low: &Station, high: &Station, load: f64) -> Option<Near> {
     let range = (low.place, high.place);
     let share = (load - low.load) / (high.load - low.load);
     let (guess, _) = path.at(low, low.place + share * (high.place - low.place), 1e-9)?;
     let coarse = searched(path, guess, range, load, 1e-6)?;
+    let same = |s: &Station| {
+        let near = (s.place - coarse.place).abs() <= 0.1 * (range.1 - range.0).abs();
+        near && s.slope > 0.5 * coarse.slope && coarse.slope > 0.5 * s.slope
+    };
+    if let Some(found) = fine(path, &coarse, Control::Load(load), NODES).filter(same) {
+        return Some(Near::Settled(found));
+    }
     let fine = fine(path, &coarse, Control::Bore(coarse.place), NODES)?;
-    searched(path, fine, range, load, 1e-13)
+    searched(path, fine, range, load, 1e-13).map(Near::Close)
 }
 
 /// Newton's method on the load in the bore, kept inside a bracket on which the load is monotone.

@@ -2,10 +2,11 @@
 
 use super::fields::Fields;
 use super::integrals::Axial;
+use super::limit::Limit;
 use super::mesh::{Shape, Wall};
 use super::numbers::{Numbers, judge};
 use super::path::Path;
-use super::solve::{Drive, Limit, solve};
+use super::solve::{Drive, solve};
 use super::{check, method, out_of_range};
 use crate::exact::body::Body;
 use crate::exact::description::Description;

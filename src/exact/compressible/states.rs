@@ -91,6 +91,17 @@ impl Place {
         }
     }
 
+    /// q and q - 1, in the same forms.
+    pub fn excess(&self) -> (f64, f64) {
+        let share = (self.bore.k + self.grown) / self.s;
+        if share > -0.5 {
+            (1.0 + share, share)
+        } else {
+            let q = (self.swell + self.grown + self.bore.square) / self.s;
+            (q, q - 1.0)
+        }
+    }
+
     /// NaN where the material would have turned inside out.
     pub fn motion(&self, shape: Shape, modulus: f64) -> Motion {
         let (q, log_q) = self.q();
@@ -152,7 +163,7 @@ impl Place {
 }
 
 /// What the law of the shape says of its stiffening.
-fn loss(law: &Compressible, d: f64, e: f64) -> f64 {
+pub(super) fn loss(law: &Compressible, d: f64, e: f64) -> f64 {
     match law {
         Compressible::Split { law, .. } => law.hardening(d, e).loss,
         Compressible::Coupled(_) => 0.0,

@@ -98,19 +98,25 @@ fn node_rows(all: &Integrals, out: &mut System) {
     let behind_by_kap = &mesh.backward * &by_kap;
     let behind_by_e = &mesh.backward * list(&|s| s.push.by_e);
     let mut carried = mesh.forward.clone();
-    for (mut row, by) in carried.row_iter_mut().zip(by_kap.iter()) {
-        row *= *by;
+    for mut column in carried.column_iter_mut() {
+        column.component_mul_assign(&by_kap);
     }
     let through = &mesh.backward * carried;
+    // column by column, as matrices are stored
+    let radial_by_kap = list(&|s| s.radial.by_kap);
+    for j in 0..n {
+        let (growth, by_lam) = (scale * all.growth[j], scale * all.states[j].push.by_lam);
+        let columns = [&mesh.forward, &through, &mesh.backward].map(|m| m.column(j));
+        let [forward, through, backward] = columns;
+        for i in 0..n {
+            let kap = radial_by_kap[i] * forward[i] + through[i];
+            out.jacobian[(i, j)] = kap * growth + backward[i] * by_lam;
+        }
+    }
     let swell = all.extra(BORE).exp();
     for (i, s) in all.states.iter().enumerate() {
         out.residual[i] = scale * (s.radial.value + outer + behind[i]);
         out.size[i] = scale * (s.size() + outer.abs() + behind_size[i].abs());
-        for j in 0..n {
-            let kap = s.radial.by_kap * mesh.forward[(i, j)] + through[(i, j)];
-            let push = mesh.backward[(i, j)] * all.states[j].push.by_lam;
-            out.jacobian[(i, j)] = scale * (kap * all.growth[j] + push);
-        }
         out.jacobian[(i, i)] += scale * s.radial.by_lam;
         out.jacobian[(i, n + BORE)] = scale * (s.radial.by_kap + behind_by_kap[i]) * swell;
         out.jacobian[(i, n + STRETCH)] = scale * (s.radial.by_e + behind_by_e[i]);
@@ -118,10 +124,10 @@ fn node_rows(all: &Integrals, out: &mut System) {
     }
 }
 
-/// What Newton's method found: the unknowns, and the system one tiny step before them.
+/// What Newton's method found: the unknowns, and the states and derivatives one tiny step before them.
 pub(super) struct Found {
     pub y: DVector<f64>,
-    pub system: System,
+    pub states: Vec<NodeState>,
     pub lu: LU<f64, Dyn, Dyn>,
     pub steps: usize,
 }
@@ -157,7 +163,7 @@ pub(super) fn newton(
     let mut last = f64::INFINITY;
     for steps in 1..=MOST_STEPS {
         let system = system(mesh, given, &y)?;
-        let lu = system.jacobian.clone().lu();
+        let lu = system.jacobian.lu();
         let step = lu.solve(&system.residual)?;
         if !step.iter().all(|v| v.is_finite())
             || step[n + BORE].abs() + step[n + STRETCH].abs() > 1.0
@@ -173,7 +179,7 @@ pub(super) fn newton(
         if size <= tolerance || stalled {
             return Some(Found {
                 y,
-                system,
+                states: system.states,
                 lu,
                 steps,
             });

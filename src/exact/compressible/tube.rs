@@ -2,10 +2,11 @@
 
 use super::fields::Fields;
 use super::integrals::Axial;
+use super::limit::Limit;
 use super::mesh::{Shape, Wall};
 use super::numbers::{Numbers, judge};
 use super::path::Path;
-use super::solve::{Drive, Limit, solve};
+use super::solve::{Drive, solve};
 use super::{check, method, out_of_range};
 use crate::exact::Ends;
 use crate::exact::body::Body;
@@ -174,9 +175,10 @@ impl CompressibleTube {
                 "",
             ));
         }
-        let local = self.fields.at_radius(point.radius(), layer)?;
+        let radius = point.radius();
+        let local = self.fields.at_radius(radius, layer)?;
         let [radial, hoop, axial] = local.strains;
-        let direction = point.direction();
+        let direction = (point.x / radius, point.y / radius);
         let gradient = SymTensor::diagonal(radial, hoop, axial).cylindrical_to_cartesian(direction);
         Ok(State {
             displacement: Vector3::new(point.x * hoop, point.y * hoop, point.z * axial),

@@ -30,6 +30,27 @@ impl Station {
         self.tangent.0 * (other.g - self.g) + self.tangent.1 * (other.e - self.e)
     }
 
+    /// How far the path lies beside the tangent from here, as a function of the way along it: the cubic that has the place
+    /// and direction of `other`, a neighbour on either side. A guess, zero where it would be a bad one.
+    fn beside(&self, other: &Self) -> impl Fn(f64) -> f64 + use<> {
+        let (tg, te) = self.tangent;
+        let (dg, de) = (other.g - self.g, other.e - self.e);
+        let (along, across) = (tg * dg + te * de, tg * de - te * dg);
+        let slope = (tg * other.tangent.1 - te * other.tangent.0) / self.turn(other);
+        let (second, third) = (
+            (3.0 * across - slope * along) / (along * along),
+            (slope * along - 2.0 * across) / (along * along * along),
+        );
+        move |x: f64| {
+            let guess = x * x * (second + x * third);
+            if guess.abs() <= 0.3 * x.abs() {
+                guess
+            } else {
+                0.0
+            }
+        }
+    }
+
     fn turn(&self, other: &Self) -> f64 {
         self.tangent.0 * other.tangent.0 + self.tangent.1 * other.tangent.1
     }
@@ -77,10 +98,14 @@ pub(super) struct Path<'a> {
 }
 
 impl Path<'_> {
-    /// The state `along` the tangent from `from`, and across it by Newton to the path. `None` when Newton does not settle.
-    fn station(&self, from: &Station, along: f64) -> Option<Station> {
+    /// The state `along` the tangent from `from`, and across it by Newton from a guess to the path. `None` when Newton does
+    /// not settle.
+    fn station(&self, from: &Station, along: f64, across: f64) -> Option<Station> {
         let (tg, te) = from.tangent;
-        let (mut g, mut e) = (from.g + along * tg, from.e + along * te);
+        let (mut g, mut e) = (
+            from.g + along * tg - across * te,
+            from.e + along * te + across * tg,
+        );
         let mut last = f64::INFINITY;
         for _ in 0..40 {
             let all = self.wall.integrate(g, e, POINTS);
@@ -156,7 +181,14 @@ impl Path<'_> {
                 };
                 return (trail, Some(end));
             }
-            let next = self.station(&here, step);
+            let guess = match trail.len() {
+                0 | 1 => 0.0,
+                n => here.beside(&trail[n - 2])(step),
+            };
+            let next = self.station(&here, step, guess).or_else(|| {
+                let again = guess != 0.0;
+                again.then(|| self.station(&here, step, 0.0)).flatten()
+            });
             let Some(next) = next.filter(|s| here.turn(s) >= MOST_TURN || step < CORNER) else {
                 step *= 0.5;
                 if step < SHORTEST {
@@ -228,14 +260,22 @@ impl Path<'_> {
 
     /// The station with slope zero between two stations of opposite slope.
     fn extremum(&self, before: &Station, after: &Station) -> Option<Station> {
-        let slope = |along: f64| self.station(before, along).map_or(f64::NAN, |s| s.slope);
+        let beside = before.beside(after);
+        let at = |along: f64| self.station(before, along, beside(along));
+        // below round-off of the control a slope is zero: there is nothing closer to find
+        let slope = |along: f64| match at(along) {
+            Some(s) if s.slope.abs() <= 2.0 * f64::EPSILON * s.control.abs() => 0.0,
+            Some(s) => s.slope,
+            None => f64::NAN,
+        };
         let along = find_root(0.0, before.ahead(after), slope).ok()?;
-        self.station(before, along)
+        at(along)
     }
 
     /// The station where the control is `target`, between two neighbouring stations of the path that enclose it.
     pub fn between(&self, low: &Station, high: &Station, target: f64) -> Option<Station> {
         let rising = high.control >= low.control;
+        let beside = low.beside(high);
         let (mut least, mut most) = (0.0, low.ahead(high));
         let (mut here, mut along, mut last) = (*low, 0.0_f64, f64::INFINITY);
         for _ in 0..100 {
@@ -262,7 +302,7 @@ impl Path<'_> {
                 return Some(here);
             }
             (along, last) = (next, step);
-            here = self.station(low, along)?;
+            here = self.station(low, along, beside(along))?;
         }
         None
     }
